@@ -4,6 +4,7 @@ import { byId, idSchema, listOf, roleSchema, timeSchema } from './common.ts'
 
 export const keyStatuses = ['none', 'awaiting-endorsement', 'active', 'locked', 'expired', 'revoked'] as const
 export const keyStatusSchema = z.enum(keyStatuses)
+export type KeyStatus = z.infer<typeof keyStatusSchema>
 
 export const personSchema = z.object({
   id: idSchema,

@@ -34,6 +34,7 @@ export const kdfSchema = z.strictObject({
   p: z.number().int().min(1),
   salt: base64Schema,
 })
+export type Kdf = z.infer<typeof kdfSchema>
 
 export const signingKeySchema = z.object({
   status: keyStatusSchema,

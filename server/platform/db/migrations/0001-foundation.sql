@@ -584,6 +584,7 @@ grant usage on all sequences in schema work to hs_app;
 
 -- A worker reads inputs, moves the job it holds, adds results; nothing in signatures, revisions or keys.
 grant select on work.files, work.runs, work.calculations, work.entries to hs_worker;
+grant select (id, name) on work.people to hs_worker;
 grant update (status, progress, result_sha256, figures, notes, worker, error, cache_key, started_at, finished_at, inputs)
   on work.calculations to hs_worker;
 grant update (reading_status, reading_format, reading_version, reading_options, reading_sha256, reading_summary,

@@ -1,0 +1,27 @@
+import { Piscina } from 'piscina'
+import type { StoredReading } from './repository.ts'
+
+export interface ReadingTask {
+  fileId: string
+  name: string
+  objectKey: string
+  objectVersion: string | null
+  /** How to read it, when somebody said so. */
+  choice: { format: string; options: Record<string, unknown> } | null
+}
+
+export interface ReadingPool {
+  read(task: ReadingTask): Promise<StoredReading>
+  close(): Promise<void>
+}
+
+/** Threads that read files, so that neither the queue nor a heartbeat waits for a large one. */
+export function openReadingPool(): ReadingPool {
+  const pool = new Piscina<ReadingTask, StoredReading>({
+    filename: new URL('./reading-thread.ts', import.meta.url).href,
+    minThreads: 1,
+    maxThreads: 2,
+    idleTimeout: 600_000,
+  })
+  return { read: (task) => pool.run(task), close: () => pool.destroy() }
+}

@@ -1,0 +1,62 @@
+import { setTimeout as pause } from 'node:timers/promises'
+import type { Transaction } from 'sequelize'
+import { Problem } from '../../../contract/problems.ts'
+import { readingOptions } from '../../../ingest/registry.ts'
+import type { Actor } from '../../../platform/http/actor.ts'
+import type { Services } from '../../../platform/services.ts'
+import { actorOf, appendEvent } from '../../ledger/index.ts'
+import { requireNotebook } from '../../notebooks/index.ts'
+import { requireWritableEntry } from '../../entries/index.ts'
+import { chooseReading, findFile, type FileRow } from '../repository.ts'
+
+/** How long a request waits for a worker to read a file before it answers that the reading goes on. */
+const WAIT_MS = 120_000
+const POLL_MS = 60
+
+/** Reads a file in another way than was found by itself, and answers when that is done. */
+export async function setReading(
+  services: Services,
+  actor: Actor,
+  fileId: string,
+  choice: { format: string; options: Record<string, unknown> },
+): Promise<FileRow> {
+  const options = readingOptions(choice.format, choice.options)
+  await services.db.transaction(async (t) => {
+    await requireReadableFile(services, actor, fileId, t)
+    await chooseReading(services.db, fileId, { format: choice.format, options, by: actor.personId }, t)
+    await services.queue.send('read-file', { fileId }, { transaction: t })
+  })
+  const file = await waitForReading(services, fileId, WAIT_MS)
+  if (file.readingStatus === 'unreadable') throw new Problem('unreadable-file', file.readingDetail ?? 'The file cannot be read in this way.')
+  if (file.readingStatus === 'ready') await recordReading(services, actor, file)
+  return file
+}
+
+async function requireReadableFile(services: Services, actor: Actor, fileId: string, t: Transaction): Promise<void> {
+  const file = await findFile(services.db, fileId, t)
+  if (file === null) throw new Problem('not-found', 'There is no such file, or you may not read it.')
+  await requireNotebook(services, actor, file.notebookId, 'write', t)
+  if (file.homeEntryId !== null) await requireWritableEntry(services, actor, file.homeEntryId, t)
+}
+
+async function recordReading(services: Services, actor: Actor, file: FileRow): Promise<void> {
+  await services.db.transaction((t) =>
+    appendEvent(services, t, {
+      actor: actorOf(actor),
+      action: 'reading.set',
+      subject: file.homeEntryId === null ? { kind: 'run', id: file.runId as string } : { kind: 'entry', id: file.homeEntryId },
+      payload: { fileId: file.id, readingSha256: file.readingSha256 },
+    }),
+  )
+}
+
+/** The file as soon as a worker has read it; still pending when that takes longer than `waitMs`. */
+export async function waitForReading(services: Services, fileId: string, waitMs: number): Promise<FileRow> {
+  const end = Date.now() + waitMs
+  for (;;) {
+    const file = await findFile(services.db, fileId)
+    if (file === null) throw new Problem('not-found', 'There is no such file, or you may not read it.')
+    if (file.readingStatus !== 'pending' || Date.now() > end) return file
+    await pause(POLL_MS)
+  }
+}

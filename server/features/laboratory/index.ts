@@ -1,0 +1,8 @@
+export { openAtRest, sealAtRest } from './at-rest.ts'
+export { issueCertificate, pemOf, type IssuedCertificate } from './authority.ts'
+export { makeHead } from './heads.ts'
+export { laboratoryJobs, scheduleHeadChecks } from './jobs.ts'
+export { findLaboratory, laboratory, type Laboratory } from './laboratory.ts'
+export { openLaboratory } from './open-laboratory.ts'
+export { certificateAuthority, ledgerKey, type LedgerKey } from './own-keys.ts'
+export { signatureDigest, stamp } from './stamps.ts'

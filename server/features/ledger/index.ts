@@ -1,0 +1,6 @@
+export { actorOf, systemActor, workerActor, type RequestActor } from './actor.ts'
+export { appendEvent, lockLedger, type AppendedEvent, type NewEvent } from './append-event.ts'
+export { anchors, findHead, ledgerKeys, type StoredHead } from './heads.ts'
+export { chainEnd, eventsOf, merkleTree, newestEvent } from './read-events.ts'
+export { ledgerRoutes } from './routes.ts'
+export { verifyLedger } from './verify-ledger.ts'

@@ -1,0 +1,5 @@
+export { requireNotebook } from './access.ts'
+export { findMembership, findNotebook, membersOf, notebookNumber, type NotebookRow } from './repository.ts'
+export { createNotebook } from './use-cases/create-notebook.ts'
+export { setMember } from './use-cases/set-member.ts'
+export { notebookRoutes } from './routes.ts'

@@ -1,0 +1,5 @@
+export { insertApparatus, listApparatus } from './apparatus-repository.ts'
+export { presentRuns } from './present.ts'
+export { findRun, runNumber, runsOfEntry, type RunRow } from './repository.ts'
+export { runRoutes } from './routes.ts'
+export { changeRun, createRun, createRunInEntry, fileRun } from './use-cases/create-run.ts'

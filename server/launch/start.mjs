@@ -1,0 +1,32 @@
+import path from 'node:path'
+import { prepare } from './prepare.mjs'
+import { root } from './root.mjs'
+import { runMain, say } from './say.mjs'
+
+/** `npm start`: set-up, services, product, and one line when it can be used. Ctrl-C stops everything in order. */
+await runMain(async () => {
+  await prepare()
+  const { startProduct } = await import('./product.mjs')
+  const port = Number(process.env.PORT ?? 4310)
+  const dataFolder = path.resolve(root, process.env.HALFSILVER_DATA ?? '.data')
+  let product = null
+  let asked = false
+  const stop = async () => {
+    if (asked) return
+    asked = true
+    if (!product) return
+    say('Stopping')
+    await product.stop()
+    process.exit(0)
+  }
+  process.on('SIGINT', stop)
+  process.on('SIGTERM', stop)
+  const environment = { ...process.env, NODE_ENV: process.env.NODE_ENV ?? 'production' }
+  product = await startProduct({ dataFolder, port, environment, tell: say })
+  if (asked) {
+    await product.stop()
+    process.exit(0)
+  }
+  say(`Mail goes to http://127.0.0.1:${product.ports.inbox}`)
+  say(`Halfsilver is ready at ${product.url}`)
+})

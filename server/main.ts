@@ -1,0 +1,34 @@
+import { buildApp } from './app.ts'
+import { fileJobs } from './features/files/index.ts'
+import { laboratoryJobs, scheduleHeadChecks } from './features/laboratory/index.ts'
+import { readConfig } from './platform/config.ts'
+import { serve } from './platform/http/serve.ts'
+import { openSessions } from './platform/identity/session.ts'
+import { openLog } from './platform/logger.ts'
+import { sendMailJob } from './platform/mail/send-mail.ts'
+import { openServices } from './platform/open-services.ts'
+import type { Job } from './platform/queue/job.ts'
+import { runProcess } from './platform/run-process.ts'
+import type { Services } from './platform/services.ts'
+
+/** What runs beside the API, under the application's role. */
+function systemJobs(services: Services): Job[] {
+  return [sendMailJob(services), ...fileJobs(services), ...laboratoryJobs(services)]
+}
+
+await runProcess(async () => {
+  const config = readConfig(process.env, 'api')
+  const log = openLog('api')
+  const { services, close } = await openServices(config, config.database.app, log)
+  await services.storage.ensureBucket()
+  const sessions = openSessions(config)
+  const http = await serve(buildApp(services, sessions), config.port)
+  for (const job of systemJobs(services)) await services.queue.work(job)
+  await scheduleHeadChecks(services)
+  log.info({ origin: config.origin, port: config.port, demo: config.demo }, 'serving')
+  return async () => {
+    await http.close()
+    await close()
+    await sessions.close()
+  }
+})

@@ -1,0 +1,20 @@
+/** Names of what is kept in the query cache. Features share the names, never each other's code. */
+export const queryKeys = {
+  session: ['session'] as const,
+  welcome: ['welcome'] as const,
+  people: ['people'] as const,
+  notebooks: ['notebooks'] as const,
+  notebook: (id: string) => ['notebooks', id] as const,
+  entriesOf: (notebookId: string) => ['notebooks', notebookId, 'entries'] as const,
+  runsOf: (notebookId: string) => ['notebooks', notebookId, 'runs'] as const,
+  myEntries: (which: 'all' | 'mine' | 'waiting') => ['entries', 'list', which] as const,
+  entry: (id: string) => ['entries', id] as const,
+  content: (id: string) => ['entries', id, 'content'] as const,
+  revisions: (id: string) => ['entries', id, 'revisions'] as const,
+  file: (id: string) => ['files', id] as const,
+  calculationKinds: ['calculation-kinds'] as const,
+  calculation: (id: string) => ['calculations', id] as const,
+  figure: (id: string) => ['calculations', id, 'figure'] as const,
+  detectors: ['apparatus', 'detectors'] as const,
+  sources: ['apparatus', 'sources'] as const,
+}
