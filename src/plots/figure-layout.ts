@@ -1,6 +1,7 @@
 import { extent } from 'd3-array'
 import { scaleLinear, scaleLog, type ScaleLinear, type ScaleLogarithmic } from 'd3-scale'
 import type { Figure, FigureAxis, FigurePanel } from '../../server/contract/figure.ts'
+import { powerOfTen } from './numbers.ts'
 
 export type Scale = ScaleLinear<number, number> | ScaleLogarithmic<number, number>
 
@@ -126,13 +127,9 @@ function logTicks(scale: Scale, wanted: number): Tick[] {
   }))
 }
 
-const superscripts = '⁰¹²³⁴⁵⁶⁷⁸⁹'
-
 function logText(at: number): string {
-  const power = Math.log10(at)
   if (at >= 0.01 && at < 1e4) return String(Number(at.toPrecision(3)))
-  const whole = Math.floor(power + 1e-9)
-  const digits = [...String(Math.abs(whole))].map((digit) => superscripts[Number(digit)]).join('')
-  const factor = Number((at / 10 ** whole).toPrecision(3))
-  return `${factor === 1 ? '' : `${factor}×`}10${whole < 0 ? '⁻' : ''}${digits}`
+  const power = Math.floor(Math.log10(at) + 1e-9)
+  const factor = Number((at / 10 ** power).toPrecision(3))
+  return `${factor === 1 ? '' : `${factor}×`}${powerOfTen(power)}`
 }

@@ -23,3 +23,17 @@ export function withUncertainty(value: number, u: number | null): string {
   const places = Math.max(0, Math.min(10, 1 - Math.floor(Math.log10(u))))
   return `${axisNumber(value.toFixed(places))} ± ${axisNumber(u.toFixed(places))}`
 }
+
+/** "1.5 × 10⁻⁶". */
+function withPower(value: number, digits: number): string {
+  const [factor = '', power = ''] = value.toExponential(digits - 1).split('e')
+  return `${axisNumber(factor)} × ${powerOfTen(Number(power))}`
+}
+
+const superscripts = '⁰¹²³⁴⁵⁶⁷⁸⁹'
+
+/** 10 to a whole power, in print: "10⁻⁶". */
+export function powerOfTen(power: number): string {
+  const digits = [...String(Math.abs(power))].map((digit) => superscripts[Number(digit)]).join('')
+  return `10${power < 0 ? '⁻' : ''}${digits}`
+}

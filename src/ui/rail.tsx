@@ -8,6 +8,8 @@ import { ThemeChoice, ThemeNext } from './theme-choice.tsx'
 export type RailItem = {
   to: string
   label: string
+  /** For the foot rail, where a fifth of a phone's width must do. */
+  shortLabel?: string
   icon: IconName
   current: boolean
   /** How many wait there; 0 or absent shows nothing. */
@@ -75,7 +77,7 @@ function FootRail({ items }: { items: RailItem[] }) {
       {chosen.map((item) => (
         <Link key={item.to} to={item.to} aria-current={item.current ? 'page' : undefined}>
           <Icon name={item.icon} size={20} />
-          {item.label}
+          {item.shortLabel ?? item.label}
         </Link>
       ))}
     </nav>

@@ -4,6 +4,8 @@ import type { FitModel } from '../../server/physics/fits/model.ts'
 import { drivenDip } from '../../server/physics/fits/models/driven.ts'
 import { fitModels, fitModelNames } from '../../server/physics/fits/models/index.ts'
 import { gaussLegendre, meanByQuadrature } from '../../server/physics/fits/quadrature.ts'
+import { erfcx } from '../../server/physics/special/error-function.ts'
+import { complexErfcx } from '../../server/physics/special/faddeeva.ts'
 import { closeTo } from './close-to.ts'
 
 describe('closed form of the models (definitions.md)', () => {
@@ -73,6 +75,23 @@ describe('means over a bin', () => {
     const [slow, fast] = [1 / (decay - m), 1 / (decay + m)]
     const mean = (1 + decay / m) / 2 * meanTwoSided(-100, 400, slow, 150) + ((1 - decay / m) / 2) * meanTwoSided(-100, 400, fast, 150)
     closeTo(fitModels.driven.mean(-100, 400, 150, [0, rabi, gamma, 0]), 1 - mean, 1e-9)
+  })
+
+  it.each([[0.02, 0.004], [0.002, 0.004], [0.0010004, 0.004]])('the driven emitter equals quadrature, rabi %d and gamma %d', (rabi, gamma) => {
+    for (const sigma of [0, 30, 150]) {
+      for (const [from, to] of [[-60, 90], [200, 260], [-500, -100]] as const) {
+        const byQuadrature = meanByQuadrature((x) => drivenDip(x, rabi, gamma), from, to, sigma, 20)
+        const mean = fitModels.driven.mean(from, to, sigma, [0, rabi, gamma, 0])
+        expect(Math.abs(1 - mean - byQuadrature)).toBeLessThan(1e-9)
+      }
+    }
+  })
+
+  it('complex erfcx: real axis, and erfcx(iy) = exp(-y^2) (1 - i erfi(y)) as its real part', () => {
+    for (const x of [0, 0.3, 1, 4, 50]) closeTo(complexErfcx({ re: x, im: 0 }).re, erfcx(x), 1e-12)
+    for (const y of [0.1, 1, 3, 5]) expect(Math.abs(complexErfcx({ re: 0, im: y }).re - Math.exp(-y * y))).toBeLessThan(1e-12)
+    const [above, below] = [complexErfcx({ re: 0.7, im: 2 }), complexErfcx({ re: 0.7, im: -2 })]
+    expect(above).toEqual({ re: below.re, im: -below.im })
   })
 
   it('Gauss-Legendre: twenty points are exact for x^38', () => {

@@ -125,6 +125,7 @@ describe('bounds and honest failure (definitions.md B3)', () => {
 
   it('light without a dip determines no lifetime: not converged, no parameter reported', () => {
     const data = simulated(fitModels.coherent, [], { b: 500, K: 60, level: 50, seed: 2 })
+    // Counts at the very level of chance.
     data.counts.fill(50)
     const found = fit(data, { model: 'two-level' })
     expect(found.converged).toBe(false)

@@ -70,7 +70,7 @@ export interface PersonToSign {
 
 /** An active person, the row locked until the transaction ends: whatever concerns their keys comes one after another. */
 export function lockPerson(db: Database, id: string, t: Transaction): Promise<PersonToSign | null> {
-  return db.row<PersonToSign>(`select id, name, email, roles from work.people where id = :id and active for update`, { id }, t)
+  return db.row<PersonToSign>(`select id, name, email, roles from work.people where id = :id and active for no key update`, { id }, t)
 }
 
 /** Mail addresses of active managers. */

@@ -23,6 +23,7 @@ export interface BoundedOutcome {
 
 /** Starts that are followed to the end; the others lose on their first deviance. */
 const STARTS_FOLLOWED = 4
+const BLIND = 1000
 const AT_PHYSICAL_BOUND = 1e-6
 const AT_OTHER_BOUND = 1e-9
 
@@ -39,6 +40,7 @@ export function fitWithBounds(
   const stuck = problem.parameters.some((p, j) => p.fixed !== true && !held[j] && isStuck(best.values[j]!, p))
   if (best.failure !== null) return unfinished(best, best.failure)
   if (stuck) return unfinished(best, 'bound')
+  if (isBlind(problem.parameters, best)) return unfinished(best, 'singular')
   if (!held.includes(true)) return finished(problem.parameters, best, held, [])
   const values = best.values.map((x, j) => (held[j] ? problem.parameters[j]!.physicalBound! : x))
   const parameters = problem.parameters.map((p, j) => (held[j] ? { ...p, fixed: true } : p))
@@ -67,6 +69,14 @@ const isAt = (value: number, bound: number | undefined): boolean =>
 function isStuck(value: number, { lower, upper }: FitParameter): boolean {
   const near = (bound: number) => Number.isFinite(bound) && Math.abs(value - bound) <= AT_OTHER_BOUND * Math.max(1, Math.abs(bound))
   return near(lower) || near(upper)
+}
+
+/** A positive parameter with a u far beyond its size is not determined, whatever the matrix says. */
+function isBlind(parameters: BoundedParameter[], outcome: FitOutcome): boolean {
+  return outcome.free.some((j, row) => {
+    const u = Math.sqrt(outcome.covariance[row]![row]!)
+    return parameters[j]!.lower > 0 && u > BLIND * Math.abs(outcome.values[j]!)
+  })
 }
 
 /** Value of parameter j, away from its bound, at which the deviance of the best fit of all others has risen by 1. */

@@ -7,6 +7,8 @@ export interface FitParameter {
   upper: number
   /** Typical size where the value itself may be zero; sets the step of numerical derivatives. */
   scale: number
+  /** A place on the axis: its size says nothing about the step of derivatives, which must stay far below a bin. */
+  isPlace?: boolean
   /** Held at its start value. */
   fixed?: boolean
 }
@@ -37,7 +39,7 @@ const MOST_ITERATIONS = 300
 /** Converged when a full step would lower the deviance by less than this: a millionth of a standard deviation. */
 const TOLERANCE = 1e-12
 /** What is accepted when rounding stops any further descent. */
-const LOOSE_TOLERANCE = 1e-7
+const LOOSE_TOLERANCE = 1e-6
 const LARGEST_DAMPING = 1e14
 /** A positive parameter changes by at most this factor in one step. */
 const LARGEST_FACTOR = 5
@@ -109,9 +111,9 @@ function evaluate(problem: FitProblem, values: number[]): Float64Array {
 /** dm/dp by central differences; null rows for fixed parameters. */
 export function derivatives(problem: Omit<FitProblem, 'start'>, values: number[]): (Float64Array | null)[] {
   const size = problem.estimator.size
-  return problem.parameters.map(({ fixed, scale }, j) => {
+  return problem.parameters.map(({ fixed, scale, isPlace }, j) => {
     if (fixed === true) return null
-    const step = DERIVATIVE_STEP * Math.max(Math.abs(values[j]!), scale)
+    const step = DERIVATIVE_STEP * (isPlace === true ? scale / 10 : Math.max(Math.abs(values[j]!), scale))
     const above = new Float64Array(size)
     const below = new Float64Array(size)
     problem.model(values.with(j, values[j]! + step), above)

@@ -27,5 +27,5 @@ export function timeConstant(name: string, { range, bin }: { range: number; bin:
 }
 
 export function tau0Parameter({ range, bin }: { range: number; bin: number }): BoundedParameter {
-  return { name: 'tau0', unit: 'ps', lower: -range, upper: range, scale: bin }
+  return { name: 'tau0', unit: 'ps', lower: -range, upper: range, scale: bin, isPlace: true }
 }

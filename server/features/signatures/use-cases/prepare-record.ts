@@ -7,6 +7,7 @@ import { sha256Hex } from '../../../ledger-format/digest.ts'
 import { buildRecord, describeBody, overlaps, type BuiltBody, type Signing } from '../../../ledger-format/record.ts'
 import { signingStatement } from '../../../ledger-format/statements.ts'
 import type { Transaction } from '../../../platform/db/database.ts'
+import type { Actor } from '../../../platform/http/actor.ts'
 import type { Services } from '../../../platform/services.ts'
 import { cutRevision, openingsOf, type EntryRow } from '../../entries/index.ts'
 import { policyVersion } from '../../keys/index.ts'
@@ -35,10 +36,10 @@ const VALID_MS = 15 * 60_000
  */
 export async function prepareRecord(
   services: Services,
-  personId: string,
+  { personId }: Pick<Actor, 'personId'>,
   entryId: string,
   request: RecordRequest,
-): Promise<{ record: Buffer; sha256: string }> {
+): Promise<{ bytes: Buffer; sha256: string }> {
   return services.db.transaction(async (t) => {
     const standing = await standingOf(services, personId, entryId, t)
     requireSigning(standing, request.meaning)
@@ -48,17 +49,17 @@ export async function prepareRecord(
     const wanted = { entryId, personId, meaning: request.meaning, stateKey: sha256Hex(canonicalBytes({ ...parts, body: body.bodySha256 })) }
     const now = services.clock.now()
     const known = await findPrepared(services.db, { ...wanted, now }, t)
-    if (known) return known
+    if (known) return { bytes: known.record, sha256: known.sha256 }
     const { bytes, recordSha256 } = buildRecord(body, {
       ...parts,
       id: randomUUID(),
       time: await notBeforeLedger(services, now, t),
       ledger: await newestEvent(services, t),
     })
-    const prepared = { record: Buffer.from(bytes), sha256: recordSha256 }
+    const record = Buffer.from(bytes)
     const expiresAt = new Date(now.getTime() + VALID_MS)
-    await keepPrepared(services.db, { ...wanted, ...prepared, bodySha256: body.bodySha256, createdAt: now, expiresAt }, t)
-    return prepared
+    await keepPrepared(services.db, { ...wanted, record, sha256: recordSha256, bodySha256: body.bodySha256, createdAt: now, expiresAt }, t)
+    return { bytes: record, sha256: recordSha256 }
   })
 }
 

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto'
 import type { EntryPhase, EntryState } from '../../../contract/policy.ts'
 import type { Transaction } from '../../../platform/db/database.ts'
+import type { Actor } from '../../../platform/http/actor.ts'
 import type { Services } from '../../../platform/services.ts'
 import { updateEntry } from '../../entries/index.ts'
 import { appendEvent } from '../../ledger/index.ts'
@@ -13,7 +14,12 @@ type State = { state: EntryState; phase: EntryPhase }
  * Back to the authors: by a witness, by an author who recalls the entry, or while signatures are being collected. Every
  * signature given is void from then on and stays in the record.
  */
-export async function returnEntry(services: Services, personId: string, entryId: string, reason: string): Promise<State> {
+export async function returnEntry(
+  services: Services,
+  { personId }: Pick<Actor, 'personId'>,
+  entryId: string,
+  reason: string,
+): Promise<State> {
   return services.db.transaction(async (t) => {
     const standing = await standingOf(services, personId, entryId, t)
     const kind = standing.entry.phase === 'collecting' ? 'reopened' : 'returned'
@@ -53,7 +59,12 @@ async function recordVoiding(
 }
 
 /** Puts a draft without living signatures aside; it stays readable for ever and keeps its number. */
-export async function withdrawEntry(services: Services, personId: string, entryId: string, reason: string): Promise<State> {
+export async function withdrawEntry(
+  services: Services,
+  { personId }: Pick<Actor, 'personId'>,
+  entryId: string,
+  reason: string,
+): Promise<State> {
   return services.db.transaction(async (t) => {
     const standing = await standingOf(services, personId, entryId, t)
     requireAction(standing, 'withdraw', 'Only a draft without signatures is withdrawn.')

@@ -5,6 +5,7 @@ import { sha256Hex } from '../../../ledger-format/digest.ts'
 import { verifySignature } from '../../../ledger-format/ed25519.ts'
 import type { SignedRecord } from '../../../ledger-format/record.ts'
 import type { Transaction } from '../../../platform/db/database.ts'
+import type { Actor } from '../../../platform/http/actor.ts'
 import type { Services } from '../../../platform/services.ts'
 import { updateEntry, type EntryRow } from '../../entries/index.ts'
 import { makeHead, stamp } from '../../laboratory/index.ts'
@@ -32,7 +33,12 @@ const STAMP_AT_ONCE_MS = 2000
  * Takes a signature over prepared bytes and moves the state. Under the locks of person and entry everything that the record
  * says is compared with what holds now; the last signature needed seals the entry. Answers the signature's id.
  */
-export async function signEntry(services: Services, personId: string, entryId: string, given: GivenSignature): Promise<string> {
+export async function signEntry(
+  services: Services,
+  { personId }: Pick<Actor, 'personId'>,
+  entryId: string,
+  given: GivenSignature,
+): Promise<string> {
   const id = await services.db.transaction(async (t) => {
     const standing = await standingOf(services, personId, entryId, t)
     requireSigning(standing, given.meaning)

@@ -1,10 +1,12 @@
 import { featureOf, scalesOf } from '../correlation-data.ts'
+import { meanOscillation } from '../damped-oscillation.ts'
+import { meanTwoSided } from '../gaussian-response.ts'
 import { tau0Parameter, type FitModel } from '../model.ts'
 import { meanByQuadrature } from '../quadrature.ts'
 
 /**
  * Driven two-level emitter (resonance fluorescence): 1 - (1 - g0) exp(-3 G |x|/4) [cos(m x) + (3 G/4 m) sin(m |x|)] with
- * m = sqrt(Om^2 - G^2/16), where an imaginary m gives cosh and sinh. Its mean over a bin is taken by quadrature.
+ * m = sqrt(Om^2 - G^2/16), where an imaginary m gives cosh and sinh.
  */
 export const driven: FitModel = {
   name: 'driven',
@@ -21,11 +23,8 @@ export const driven: FitModel = {
       tau0Parameter(scales),
     ]
   },
-  mean: (from, to, sigma, [g0, rabi, gamma, tau0]) => {
-    const scale = 2 / Math.max(rabi!, gamma!)
-    const dip = (x: number) => drivenDip(x, rabi!, gamma!)
-    return 1 - (1 - g0!) * meanByQuadrature(dip, from - tau0!, to - tau0!, sigma, scale)
-  },
+  mean: (from, to, sigma, [g0, rabi, gamma, tau0]) =>
+    1 - (1 - g0!) * meanDip(from - tau0!, to - tau0!, sigma, rabi!, gamma!),
   starts: (data) => {
     const { range } = scalesOf(data)
     const dip = featureOf(data, -1, 3)
@@ -35,6 +34,26 @@ export const driven: FitModel = {
     )
   },
   atZero: { parameter: 0, offset: 0, slope: 1 },
+}
+
+/** Where |m| is below this share of 3 G/4 the two exponentials nearly coincide and the closed form loses its digits. */
+const NEARLY_CRITICAL = 1e-3
+
+/** Mean of the dip over [from, to] with response: as two exponentials, real or a conjugate pair, or by quadrature between. */
+function meanDip(from: number, to: number, sigma: number, rabi: number, gamma: number): number {
+  const decay = (3 * gamma) / 4
+  const square = rabi * rabi - (gamma * gamma) / 16
+  const m = Math.sqrt(Math.abs(square))
+  if (m < NEARLY_CRITICAL * decay) {
+    return meanByQuadrature((x) => drivenDip(x, rabi, gamma), from, to, sigma, 1 / decay)
+  }
+  if (square > 0) {
+    const { re, im } = meanOscillation(from, to, { re: decay, im: -m }, sigma)
+    return re + (decay / m) * im
+  }
+  const slow = meanTwoSided(from, to, 1 / (decay - m), sigma)
+  const fast = meanTwoSided(from, to, 1 / (decay + m), sigma)
+  return ((1 + decay / m) * slow + (1 - decay / m) * fast) / 2
 }
 
 /** exp(-3 G |x|/4) [cos(m x) + (3 G/4 m) sin(m |x|)]: 1 at x = 0. */

@@ -1,5 +1,6 @@
 import { useRef, useState, type FormEvent, type ReactNode } from 'react'
 import type { EntrySignature } from '../../../../server/contract/signatures.ts'
+import type { SignedRecord } from '../../../../server/ledger-format/record.ts'
 import { sentenceOf } from '../../../lib/api-problem.ts'
 import { Button, ButtonLink } from '../../../ui/button.tsx'
 import { Dialog, DialogPart } from '../../../ui/dialog.tsx'
@@ -12,7 +13,6 @@ import { BlocksList } from './blocks-list.tsx'
 import { SignedDigest, WhatIsSigned } from './what-is-signed.tsx'
 
 interface SignatureDialogProps {
-  open: boolean
   onClose: () => void
   subject: SigningSubject
   number: string
@@ -31,26 +31,19 @@ interface SignatureDialogProps {
   inFull?: boolean
 }
 
-/** Prepares, shows what is signed, asks for the passphrase, signs, and says what became of it. Nothing times out here. */
+/** To be mounted when it opens, so that each opening begins anew. Prepares, shows what is signed, asks for the passphrase, signs, and says what became of it. Nothing times out here. */
 export function SignatureDialog(props: SignatureDialogProps) {
-  const { open, onClose, subject, number, title, verb, harmless, before, chosen = true, inFull = false } = props
+  const { onClose, subject, number, title, verb, harmless, before, chosen = true, inFull = false } = props
   const [signed, setSigned] = useState<EntrySignature | null>(null)
   const [passphrase, setPassphrase] = useState('')
   const [share, setShare] = useState<number | null>(null)
   const form = useRef<HTMLFormElement>(null)
-  const { preparation, signing } = useSigning(subject, open && chosen && signed === null, (signature) => {
+  const { preparation, signing } = useSigning(subject, chosen && signed === null, (signature) => {
     setSigned(signature)
     props.onSigned(signature)
   })
   const ready = preparation.data?.state === 'ready' ? preparation.data : null
   const trouble = signing.error ? signingTrouble(signing.error) : null
-
-  function close() {
-    setPassphrase('')
-    setSigned(null)
-    signing.reset()
-    onClose()
-  }
 
   function submit(event: FormEvent) {
     event.preventDefault()
@@ -61,7 +54,7 @@ export function SignatureDialog(props: SignatureDialogProps) {
 
   if (signed)
     return (
-      <Dialog open={open} onClose={close} title={number} about={title} actions={<Button kind="primary" onClick={close}>Close</Button>}>
+      <Dialog open onClose={onClose} title={number} about={title} actions={<Button kind="primary" onClick={onClose}>Close</Button>}>
         <DialogPart>
           <Message kind="good">{props.done(signed)}</Message>
         </DialogPart>
@@ -69,8 +62,8 @@ export function SignatureDialog(props: SignatureDialogProps) {
     )
   return (
     <Dialog
-      open={open}
-      onClose={close}
+      open
+      onClose={onClose}
       locked={signing.isPending}
       wide={inFull}
       title={`${verb} ${number}`}
@@ -87,20 +80,20 @@ export function SignatureDialog(props: SignatureDialogProps) {
               {verb}
             </Button>
           )}
-          <Button onClick={close}>{harmless}</Button>
+          <Button onClick={onClose}>{harmless}</Button>
         </>
       }
     >
       {before && <DialogPart>{before}</DialogPart>}
       {chosen && (
-        <Prepared preparation={preparation} onGo={close}>
+        <Prepared preparation={preparation} onGo={onClose}>
           {ready && (
             <>
               <DialogPart>
                 <SignedDigest record={ready.record} />
               </DialogPart>
               <DialogPart>
-                {inFull ? <WhatIsSigned record={ready.record} /> : <Folded>{<WhatIsSigned record={ready.record} />}</Folded>}
+                {inFull ? <WhatIsSigned record={ready.record} /> : <Folded record={ready.record} />}
               </DialogPart>
               <DialogPart>
                 <p className="hs-prose">“{ready.record.signing.statement}”</p>
@@ -143,11 +136,13 @@ export function SignatureDialog(props: SignatureDialogProps) {
   )
 }
 
-function Folded({ children }: { children: ReactNode }) {
+function Folded({ record }: { record: SignedRecord }) {
   return (
     <details>
       <summary className="hs-link inline-block min-h-8 cursor-pointer">Show all that is signed</summary>
-      <div className="mt-2">{children}</div>
+      <div className="mt-2">
+        <WhatIsSigned record={record} />
+      </div>
     </details>
   )
 }

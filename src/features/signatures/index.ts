@@ -1,0 +1,8 @@
+export { CountersignAct } from './components/countersign-act.tsx'
+export { DeskMargin } from './components/desk-margin.tsx'
+export { LifeActs, ReturnAct } from './components/life-acts.tsx'
+export { ReviewPanel } from './components/review-panel.tsx'
+export { SignAct, type SheetOnScreen } from './components/sign-act.tsx'
+export { OtherSheets, WitnessQueue, oldestFirst } from './components/witness-queue.tsx'
+export { readableEntriesQuery, signingKeyQuery, witnessQueueQuery } from './queries.ts'
+export { deskSentence } from './waiting.ts'

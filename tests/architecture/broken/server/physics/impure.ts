@@ -1,0 +1,3 @@
+import { db } from '../platform/db.ts'
+
+export const impure = db

@@ -1,0 +1,3 @@
+import { one } from '../features/a/one.ts'
+
+export const knowsDomain = one
