@@ -24,8 +24,8 @@ function singlePage(): Plugin {
       const policy = `default-src 'none'; script-src ${hashOf(script)}; style-src ${hashOf(style)}; base-uri 'none'; form-action 'none'`
       const page = readFileSync(join(folder, 'checker.html'), 'utf8')
         .replace('%POLICY%', () => policy)
-        .replace('%STYLE%', () => style)
-        .replace('%SCRIPT%', () => script)
+        .replace(/<style>\s*%STYLE%;?\s*<\/style>/, () => `<style>${style}</style>`)
+        .replace(/<script>\s*%SCRIPT%;?\s*<\/script>/, () => `<script>${script}</script>`)
       for (const name of Object.keys(bundle)) delete bundle[name]
       this.emitFile({ type: 'asset', fileName: 'check.html', source: page })
     },

@@ -8,6 +8,7 @@ import { notebookRoutes } from './features/notebooks/index.ts'
 import { peopleRoutes, recordSignIn } from './features/people/index.ts'
 import { runRoutes } from './features/runs/index.ts'
 import { sheetRoutes } from './features/sheets/index.ts'
+import { signatureRoutes } from './features/signatures/index.ts'
 import { buildHttp } from './platform/http/build-http.ts'
 import type { Route } from './platform/http/route.ts'
 import type { SessionStore } from './platform/identity/session.ts'
@@ -28,6 +29,7 @@ export function featureRoutes(services: Services): Route[] {
     ...fileRoutes(services),
     ...calculationRoutes(services),
     ...keyRoutes(services),
+    ...signatureRoutes(services),
     ...ledgerRoutes(services),
   ]
 }

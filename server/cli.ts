@@ -1,14 +1,22 @@
+import { seedDemo } from './demo/seed-demo.ts'
+import { openLaboratory } from './features/laboratory/index.ts'
+import { addPerson } from './features/people/index.ts'
 import { readConfig, ConfigError } from './platform/config.ts'
 import { openDatabase } from './platform/db/database.ts'
 import { migrate } from './platform/db/migrate.ts'
+import { identityProvider } from './platform/identity/sign-in.ts'
 import { openLog } from './platform/logger.ts'
+import { openServices } from './platform/open-services.ts'
+import type { Services } from './platform/services.ts'
 
 const usage = `usage: node --import tsx server/cli.ts <command>
   migrate    bring the database to the newest form; prints {"empty": true} when it holds no laboratory
   seed-demo  load the demonstration laboratory into an empty database
+  open-laboratory <account id> <login> <full name> <e-mail>
+             open the laboratory of an empty database with its first manager, who signs in with that account
 `
 
-const commands: Record<string, () => Promise<void>> = {
+const commands: Record<string, (given: string[]) => Promise<void>> = {
   async migrate() {
     const { database } = readConfig(process.env, 'cli')
     const log = openLog('migrate')
@@ -19,16 +27,40 @@ const commands: Record<string, () => Promise<void>> = {
     await db.close()
     process.stdout.write(`${JSON.stringify({ migrated: done, empty: laboratory === null })}\n`)
   },
+  async 'seed-demo'() {
+    await withServices(async (services) => {
+      if (!services.config.demo) throw new Error('HALFSILVER_DEMO is not set: the demonstration is loaded only where nothing real is configured.')
+      await seedDemo(services, (step) => process.stdout.write(`${step}\n`))
+    })
+  },
+  async 'open-laboratory'([accountId = '', login = '', name = '', email = '']) {
+    if (!/^\d+$/.test(accountId) || !login || !name || !email) throw new Error(usage)
+    await withServices(async (services) => {
+      await openLaboratory(services, { name: services.config.laboratory.name, demo: false })
+      await addPerson(services, { login, name, email, provider: identityProvider, providerAccountId: accountId, roles: ['manager'] })
+    })
+  },
 }
 
-const [name = ''] = process.argv.slice(2)
+async function withServices(work: (services: Services) => Promise<void>) {
+  const config = readConfig(process.env, 'cli')
+  const { services, close } = await openServices(config, config.database.app, openLog('cli', process.stderr))
+  try {
+    await services.storage.ensureBucket()
+    await work(services)
+  } finally {
+    await close()
+  }
+}
+
+const [name = '', ...given] = process.argv.slice(2)
 const command = commands[name]
 if (!command) {
   process.stderr.write(usage)
   process.exit(2)
 }
 try {
-  await command()
+  await command(given)
 } catch (error) {
   console.error(error instanceof ConfigError ? error.message : error)
   process.exit(1)

@@ -1,7 +1,7 @@
 import { buildApp } from './app.ts'
 import { fileJobs } from './features/files/index.ts'
-import { laboratoryJobs, scheduleHeadChecks } from './features/laboratory/index.ts'
-import { readConfig } from './platform/config.ts'
+import { findLaboratory, laboratoryJobs, scheduleHeadChecks } from './features/laboratory/index.ts'
+import { ConfigError, readConfig } from './platform/config.ts'
 import { serve } from './platform/http/serve.ts'
 import { openSessions } from './platform/identity/session.ts'
 import { openLog } from './platform/logger.ts'
@@ -16,10 +16,19 @@ function systemJobs(services: Services): Job[] {
   return [sendMailJob(services), ...fileJobs(services), ...laboratoryJobs(services)]
 }
 
+/** Demo people have a published passphrase: their database is never served with real services (ruling 23). */
+async function refuseDemo(services: Services) {
+  if (services.config.demo || !(await findLaboratory(services))?.demo) return
+  throw new ConfigError([
+    { variable: 'DATABASE_URL', detail: 'names a database that holds the demonstration; real services need one of their own' },
+  ])
+}
+
 await runProcess(async () => {
   const config = readConfig(process.env, 'api')
   const log = openLog('api')
   const { services, close } = await openServices(config, config.database.app, log)
+  await refuseDemo(services)
   await services.storage.ensureBucket()
   const sessions = openSessions(config)
   const http = await serve(buildApp(services, sessions), config.port)

@@ -1,6 +1,7 @@
 import type { TagRecord } from './tag-record.ts'
 
-const blockRows = 1 << 18
+const firstBlockRows = 1 << 10
+const largestBlockRows = 1 << 18
 
 /** How far a file was from ascending order. */
 export interface Disorder {
@@ -19,12 +20,12 @@ export class GrowingTags {
   private readonly blocks: { halves: Int32Array; channels: Uint16Array }[] = []
   private halves = new Int32Array(0)
   private channels = new Uint16Array(0)
-  private used = blockRows
+  private used = 0
   private lastHigh = -0x8000_0000
   private lastLow = 0
 
   push(high: number, low: number, channel: number): void {
-    if (this.used === blockRows) this.addBlock()
+    if (this.used === this.channels.length) this.addBlock()
     const at = this.used++
     this.halves[2 * at] = low
     this.halves[2 * at + 1] = high
@@ -36,8 +37,9 @@ export class GrowingTags {
   }
 
   private addBlock(): void {
-    this.halves = new Int32Array(2 * blockRows)
-    this.channels = new Uint16Array(blockRows)
+    const rows = Math.min(largestBlockRows, Math.max(firstBlockRows, 4 * this.channels.length))
+    this.halves = new Int32Array(2 * rows)
+    this.channels = new Uint16Array(rows)
     this.blocks.push({ halves: this.halves, channels: this.channels })
     this.used = 0
   }
@@ -52,11 +54,13 @@ export class GrowingTags {
   collect(): Pick<TagRecord, 'times' | 'channels'> & Disorder {
     const halves = new Int32Array(2 * this.length)
     const channels = new Uint16Array(this.length)
-    this.blocks.forEach((block, i) => {
-      const rows = Math.min(blockRows, this.length - i * blockRows)
-      halves.set(block.halves.subarray(0, 2 * rows), 2 * i * blockRows)
-      channels.set(block.channels.subarray(0, rows), i * blockRows)
-    })
+    let at = 0
+    for (const block of this.blocks) {
+      const rows = Math.min(block.channels.length, this.length - at)
+      halves.set(block.halves.subarray(0, 2 * rows), 2 * at)
+      channels.set(block.channels.subarray(0, rows), at)
+      at += rows
+    }
     return { times: new BigInt64Array(halves.buffer), channels, ...this.disorder }
   }
 }

@@ -31,6 +31,8 @@ export interface DetectedReading {
   options: Record<string, unknown>
   /** False when something was guessed that the file does not say. */
   confident: boolean
+  /** What was guessed, as sentences for people; null when nothing was. */
+  doubt: string | null
 }
 
 /** How much of the beginning of a file the recognition looks at, in bytes. */

@@ -70,9 +70,17 @@ export function detectReading(head: Uint8Array, fileName: string): DetectedReadi
   if (head.length === 0) return { unreadable: `${fileName} is empty.` }
   const detected = notText(head) === null ? detectDelimited(head) : null
   if (detected === null)
-    return { format: 'other', version: formatVersion('other'), options: {}, confident: true }
+    return { format: 'other', version: formatVersion('other'), options: {}, confident: true, doubt: null }
   if ('unreadable' in detected) return detected
-  return { format: 'delimited', version: formatVersion('delimited'), ...detected }
+  const { options, doubts } = detected
+  const doubt = doubts.length === 0 ? null : `${doubts.join(' ')} Check the reading.`
+  return {
+    format: 'delimited',
+    version: formatVersion('delimited'),
+    options,
+    confident: doubt === null,
+    doubt,
+  }
 }
 
 /**

@@ -34,7 +34,11 @@ function resolutionByBigInt(times: BigInt64Array): bigint {
 function countsOf(channels: Uint16Array): TagSummary['channels'] {
   const counts = new Float64Array(65_536)
   for (let i = 0; i < channels.length; i++) counts[channels[i]!]! += 1
-  return Array.from(counts, (n, channel) => ({ channel, counts: n })).filter(({ counts: n }) => n > 0)
+  const found: TagSummary['channels'] = []
+  counts.forEach((n, channel) => {
+    if (n > 0) found.push({ channel, counts: n })
+  })
+  return found
 }
 
 /** Describes a record of at least one tag. */

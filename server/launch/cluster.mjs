@@ -59,6 +59,14 @@ export async function startCluster(processes, dataFolder, secrets, { fast = fals
   }
 }
 
+/** Removes the database of a data folder with all it holds; it must not be running. */
+export function removeCluster(dataFolder) {
+  const note = path.join(dataFolder, 'database-folder')
+  if (!fs.existsSync(note)) return
+  fs.rmSync(fs.readFileSync(note, 'utf8'), { recursive: true, force: true })
+  fs.rmSync(note)
+}
+
 /** PostgreSQL refuses to run as root: then it runs as the account that the Debian package made. */
 function serverAccount() {
   if (process.getuid() !== 0) return {}

@@ -1,2 +1,2 @@
-export function prepare(options?: { only?: 'packages' }): Promise<void>
+export function prepare(options?: { only?: 'packages'; tell?: (line: string) => void }): Promise<void>
 export function chromium(): string | null

@@ -13,24 +13,24 @@ const at = (...parts) => path.join(root, ...parts)
 
 /**
  * Everything a fresh clone lacks: npm packages, Debian packages, the built client. Does only what is missing, so that a
- * second run takes no time. `only: 'packages'` stops after the npm packages.
+ * second run takes no time. `only: 'packages'` stops after the npm packages; `tell` hears each step.
  */
-export async function prepare({ only } = {}) {
+export async function prepare({ only, tell = say } = {}) {
   const [major, minor] = process.versions.node.split('.').map(Number)
   if (major < 20 || (major === 20 && minor < 19)) throw new Refusal(`Node 20.19 or newer is needed; this is ${process.version}.`)
-  const release = await lock()
+  const release = await lock(tell)
   try {
-    await installPackages()
+    await installPackages(tell)
     if (only === 'packages') return
-    await installDebianPackages()
-    await build()
+    await installDebianPackages(tell)
+    await build(tell)
   } finally {
     release()
   }
 }
 
 /** Two commands in one checkout take turns at the set-up. */
-async function lock() {
+async function lock(tell) {
   const file = path.join(os.tmpdir(), `halfsilver-setup-${process.getuid()}-${pathDigest(root)}`)
   const own = JSON.stringify({ pid: process.pid, since: startTime(process.pid) })
   for (let told = false; ; ) {
@@ -42,7 +42,7 @@ async function lock() {
     }
     if (!holderLives(file)) fs.rmSync(file, { force: true })
     else if (!told) {
-      say('Another command is setting up this checkout; waiting for it')
+      tell('Another command is setting up this checkout; waiting for it')
       told = true
     }
     await pause(200)
@@ -58,14 +58,14 @@ function holderLives(file) {
   }
 }
 
-async function installPackages() {
+async function installPackages(tell) {
   const stamp = at('node_modules/.halfsilver')
   const wanted = digestOf([at('package-lock.json')])
   if (fs.existsSync(stamp) ? fs.readFileSync(stamp, 'utf8') === wanted : installedFits()) {
     fs.writeFileSync(stamp, wanted)
     return
   }
-  say('Installing npm packages')
+  tell('Installing npm packages')
   // A production environment would leave out the packages that build and test.
   const { NODE_ENV: _, ...env } = process.env
   await run('npm', ['ci', '--ignore-scripts', '--no-audit', '--no-fund', '--include=dev'], env)
@@ -83,13 +83,13 @@ function installedFits() {
   )
 }
 
-async function installDebianPackages() {
+async function installDebianPackages(tell) {
   const missing = [...(postgresBinaries() ? [] : ['postgresql']), ...(chromium() ? [] : ['chromium'])]
   if (missing.length === 0) return
   const line = `apt-get install -y ${missing.join(' ')}`
   if (process.getuid() !== 0) throw new Refusal(`The Debian packages ${missing.join(' and ')} are missing. Install them first: sudo ${line}`)
   if (!fs.existsSync('/usr/bin/apt-get')) throw new Refusal(`${missing.join(' and ')} are missing, and this is not a Debian system. Install them first.`)
-  say(`Installing Debian packages: ${missing.join(', ')}`)
+  tell(`Installing Debian packages: ${missing.join(', ')}`)
   const env = { ...process.env, DEBIAN_FRONTEND: 'noninteractive' }
   await run('apt-get', ['update', '-q'], env)
   await run('apt-get', ['install', '-y', '-q', '--no-install-recommends', ...missing], env)
@@ -103,12 +103,12 @@ export function chromium() {
 /** What the built client and the offline checker are made from. */
 const sources = ['src', 'public', 'server/contract', 'server/document', 'server/ledger-format', 'index.html', 'package-lock.json', 'tsconfig.json']
 
-async function build() {
+async function build(tell) {
   const configs = ['vite.config.ts', 'vite.checker.config.ts'].map((name) => at(name)).filter((file) => fs.existsSync(file))
   const wanted = digestOf([...sources.map((name) => at(name)), ...configs])
   const stamp = at('dist/built-from')
   if (fs.existsSync(stamp) && fs.readFileSync(stamp, 'utf8') === wanted) return
-  say('Building the client')
+  tell('Building the client')
   const { NODE_ENV: _, ...env } = process.env
   for (const config of configs) await run(process.execPath, [at('node_modules/vite/bin/vite.js'), 'build', '--config', config, '--logLevel', 'warn'], env)
   fs.writeFileSync(stamp, wanted)

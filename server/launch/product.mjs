@@ -1,6 +1,8 @@
-import { execFile } from 'node:child_process'
-import { promisify } from 'node:util'
-import { startCluster } from './cluster.mjs'
+import { spawn } from 'node:child_process'
+import fs from 'node:fs'
+import path from 'node:path'
+import { createInterface } from 'node:readline'
+import { removeCluster, startCluster } from './cluster.mjs'
 import { isDemo, productEnvironment, standIns, workerEnvironment } from './configuration.mjs'
 import { lockDataFolder, openDataFolder, secretsOf } from './data-folder.mjs'
 import { isFree } from './ports.mjs'
@@ -23,6 +25,7 @@ export async function startServices({ dataFolder: folder, port, environment = pr
   }
   try {
     await endLeftovers(dataFolder)
+    forgetHalfDemo(dataFolder, tell)
     if (!(await isFree(port))) throw new Refusal(`Port ${port} is in use. Take another one: PORT=${port + 1} npm start`)
     const secrets = secretsOf(dataFolder)
     tell('Starting database, object store, mail and sign-in')
@@ -32,11 +35,8 @@ export async function startServices({ dataFolder: folder, port, environment = pr
     ])
     const demo = isDemo(environment)
     const env = productEnvironment({ environment, port, dataFolder, secrets, database, ports, demo })
-    const { empty } = JSON.parse(await command(env, 'migrate'))
-    if (empty && demo && !process.env.NOSEED) {
-      tell('Loading the demonstration laboratory')
-      await command(env, 'seed-demo')
-    }
+    const { empty } = JSON.parse((await command(env, 'migrate')).at(-1))
+    if (empty && demo) await loadDemo(env, dataFolder, tell)
     return { url: env.PUBLIC_ORIGIN, env, workerEnv: workerEnvironment(env), ports, processes, stop }
   } catch (error) {
     await stop()
@@ -72,8 +72,39 @@ async function untilReady(url) {
   throw new Error(`The product does not become ready: ${await (await fetch(url)).text()}`)
 }
 
-async function command(env, name) {
+const halfDemo = (dataFolder) => path.join(dataFolder, 'demo-loading')
+
+async function loadDemo(env, dataFolder, tell) {
+  tell('Loading the demonstration laboratory')
+  fs.writeFileSync(halfDemo(dataFolder), '')
+  await command(env, 'seed-demo', tell)
+  fs.rmSync(halfDemo(dataFolder))
+}
+
+/** A demonstration whose loading was interrupted is begun again: nothing real can be in it yet. */
+function forgetHalfDemo(dataFolder, tell) {
+  if (!fs.existsSync(halfDemo(dataFolder))) return
+  tell('The demonstration was loaded only in part; beginning again')
+  for (const name of ['objects', 'keys', 'fakes']) fs.rmSync(path.join(dataFolder, name), { recursive: true, force: true })
+  removeCluster(dataFolder)
+  fs.rmSync(halfDemo(dataFolder))
+}
+
+/** Runs a command of server/cli.ts and answers its lines; `tell` hears each as it comes. */
+function command(env, name, tell = () => undefined) {
   const { command: node, args, cwd } = typescript('server/cli.ts', name)
-  const { stdout } = await promisify(execFile)(node, args, { cwd, env, maxBuffer: 1 << 26 })
-  return stdout.trim().split('\n').at(-1)
+  const child = spawn(node, args, { cwd, env, stdio: ['ignore', 'pipe', 'pipe'], detached: true })
+  const lines = []
+  createInterface({ input: child.stdout }).on('line', (line) => {
+    lines.push(line)
+    tell(`  ${line}`)
+  })
+  let complaint = ''
+  child.stderr.on('data', (chunk) => {
+    complaint = (complaint + chunk).slice(-4000)
+  })
+  return new Promise((done, fail) => {
+    child.once('error', fail)
+    child.once('close', (code) => (code === 0 ? done(lines) : fail(new Error(`The command ${name} failed.\n${complaint}`))))
+  })
 }

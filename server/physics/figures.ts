@@ -20,7 +20,10 @@ export function figuresOf(kind: string, result: unknown, version?: number): Repo
 }
 
 /** Value, u and unit at a JSON pointer: of a quantity, or of a bare number; null where there is none. */
-export function figureAt(result: unknown, pointer: string): { value: number; u: number | null; unit: string } | null {
+export function figureAt(
+  result: unknown,
+  pointer: string,
+): { value: number; u: number | null; unit: string } | null {
   const found = atPointer(result, pointer)
   if (typeof found === 'number') return { value: found, u: null, unit: '1' }
   if (typeof found !== 'object' || found === null) return null

@@ -20,7 +20,9 @@ export function picosecondsParameter({ min, ...described }: Described & { min?: 
     .union([z.int(), z.string().regex(/^-?(0|[1-9]\d*)$/, 'Give whole picoseconds.')])
     .overwrite((value) => (Number.isSafeInteger(Number(value)) ? Number(value) : value))
     .refine((value) => within(BigInt(value)), { error: 'More than 2^61 ps overflows 64-bit times.' })
-    .refine((value) => min === undefined || BigInt(value) >= BigInt(min), { error: `Give at least ${min ?? 0} ps.` })
+    .refine((value) => min === undefined || BigInt(value) >= BigInt(min), {
+      error: `Give at least ${min ?? 0} ps.`,
+    })
     .meta({ unit: 'ps', ...described })
 }
 
@@ -41,7 +43,9 @@ export function quantityParameter(unit: string, described: Described) {
 
 /** Map from channel number, as text, to a value for that channel. */
 export function perChannel<T extends z.ZodType>(value: T, described: Described) {
-  return z.record(z.string().regex(/^(0|[1-9]\d{0,4})$/, 'Name a channel by its number.'), value).meta(described)
+  return z
+    .record(z.string().regex(/^(0|[1-9]\d{0,4})$/, 'Name a channel by its number.'), value)
+    .meta(described)
 }
 
 export const uDurationParameter = z.number().min(0).optional().meta({

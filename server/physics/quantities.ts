@@ -25,7 +25,8 @@ export function finite(x: number | null): number | null {
 }
 
 /** Root of a sum of squares. */
-export const inQuadrature = (...terms: number[]): number => Math.sqrt(terms.reduce((sum, t) => sum + t * t, 0))
+export const inQuadrature = (...terms: number[]): number =>
+  Math.sqrt(terms.reduce((sum, t) => sum + t * t, 0))
 
 /** Picoseconds for JSON: a number up to 2^53, text of digits beyond. */
 export function picosecondsJson(ps: bigint): number | string {

@@ -3,10 +3,18 @@ import { Problem } from '../contract/problems.ts'
 import type { KindDefinition } from './definition.ts'
 import { coincidences } from './kinds/coincidences/definition.ts'
 import { correlation } from './kinds/correlation/definition.ts'
+import { heralded } from './kinds/heralded/definition.ts'
+import { pulsedCorrelation } from './kinds/pulsed-correlation/definition.ts'
 import { singles } from './kinds/singles/definition.ts'
 
 /** Every kind of calculation, in the order in which they are offered. */
-export const kindDefinitions: readonly KindDefinition[] = [singles, coincidences, correlation]
+export const kindDefinitions: readonly KindDefinition[] = [
+  singles,
+  coincidences,
+  correlation,
+  pulsedCorrelation,
+  heralded,
+]
 
 /** The definition of a kind: of the newest version, or of the one that a signed record names. */
 export function kindDefinition(kind: string, version?: number): KindDefinition {
@@ -25,13 +33,20 @@ export function parseParameters(definition: KindDefinition, parameters: unknown)
   const parsed = definition.parameters.safeParse(parameters)
   if (parsed.success) return parsed.data
   const errors = parsed.error.issues.flatMap((issue) => fieldErrors(issue))
-  throw new Problem('invalid-values', `The parameters of "${definition.kind}" do not fit: ${errors[0]!.detail}`, { errors })
+  throw new Problem(
+    'invalid-values',
+    `The parameters of "${definition.kind}" do not fit: ${errors[0]!.detail}`,
+    { errors },
+  )
 }
 
 function fieldErrors(issue: z.core.$ZodIssue): { pointer: string; detail: string }[] {
   const pointer = `/parameters${issue.path.map((step) => `/${escaped(String(step))}`).join('')}`
   if (issue.code !== 'unrecognized_keys') return [{ pointer, detail: issue.message }]
-  return issue.keys.map((key) => ({ pointer: `${pointer}/${escaped(key)}`, detail: `There is no parameter "${key}".` }))
+  return issue.keys.map((key) => ({
+    pointer: `${pointer}/${escaped(key)}`,
+    detail: `There is no parameter "${key}".`,
+  }))
 }
 
 /** A step of a JSON pointer (RFC 6901). */

@@ -1,4 +1,4 @@
-import { pino, type Logger } from 'pino'
+import { pino, type DestinationStream, type Logger } from 'pino'
 
 export type { Logger }
 
@@ -14,6 +14,7 @@ export const redacted = [
 ]
 
 /** Lines of JSON on standard output; LOG_LEVEL (info) says how much. */
-export function openLog(name: string): Logger {
-  return pino({ name, level: process.env.LOG_LEVEL ?? 'info', redact: { paths: redacted, censor: '[not logged]' } })
+export function openLog(name: string, destination?: DestinationStream): Logger {
+  const options = { name, level: process.env.LOG_LEVEL ?? 'info', redact: { paths: redacted, censor: '[not logged]' } }
+  return destination ? pino(options, destination) : pino(options)
 }

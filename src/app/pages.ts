@@ -10,4 +10,9 @@ export const pages: RouteObject[] = [
   page(paths.notebooks, () => import('./pages/notebooks-page.tsx')),
   page(paths.notebook, () => import('./pages/notebook-page.tsx')),
   page(paths.entry, () => import('./pages/entry-page.tsx')),
+  page(paths.review, () => import('./pages/review-page.tsx')),
+  page(paths.witness, () => import('./pages/witness-page.tsx')),
+  page(paths.ledger, () => import('./pages/ledger-page.tsx')),
+  page(paths.people, () => import('./pages/people-page.tsx')),
+  page(paths.keys, () => import('./pages/key-page.tsx')),
 ]

@@ -8,6 +8,7 @@ export const paths = {
   review: '/entries/:entryId/review',
   witness: '/witness',
   ledger: '/ledger',
+  people: '/people',
   keys: '/keys',
 } as const
 

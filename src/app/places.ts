@@ -27,6 +27,7 @@ const places: Place[] = [
   },
   { path: paths.witness, label: 'Witness desk', icon: 'eye', roles: ['supervisor'], also: /^\/entries\/[^/]+\/review/ },
   { path: paths.ledger, label: 'Ledger', icon: 'chain', roles: everyone },
+  { path: paths.people, label: 'People', icon: 'people', roles: everyone },
 ]
 
 /** Places of the rail for this person, of those whose page is built. */

@@ -1,6 +1,7 @@
 import { useId, useMemo, useState, type KeyboardEvent, type PointerEvent } from 'react'
 import type { Figure } from '../../server/contract/figure.ts'
 import { TextButton } from '../ui/button.tsx'
+import { Symbol } from '../ui/symbol.tsx'
 import { XAxis, YAxis } from './axes.tsx'
 import { layoutFigure, type FigureLayout } from './figure-layout.ts'
 import { FigureTable } from './figure-table.tsx'
@@ -47,6 +48,7 @@ export function FigurePlot({ figure, height, plain = false }: FigurePlotProps) {
         className="hs-plot-stage"
         role="img"
         aria-label={figure.description}
+        aria-description={plain ? undefined : 'Arrow keys read out the points.'}
         tabIndex={plain ? undefined : 0}
         onKeyDown={plain ? undefined : onKeyDown}
         onBlur={() => setIndex(null)}
@@ -65,9 +67,7 @@ export function FigurePlot({ figure, height, plain = false }: FigurePlotProps) {
       </div>
       {!plain && (
         <div className="hs-readout">
-          <output aria-live="polite" className={reading ? 'hs-fig' : undefined}>
-            {reading?.text ?? 'Point at the plot or use the arrow keys to read values.'}
-          </output>
+          <output aria-live="polite">{reading && <ReadingWords reading={reading} />}</output>
           <TextButton aria-expanded={table} onClick={() => setTable(!table)}>
             Data table
           </TextButton>
@@ -128,5 +128,18 @@ function Cursor({ reading, layout }: { reading: Reading; layout: FigureLayout })
       <path className="hs-cursor" d={`M${x} ${placed.top}V${layout.axisTop}`} />
       <circle className="hs-cursor-point" cx={x} cy={placed.y(reading.y)} r="5" />
     </>
+  )
+}
+
+function ReadingWords({ reading }: { reading: Reading }) {
+  return (
+    <span className="hs-readout-words">
+      {reading.parts.map((part) => (
+        <span key={part.text}>
+          {part.symbol && <Symbol>{part.symbol}</Symbol>}
+          <span className="hs-fig">{part.text}</span>
+        </span>
+      ))}
+    </span>
   )
 }

@@ -1,18 +1,14 @@
 /** A number for an axis: true minus sign, thin spaces in thousands from five digits on. */
 export function axisNumber(text: string): string {
   const minus = text.replace(/-/g, '−')
-  return minus.replace(/\d{5,}(?=$|\.)/, (digits) => digits.replace(/\B(?=(\d{3})+$)/g, '\u2009'))
+  return minus.replace(/^−?\d{5,}/, (whole) => whole.replace(/(?<=\d)(?=(\d{3})+$)/g, '\u2009'))
 }
 
 /** A read-out figure with as many digits as help: `digits` significant ones, no exponent between 1e-4 and 1e7. */
 export function readoutNumber(value: number, digits = 4): string {
   if (value === 0) return '0'
   const size = Math.abs(value)
-  if (size < 1e-4 || size >= 1e7)
-    return value
-      .toExponential(digits - 1)
-      .replace('e', ' × 10^')
-      .replace(/-/g, '−')
+  if (size < 1e-4 || size >= 1e7) return withPower(value, digits)
   const places = Math.max(0, Math.min(10, digits - 1 - Math.floor(Math.log10(size))))
   return axisNumber(value.toFixed(places))
 }

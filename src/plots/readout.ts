@@ -2,7 +2,12 @@ import { bisectCenter } from 'd3-array'
 import type { Figure, FigureSeries } from '../../server/contract/figure.ts'
 import { axisNumber, readoutNumber, withUncertainty } from './numbers.ts'
 
-export type Reading = { x: number; y: number; text: string }
+export type Reading = {
+  x: number
+  y: number
+  /** One figure each: a symbol in the short notation of axes, or null, and what it is. */
+  parts: { symbol: string | null; text: string }[]
+}
 
 /** The series a reading is taken from: the first that was measured, else the first of all. */
 export function readSeries(figure: Figure): FigureSeries | null {
@@ -22,7 +27,7 @@ export function nearest(series: FigureSeries, x: number): number {
 const unitOf = (unit: string) => (unit && unit !== '1' ? ` ${unit}` : '')
 
 /**
- * One point in words: x, y ± error, and the counts of the same row of the data table where it has a column of counts.
+ * One point: x, y ± error, and the counts of the same row of the data table where it has a column of counts.
  * Null where the series has no value.
  */
 export function readingAt(figure: Figure, series: FigureSeries, index: number): Reading | null {
@@ -32,13 +37,19 @@ export function readingAt(figure: Figure, series: FigureSeries, index: number): 
   if (x === undefined || y === null || !panel) return null
   const low = series.low?.[index] ?? null
   const high = series.high?.[index] ?? null
-  const name = figure.x.symbol ?? figure.x.label
-  const parts = [
-    `${name} = ${readoutNumber(x)}${unitOf(figure.x.unit)}`,
-    `${panel.y.symbol ?? panel.y.label} = ${valueWithError(y, low, high)}${unitOf(panel.y.unit)}`,
-    countsAt(figure, x),
-  ]
-  return { x, y, text: parts.filter(Boolean).join(', ') }
+  const counts = countsAt(figure, x)
+  return {
+    x,
+    y,
+    parts: [
+      { symbol: figure.x.symbol ?? figure.x.label, text: ` = ${readoutNumber(x)}${unitOf(figure.x.unit)}` },
+      {
+        symbol: panel.y.symbol ?? panel.y.label,
+        text: ` = ${valueWithError(y, low, high)}${unitOf(panel.y.unit)}`,
+      },
+      ...(counts === null ? [] : [{ symbol: null, text: counts }]),
+    ],
+  }
 }
 
 /** Symmetric errors as ±; lopsided ones (few counts) with both ends. */

@@ -33,7 +33,7 @@ beforeAll(async () => {
       created += 1
       throw new Problem('wrong-state', `attempt ${created}`)
     }),
-    route(endpoints.withdraw, async ({ body }) => ({ reason: body.reason, count: ++created }) as never),
+    route(endpoints.withdrawEntry, async ({ body }) => ({ reason: body.reason, count: ++created }) as never),
   ], (config) => ({ ...config, production: true }))
   maren = await signIn(app.url, 'maren')
 })
@@ -96,7 +96,7 @@ describe('a personal token', () => {
     expect((await fetch(`${app.url}/api/v1/tokens`, { headers: bearer })).status).toBe(403)
   })
 
-  test.each([`expires_at = now() - interval '1 second'`, `expires_at = now() + interval '1 day', revoked_at = now()`])(
+  test.each([`expires_at = now() - interval '1 hour'`, `expires_at = now() + interval '1 day', revoked_at = now()`])(
     'is nobody with %s',
     async (columns) => {
       await setToken(columns)
@@ -227,7 +227,8 @@ describe('headers', () => {
 
   test('no cookie reaches a log', () => {
     expect(app.logged.length).toBeGreaterThan(5)
-    expect(app.logged.join('')).not.toContain(maren.cookies().split('=')[1])
+    const value = maren.cookies().split('=')[1] ?? 'none'
+    expect(app.logged.filter((line) => line.includes(value))).toEqual([])
   })
 })
 
@@ -272,17 +273,14 @@ describe('documents', () => {
   })
 
   test('health and readiness', async () => {
+    app.clock.set(new Date())
     expect(await (await fetch(`${app.url}/healthz`)).json()).toEqual({ alive: true })
     expect(await (await fetch(`${app.url}/readyz`)).json()).toEqual({ ready: true, database: 'reachable', queue: 'reachable', store: 'reachable' })
   })
 
   test('not ready when the clocks of server and database disagree (threat B4)', async () => {
-    const now = app.clock.now()
-    app.clock.advance(6000)
-    try {
-      expect((await fetch(`${app.url}/readyz`)).status).toBe(503)
-    } finally {
-      app.clock.set(now)
-    }
+    app.clock.set(new Date(Date.now() + 6000))
+    expect((await fetch(`${app.url}/readyz`)).status).toBe(503)
+    app.clock.set(new Date())
   })
 })

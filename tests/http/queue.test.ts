@@ -1,15 +1,17 @@
+import { randomUUID } from 'node:crypto'
+import PgBoss from 'pg-boss'
 import { afterAll, beforeAll, expect, inject, test } from 'vitest'
 import { pino } from 'pino'
 import { z } from 'zod'
 import { readConfig } from '../../server/platform/config.ts'
 import { openServices, type OpenServices } from '../../server/platform/open-services.ts'
 import { job } from '../../server/platform/queue/job.ts'
-import { queueNames } from '../../server/platform/queue/queues.ts'
+import { queueNames, queueSchema, type QueueName } from '../../server/platform/queue/queues.ts'
 
 const log = pino({ level: 'silent' })
 let open: OpenServices
-// A queue that the running product does not serve in this test: taken from the names by hand, kept apart by its key.
-const queue = 'build-export'
+// A queue of the test's own, which the running product does not serve.
+const queue = `test-${randomUUID()}` as QueueName
 const seen: { key: string; at: number }[] = []
 const failures = new Map<string, number>()
 
@@ -19,6 +21,10 @@ async function opened() {
 }
 
 beforeAll(async () => {
+  const owner = new PgBoss({ connectionString: inject('ownerDatabaseUrl'), schema: queueSchema, supervise: false, schedule: false })
+  await owner.start()
+  for (const name of [queue, `${queue}-slow`, `${queue}-left`]) await owner.createQueue(name)
+  await owner.stop({ graceful: false })
   open = await opened()
   await open.services.queue.work(
     job(queue, z.object({ key: z.string(), fail: z.number().optional(), takes: z.number().optional() }), async ({ key, fail = 0, takes = 0 }) => {
@@ -90,15 +96,37 @@ test('stopping waits for the job in flight', async () => {
   const other = await opened()
   let finished = false
   await other.services.queue.work(
-    job('check-heads', z.object({ key: z.string() }), async () => {
+    job(`${queue}-slow` as QueueName, z.object({ key: z.string() }), async () => {
       await new Promise((done) => setTimeout(done, 1200))
       finished = true
     }),
   )
-  await other.services.queue.send('check-heads', { key: 'slow' })
+  await other.services.queue.send(`${queue}-slow` as QueueName, { key: 'slow' })
   await new Promise((done) => setTimeout(done, 500))
   await other.close()
   expect(finished).toBe(true)
+})
+
+test('a job whose process died is taken up by the next that serves its queue', async () => {
+  const left = `${queue}-left` as QueueName
+  const { db, queue: jobs } = open.services
+  const id = await jobs.send(left, { key: 'left' })
+  // What a killed process leaves: a job that is running, and nobody who runs it.
+  await db.run(`update queue.job set state = 'active', started_on = now() where id = :id`, { id })
+  const next = await opened()
+  await next.services.queue.work(job(left, z.object({ key: z.string() }), async ({ key }) => void seen.push({ key, at: Date.now() })))
+  expect(await arrival('left', 5000)).not.toBeNull()
+  await next.close()
+})
+
+test('a job that runs is left alone while its process lives', async () => {
+  await open.services.queue.send(queue, { key: 'long', takes: 1500 })
+  await new Promise((done) => setTimeout(done, 500))
+  const other = await opened()
+  await other.services.queue.work(job(queue, z.object({ key: z.string() }), async ({ key }) => void seen.push({ key, at: Date.now() })))
+  await new Promise((done) => setTimeout(done, 1500))
+  await other.close()
+  expect(seen.filter(({ key }) => key === 'long')).toHaveLength(1)
 })
 
 test('every queue exists, and a process cannot make one', async () => {

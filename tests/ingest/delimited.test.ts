@@ -118,6 +118,13 @@ describe('names and units of columns', () => {
     })
   })
 
+  it('what was guessed is told', () => {
+    expect(detect('time_ps,channel\n1000,1\n2000,2\n').doubt).toBe(null)
+    expect(detect('time,channel\n1000,1\n2000,2\n').doubt).toBe(
+      'The file does not say the unit of the times: ps was assumed. Check the reading.',
+    )
+  })
+
   it('two times, or two channels, are a guess', () => {
     expect(detect('time_ps,time_ns,channel\n1000,1,1\n2000,2,2\n')).toMatchObject({
       options: { time: 'time_ps' },

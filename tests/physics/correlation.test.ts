@@ -12,15 +12,20 @@ const correlation = (parameters: unknown, ...records: ReturnType<typeof recordOf
 const expected = readExpected()
 
 describe('correlation of the reference records (reference/tags/expected.json)', () => {
-  const cases = (['emitter-cw', 'chaotic'] as const).flatMap((name) => expected[name].correlation!.map((x) => ({ name, ...x })))
+  const cases = (['emitter-cw', 'chaotic'] as const).flatMap((name) =>
+    expected[name].correlation!.map((x) => ({ name, ...x })),
+  )
 
-  it.each(cases)('$name: channels $a and $b, bin $binPs, offset $offsetPs: every bin', async ({ name, ...x }) => {
-    const { a, b, binPs, halfRangePs, offsetPs } = x
-    const { result } = await correlation({ a, b, binPs, halfRangePs, offsetPs }, readReferenceTags(name))
-    expect(result.counts).toEqual(x.counts)
-    expect(result.delaysPs).toEqual(x.delaysPs)
-    x.g2.forEach((g, k) => closeTo(result.g2[k], g, 1e-9))
-  })
+  it.each(cases)(
+    '$name: channels $a and $b, bin $binPs, offset $offsetPs: every bin',
+    async ({ name, ...x }) => {
+      const { a, b, binPs, halfRangePs, offsetPs } = x
+      const { result } = await correlation({ a, b, binPs, halfRangePs, offsetPs }, readReferenceTags(name))
+      expect(result.counts).toEqual(x.counts)
+      expect(result.delaysPs).toEqual(x.delaysPs)
+      x.g2.forEach((g, k) => closeTo(result.g2[k], g, 1e-9))
+    },
+  )
 
   it('two-level fit of emitter-cw finds t1 = 8 ns within 3 u', async () => {
     const parameters = { a: 1, b: 2, binPs: 500, halfRangePs: 60000, fit: { model: 'two-level' } }
@@ -33,7 +38,13 @@ describe('correlation of the reference records (reference/tags/expected.json)', 
   })
 
   it('Lorentzian fit of chaotic light finds tc = 2 us and beta = 1 within 3 u', async () => {
-    const parameters = { a: 1, b: 2, binPs: 200000, halfRangePs: 12000000, fit: { model: 'chaotic-lorentzian' } }
+    const parameters = {
+      a: 1,
+      b: 2,
+      binPs: 200000,
+      halfRangePs: 12000000,
+      fit: { model: 'chaotic-lorentzian' },
+    }
     const { result } = await correlation(parameters, readReferenceTags('chaotic'))
     const { tc, beta } = result.fit!.parameters
     expect(result.fit!.converged).toBe(true)
@@ -73,7 +84,10 @@ describe('bins in closed form (definitions.md)', () => {
   })
 
   it('check 19: background of unequal fractions', () => {
-    const share = signalShare({ rhoA: 0.8, rhoB: 0.6, uRhoA: 0.01, uRhoB: 0.02 }, { countsA: 0, countsB: 0, durationS: 1 })
+    const share = signalShare(
+      { rhoA: 0.8, rhoB: 0.6, uRhoA: 0.01, uRhoB: 0.02 },
+      { countsA: 0, countsB: 0, durationS: 1 },
+    )
     const corrected = correctedQuantity({ value: 0.616, u: 0.02, unit: '1' }, share)
     closeTo(corrected.value, 0.2, 1e-12)
     closeTo(corrected.u, 0.0504700130991, 1e-11)
@@ -91,7 +105,13 @@ describe('bins in closed form (definitions.md)', () => {
 })
 
 describe('correlation by hand', () => {
-  const record = recordOf([[0, 1], [1000, 2], [2000, 1], [2990, 2], [100_000, 1]])
+  const record = recordOf([
+    [0, 1],
+    [1000, 2],
+    [2000, 1],
+    [2990, 2],
+    [100_000, 1],
+  ])
 
   it('the cable offset is subtracted from the delay and added back in the norm', async () => {
     const { result } = await correlation({ a: 1, b: 2, binPs: 10, halfRangePs: 20, offsetPs: 995 }, record)
@@ -112,15 +132,20 @@ describe('correlation by hand', () => {
   })
 
   it('refuses an offset of a channel against itself, and a range as long as the record', async () => {
-    await expect(correlation({ a: 1, b: 1, binPs: 10, halfRangePs: 20, offsetPs: 5 }, record)).rejects.toMatchObject({
+    await expect(
+      correlation({ a: 1, b: 1, binPs: 10, halfRangePs: 20, offsetPs: 5 }, record),
+    ).rejects.toMatchObject({
       errors: [{ pointer: '/parameters/offsetPs' }],
     })
     await expect(correlation({ a: 1, b: 2, binPs: 10, halfRangePs: 99_990 }, record)).rejects.toMatchObject({
       errors: [{ pointer: '/parameters/halfRangePs' }],
     })
-    await expect(correlation({ a: 1, b: 2, binPs: 1, halfRangePs: 10, fit: { model: 'two-level', start: { tc: 1 } } }, record)).rejects.toThrow(
-      /has no parameter "tc"/,
-    )
+    await expect(
+      correlation(
+        { a: 1, b: 2, binPs: 1, halfRangePs: 10, fit: { model: 'two-level', start: { tc: 1 } } },
+        record,
+      ),
+    ).rejects.toThrow(/has no parameter "tc"/)
   })
 
   it('an empty channel gives null g2 and a note, and refuses a fit', async () => {

@@ -1,5 +1,12 @@
 import { describe, expect, it } from 'vitest'
-import { meanGaussian, meanOneSided, meanTwoSided, oneSidedExponential, sigmaOfFwhm, twoSidedExponential } from '../../server/physics/fits/gaussian-response.ts'
+import {
+  meanGaussian,
+  meanOneSided,
+  meanTwoSided,
+  oneSidedExponential,
+  sigmaOfFwhm,
+  twoSidedExponential,
+} from '../../server/physics/fits/gaussian-response.ts'
 import type { FitModel } from '../../server/physics/fits/model.ts'
 import { drivenDip } from '../../server/physics/fits/models/driven.ts'
 import { fitModels, fitModelNames } from '../../server/physics/fits/models/index.ts'
@@ -14,9 +21,11 @@ describe('closed form of the models (definitions.md)', () => {
     closeTo(twoSidedExponential(0, 1000, 200), 0.858479616467, 1e-11)
   })
 
-  it('check 21: t 8000, FWHM 495, at 0', () => closeTo(twoSidedExponential(0, 8000, sigmaOfFwhm(495)), 0.979375315772, 1e-11))
+  it('check 21: t 8000, FWHM 495, at 0', () =>
+    closeTo(twoSidedExponential(0, 8000, sigmaOfFwhm(495)), 0.979375315772, 1e-11))
 
-  it('check 22: one-sided exponential', () => closeTo(oneSidedExponential(300, 1000, 200), 0.682623509041, 1e-11))
+  it('check 22: one-sided exponential', () =>
+    closeTo(oneSidedExponential(300, 1000, 200), 0.682623509041, 1e-11))
 
   it('check 23: two-level, mean over a bin', () => {
     closeTo(fitModels['two-level'].mean(-250, 250, 0, [0, 8000, 0]), 0.015463503243, 1e-10)
@@ -39,7 +48,13 @@ describe('closed form of the models (definitions.md)', () => {
   })
 
   it('nothing overflows far from zero or with a wide response', () => {
-    for (const [x, t, sigma] of [[1e6, 1, 1000], [-1e6, 1, 1000], [1e6, 1000, 1], [-1e6, 1000, 1], [0, 1, 1e5]] as const) {
+    for (const [x, t, sigma] of [
+      [1e6, 1, 1000],
+      [-1e6, 1, 1000],
+      [1e6, 1000, 1],
+      [-1e6, 1000, 1],
+      [0, 1, 1e5],
+    ] as const) {
       const value = oneSidedExponential(x, t, sigma)
       expect(value).toBeGreaterThanOrEqual(0)
       expect(value).toBeLessThanOrEqual(1)
@@ -51,17 +66,38 @@ describe('means over a bin', () => {
   /** Plain quadrature of the point-wise form, with pieces short against every scale. */
   const plain = (f: (x: number) => number, from: number, to: number) => meanByQuadrature(f, from, to, 0, 20)
 
-  it.each([[0, 300], [-250, 250], [-700, -200], [1000, 1500]])('closed forms equal quadrature over [%d, %d]', (from, to) => {
-    closeTo(meanTwoSided(from, to, 800, 120), plain((x) => twoSidedExponential(x, 800, 120), from, to), 1e-10)
-    closeTo(meanTwoSided(from, to, 800, 0), plain((x) => twoSidedExponential(x, 800, 0), from, to), 1e-10)
-    closeTo(meanOneSided(from, to, 800, 120), plain((x) => oneSidedExponential(x, 800, 120), from, to), 1e-10)
+  it.each([
+    [0, 300],
+    [-250, 250],
+    [-700, -200],
+    [1000, 1500],
+  ])('closed forms equal quadrature over [%d, %d]', (from, to) => {
+    closeTo(
+      meanTwoSided(from, to, 800, 120),
+      plain((x) => twoSidedExponential(x, 800, 120), from, to),
+      1e-10,
+    )
+    closeTo(
+      meanTwoSided(from, to, 800, 0),
+      plain((x) => twoSidedExponential(x, 800, 0), from, to),
+      1e-10,
+    )
+    closeTo(
+      meanOneSided(from, to, 800, 120),
+      plain((x) => oneSidedExponential(x, 800, 120), from, to),
+      1e-10,
+    )
     const s = 500
     const smooth = Math.hypot(s, 120)
     const gauss = (x: number) => (s / smooth) * Math.exp((-x * x) / (2 * smooth * smooth))
     closeTo(meanGaussian(from, to, s, 120), plain(gauss, from, to), 1e-10)
   })
 
-  it.each([[0, 300], [-250, 250], [100, 103]])('a response by quadrature equals the closed form over [%d, %d]', (from, to) => {
+  it.each([
+    [0, 300],
+    [-250, 250],
+    [100, 103],
+  ])('a response by quadrature equals the closed form over [%d, %d]', (from, to) => {
     for (const sigma of [1, 40, 400]) {
       const byQuadrature = meanByQuadrature((x) => Math.exp(-Math.abs(x) / 800), from, to, sigma, 400)
       closeTo(byQuadrature, meanTwoSided(from, to, 800, sigma), 1e-9)
@@ -73,13 +109,23 @@ describe('means over a bin', () => {
     const m = Math.sqrt(gamma ** 2 / 16 - rabi ** 2)
     const decay = (3 * gamma) / 4
     const [slow, fast] = [1 / (decay - m), 1 / (decay + m)]
-    const mean = (1 + decay / m) / 2 * meanTwoSided(-100, 400, slow, 150) + ((1 - decay / m) / 2) * meanTwoSided(-100, 400, fast, 150)
+    const mean =
+      ((1 + decay / m) / 2) * meanTwoSided(-100, 400, slow, 150) +
+      ((1 - decay / m) / 2) * meanTwoSided(-100, 400, fast, 150)
     closeTo(fitModels.driven.mean(-100, 400, 150, [0, rabi, gamma, 0]), 1 - mean, 1e-9)
   })
 
-  it.each([[0.02, 0.004], [0.002, 0.004], [0.0010004, 0.004]])('the driven emitter equals quadrature, rabi %d and gamma %d', (rabi, gamma) => {
+  it.each([
+    [0.02, 0.004],
+    [0.002, 0.004],
+    [0.0010004, 0.004],
+  ])('the driven emitter equals quadrature, rabi %d and gamma %d', (rabi, gamma) => {
     for (const sigma of [0, 30, 150]) {
-      for (const [from, to] of [[-60, 90], [200, 260], [-500, -100]] as const) {
+      for (const [from, to] of [
+        [-60, 90],
+        [200, 260],
+        [-500, -100],
+      ] as const) {
         const byQuadrature = meanByQuadrature((x) => drivenDip(x, rabi, gamma), from, to, sigma, 20)
         const mean = fitModels.driven.mean(from, to, sigma, [0, rabi, gamma, 0])
         expect(Math.abs(1 - mean - byQuadrature)).toBeLessThan(1e-9)
@@ -89,14 +135,19 @@ describe('means over a bin', () => {
 
   it('complex erfcx: real axis, and erfcx(iy) = exp(-y^2) (1 - i erfi(y)) as its real part', () => {
     for (const x of [0, 0.3, 1, 4, 50]) closeTo(complexErfcx({ re: x, im: 0 }).re, erfcx(x), 1e-12)
-    for (const y of [0.1, 1, 3, 5]) expect(Math.abs(complexErfcx({ re: 0, im: y }).re - Math.exp(-y * y))).toBeLessThan(1e-12)
+    for (const y of [0.1, 1, 3, 5])
+      expect(Math.abs(complexErfcx({ re: 0, im: y }).re - Math.exp(-y * y))).toBeLessThan(1e-12)
     const [above, below] = [complexErfcx({ re: 0.7, im: 2 }), complexErfcx({ re: 0.7, im: -2 })]
     expect(above).toEqual({ re: below.re, im: -below.im })
   })
 
   it('Gauss-Legendre: twenty points are exact for x^38', () => {
     const { nodes, weights } = gaussLegendre(20)
-    closeTo(nodes.reduce((sum, x, i) => sum + weights[i]! * x ** 38, 0), 2 / 39, 1e-13)
+    closeTo(
+      nodes.reduce((sum, x, i) => sum + weights[i]! * x ** 38, 0),
+      2 / 39,
+      1e-13,
+    )
   })
 
   it('every model tells its g2(0) as its own value in a narrow bin at zero', () => {

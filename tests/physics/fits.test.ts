@@ -10,7 +10,11 @@ import { closeTo } from './close-to.ts'
 import { poisson, seeded } from './seeded.ts'
 
 /** A histogram of bins b over +-K b with Poisson counts about a known model. */
-function simulated(model: FitModel, values: number[], options: { b: number; K: number; level: number; fwhm?: number; seed: number }): CorrelationData {
+function simulated(
+  model: FitModel,
+  values: number[],
+  options: { b: number; K: number; level: number; fwhm?: number; seed: number },
+): CorrelationData {
   const { b, K, level, fwhm = 0, seed } = options
   const random = seeded(seed)
   const n = 2 * K + 1
@@ -18,7 +22,9 @@ function simulated(model: FitModel, values: number[], options: { b: number; K: n
   const to = from.map((x) => x + b)
   const norm = new Float64Array(n).fill(level)
   const factor = model.ofCounts ? 1 : level
-  const counts = from.map((x, i) => poisson(random, factor * model.mean(x, to[i]!, sigmaOfFwhm(fwhm), values)))
+  const counts = from.map((x, i) =>
+    poisson(random, factor * model.mean(x, to[i]!, sigmaOfFwhm(fwhm), values)),
+  )
   return { from, to, counts, norm }
 }
 
@@ -38,14 +44,22 @@ describe('fits recover simulated truth', () => {
     const found = fit(data, { model: name, responseFwhmPs: 'fwhm' in options ? options.fwhm : undefined })
     expect(found.converged).toBe(true)
     Object.entries(found.parameters).forEach(([parameter, q], j) => {
-      expect(Math.abs(q.value! - values[j]!) / q.u!, `${parameter} ${q.value} ± ${q.u}, truth ${values[j]}`).toBeLessThan(4)
+      expect(
+        Math.abs(q.value! - values[j]!) / q.u!,
+        `${parameter} ${q.value} ± ${q.u}, truth ${values[j]}`,
+      ).toBeLessThan(4)
     })
     expect(Math.abs(found.chi2! - found.dof)).toBeLessThan(4 * Math.sqrt(2 * found.dof))
   })
 
   it('u of t1 is the scatter of t1 over repeated simulations', () => {
     const runs = Array.from({ length: 60 }, (_, i) => {
-      const data = simulated(fitModels['two-level'], [0.2, 8000, 0], { b: 1000, K: 40, level: 150, seed: 100 + i })
+      const data = simulated(fitModels['two-level'], [0.2, 8000, 0], {
+        b: 1000,
+        K: 40,
+        level: 150,
+        seed: 100 + i,
+      })
       const { t1 } = fit(data, { model: 'two-level' }).parameters
       return { value: t1!.value!, u: t1!.u! }
     })
@@ -106,16 +120,27 @@ describe('bounds and honest failure (definitions.md B3)', () => {
     expect(found.g2Zero).toEqual({ value: 0, u: null, unit: '1', upper: g0!.upper })
     // At the limit the profiled deviance has risen by 1: fit again with a start that is held by a g0 of that value.
     const held = minimise({
-      parameters: fitModels['two-level'].parameters(data).map((p) => (p.name === 'g0' ? { ...p, fixed: true } : p)),
+      parameters: fitModels['two-level']
+        .parameters(data)
+        .map((p) => (p.name === 'g0' ? { ...p, fixed: true } : p)),
       start: [g0!.upper!, t1!.value!, 0],
       estimator: poissonEstimator(data.counts),
-      model: (values, out) => out.forEach((_, i) => (out[i] = data.norm[i]! * fitModels['two-level'].mean(data.from[i]!, data.to[i]!, 0, values))),
+      model: (values, out) =>
+        out.forEach(
+          (_, i) =>
+            (out[i] = data.norm[i]! * fitModels['two-level'].mean(data.from[i]!, data.to[i]!, 0, values)),
+        ),
     })
     closeTo(held.deviance - found.deviance!, 1, 1e-5)
   })
 
   it('c = 1 gives a lower limit, and an upper limit of g2(0)', () => {
-    const data = simulated(fitModels['three-level'], [1, 0.5, 4000, 50000, 0], { b: 500, K: 300, level: 200, seed: 8 })
+    const data = simulated(fitModels['three-level'], [1, 0.5, 4000, 50000, 0], {
+      b: 500,
+      K: 300,
+      level: 200,
+      seed: 8,
+    })
     data.counts.fill(0, 298, 303)
     const found = fit(data, { model: 'three-level' })
     expect(found.atBound).toEqual(['c'])
@@ -137,7 +162,10 @@ describe('bounds and honest failure (definitions.md B3)', () => {
 
   it('too few bins for the parameters is said so', () => {
     const data = simulated(fitModels['two-level'], [0, 8000, 0], { b: 500, K: 0, level: 100, seed: 5 })
-    expect(fit(data, { model: 'three-level' })).toMatchObject({ converged: false, reason: 'fewer bins than free parameters' })
+    expect(fit(data, { model: 'three-level' })).toMatchObject({
+      converged: false,
+      reason: 'fewer bins than free parameters',
+    })
   })
 
   it('a chi2 p value is quoted only from five counts a bin on', () => {

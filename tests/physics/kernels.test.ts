@@ -9,13 +9,18 @@ import { bruteHistogram, bruteWindow } from './oracle.ts'
 /** Ascending times near some far place: doubles alone would lose picoseconds there. */
 const tagTimes = (most: bigint) =>
   fc
-    .tuple(fc.constantFrom(0n, -(2n ** 60n), 2n ** 60n + 12345n), fc.array(fc.bigInt({ min: 0n, max: most }), { maxLength: 40 }))
-    .map(([base, steps]) => BigInt64Array.from(steps.toSorted((a, b) => (a < b ? -1 : a > b ? 1 : 0)).map((t) => base + t)))
+    .tuple(
+      fc.constantFrom(0n, -(2n ** 60n), 2n ** 60n + 12345n),
+      fc.array(fc.bigInt({ min: 0n, max: most }), { maxLength: 40 }),
+    )
+    .map(([base, steps]) =>
+      BigInt64Array.from(steps.toSorted((a, b) => (a < b ? -1 : a > b ? 1 : 0)).map((t) => base + t)),
+    )
 
 const twoChannels = (most: bigint) =>
   fc
     .tuple(tagTimes(most), tagTimes(most))
-    .filter(([a, b]) => a.length === 0 || b.length === 0 || (a[0]! > 0n) === (b[0]! > 0n))
+    .filter(([a, b]) => a.length === 0 || b.length === 0 || a[0]! > 0n === b[0]! > 0n)
 
 /** Cuts both channels at the same times into pieces, in order. */
 function pieces(a: BigInt64Array, b: BigInt64Array, edges: bigint[]): [BigInt64Array, BigInt64Array][] {
@@ -23,7 +28,8 @@ function pieces(a: BigInt64Array, b: BigInt64Array, edges: bigint[]): [BigInt64A
   const bounds = [null, ...cuts, null]
   return bounds.slice(1).map((to, i) => {
     const from = bounds[i]!
-    const part = (times: BigInt64Array) => times.filter((t) => (from === null || t >= from) && (to === null || t < to))
+    const part = (times: BigInt64Array) =>
+      times.filter((t) => (from === null || t >= from) && (to === null || t < to))
     return [part(a), part(b)]
   })
 }
@@ -45,7 +51,12 @@ describe('pair histogram', () => {
           expect(Array.from(whole.counts())).toEqual(expected)
           const pushed = createPairHistogram(options)
           const base = a[0] ?? b[0] ?? 0n
-          for (const [x, y] of pieces(a, b, cuts.map((c) => base + c))) pushed.push(x, y)
+          for (const [x, y] of pieces(
+            a,
+            b,
+            cuts.map((c) => base + c),
+          ))
+            pushed.push(x, y)
           expect(Array.from(pushed.counts())).toEqual(expected)
         },
       ),
@@ -66,12 +77,17 @@ describe('pair histogram', () => {
 
   it('autocorrelation equals brute force in pieces', () => {
     fc.assert(
-      fc.property(tagTimes(100n), fc.bigInt({ min: 1n, max: 9n }), fc.bigInt({ min: 0n, max: 100n }), (a, binPs, cut) => {
-        const options = { binPs, halfBins: 4, offsetPs: 0n, sameChannel: true }
-        const pushed = createPairHistogram(options)
-        for (const [x] of pieces(a, a, [(a[0] ?? 0n) + cut])) pushed.push(x, x)
-        expect(Array.from(pushed.counts())).toEqual(bruteHistogram(a, a, options))
-      }),
+      fc.property(
+        tagTimes(100n),
+        fc.bigInt({ min: 1n, max: 9n }),
+        fc.bigInt({ min: 0n, max: 100n }),
+        (a, binPs, cut) => {
+          const options = { binPs, halfBins: 4, offsetPs: 0n, sameChannel: true }
+          const pushed = createPairHistogram(options)
+          for (const [x] of pieces(a, a, [(a[0] ?? 0n) + cut])) pushed.push(x, x)
+          expect(Array.from(pushed.counts())).toEqual(bruteHistogram(a, a, options))
+        },
+      ),
       { numRuns: 200 },
     )
   })
@@ -128,7 +144,12 @@ describe('window count', () => {
 
   it('leaves self-pairs out only where the window holds zero', () => {
     const times = BigInt64Array.from([0n, 3n, 3n, 9n])
-    for (const [lo, width] of [[-1n, 2n], [0n, 1n], [1n, 5n], [-4n, 4n]] as const) {
+    for (const [lo, width] of [
+      [-1n, 2n],
+      [0n, 1n],
+      [1n, 5n],
+      [-4n, 4n],
+    ] as const) {
       const window = createWindowCount({ loPs: lo, widthPs: width, sameChannel: true })
       window.push(times, times)
       expect(window.count()).toBe(bruteWindow(times, times, lo, width, true))
@@ -160,17 +181,23 @@ describe('window count', () => {
 describe('trace', () => {
   it('counts half-open bins and drops what lies outside, in pieces of any size', () => {
     fc.assert(
-      fc.property(tagTimes(200n), fc.bigInt({ min: -20n, max: 20n }), fc.bigInt({ min: 1n, max: 50n }), fc.nat(40), (times, shift, binPs, cut) => {
-        const startPs = (times[0] ?? 0n) + shift
-        const trace = createTrace({ startPs, binPs, bins: 5 })
-        trace.push(times.slice(0, cut))
-        trace.push(times.slice(cut))
-        const expected = [0, 1, 2, 3, 4].map((k) => {
-          const lo = startPs + BigInt(k) * binPs
-          return times.filter((t) => t >= lo && t < lo + binPs).length
-        })
-        expect(Array.from(trace.counts())).toEqual(expected)
-      }),
+      fc.property(
+        tagTimes(200n),
+        fc.bigInt({ min: -20n, max: 20n }),
+        fc.bigInt({ min: 1n, max: 50n }),
+        fc.nat(40),
+        (times, shift, binPs, cut) => {
+          const startPs = (times[0] ?? 0n) + shift
+          const trace = createTrace({ startPs, binPs, bins: 5 })
+          trace.push(times.slice(0, cut))
+          trace.push(times.slice(cut))
+          const expected = [0, 1, 2, 3, 4].map((k) => {
+            const lo = startPs + BigInt(k) * binPs
+            return times.filter((t) => t >= lo && t < lo + binPs).length
+          })
+          expect(Array.from(trace.counts())).toEqual(expected)
+        },
+      ),
       { numRuns: 300 },
     )
   })
@@ -181,14 +208,22 @@ describe('64-bit times as doubles from a base', () => {
     const far = [0n, 1n, 2n ** 31n, 2n ** 32n - 1n, 2n ** 32n, 2n ** 53n - 1n]
     for (const base of [0n, -1n, -(2n ** 61n), 2n ** 61n - 1n, 2n ** 32n - 1n]) {
       const out = new Float64Array(far.length)
-      offsetsFrom(BigInt64Array.from(far, (x) => base + x), 0, far.length, base, out)
+      offsetsFrom(
+        BigInt64Array.from(far, (x) => base + x),
+        0,
+        far.length,
+        base,
+        out,
+      )
       expect(Array.from(out)).toEqual(far.map(Number))
     }
   })
 
   it('channels are picked in order, with their full 64 bits', () => {
     const times = BigInt64Array.from([-(2n ** 61n), -1n, 0n, 2n ** 40n + 1n])
-    expect(pickChannel(times, Uint16Array.from([2, 1, 2, 2]), 2)).toEqual(BigInt64Array.from([-(2n ** 61n), 0n, 2n ** 40n + 1n]))
+    expect(pickChannel(times, Uint16Array.from([2, 1, 2, 2]), 2)).toEqual(
+      BigInt64Array.from([-(2n ** 61n), 0n, 2n ** 40n + 1n]),
+    )
     expect(lowerBound(times, 0n)).toBe(2)
     expect(lowerBound(times, 2n ** 50n)).toBe(4)
   })

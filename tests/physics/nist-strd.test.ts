@@ -12,8 +12,11 @@ const models: Record<string, (x: number, b: number[]) => number> = {
   Chwirut2: (x, [b1, b2, b3]) => Math.exp(-b1! * x) / (b2! + b3! * x),
   DanWood: (x, [b1, b2]) => b1! * x ** b2!,
   Gauss1: (x, [b1, b2, b3, b4, b5, b6, b7, b8]) =>
-    b1! * Math.exp(-b2! * x) + b3! * Math.exp(-((x - b4!) ** 2) / b5! ** 2) + b6! * Math.exp(-((x - b7!) ** 2) / b8! ** 2),
-  Lanczos3: (x, [b1, b2, b3, b4, b5, b6]) => b1! * Math.exp(-b2! * x) + b3! * Math.exp(-b4! * x) + b5! * Math.exp(-b6! * x),
+    b1! * Math.exp(-b2! * x) +
+    b3! * Math.exp(-((x - b4!) ** 2) / b5! ** 2) +
+    b6! * Math.exp(-((x - b7!) ** 2) / b8! ** 2),
+  Lanczos3: (x, [b1, b2, b3, b4, b5, b6]) =>
+    b1! * Math.exp(-b2! * x) + b3! * Math.exp(-b4! * x) + b5! * Math.exp(-b6! * x),
   Kirby2: (x, [b1, b2, b3, b4, b5]) => (b1! + b2! * x + b3! * x * x) / (1 + b4! * x + b5! * x * x),
   MGH17: (x, [b1, b2, b3, b4, b5]) => b1! + b2! * Math.exp(-x * b4!) + b3! * Math.exp(-x * b5!),
   Thurber: (x, [b1, b2, b3, b4, b5, b6, b7]) =>
@@ -38,7 +41,10 @@ function readDataSet(name: string): DataSet {
     .filter((row) => row !== undefined)
     .map((row) => row.trim().split(/\s+/).map(Number))
   const dataFrom = lines.findLastIndex((line) => line.startsWith('Data:')) + 1
-  const data = lines.slice(dataFrom).filter((line) => line.trim() !== '').map((line) => line.trim().split(/\s+/).map(Number))
+  const data = lines
+    .slice(dataFrom)
+    .filter((line) => line.trim() !== '')
+    .map((line) => line.trim().split(/\s+/).map(Number))
   return {
     start: rows.map((row) => row[1]!),
     certified: rows.map((row) => row[2]!),
@@ -54,10 +60,18 @@ describe('least squares against certified values (NIST StRD, reference/nist-strd
     const { start, certified, deviations, residualSd, x, y } = readDataSet(name)
     expect(x.length).toBeGreaterThan(5)
     const outcome = minimise({
-      parameters: start.map((b, j) => ({ name: `b${j + 1}`, lower: -Infinity, upper: Infinity, scale: Math.abs(b) / 1000 })),
+      parameters: start.map((b, j) => ({
+        name: `b${j + 1}`,
+        lower: -Infinity,
+        upper: Infinity,
+        scale: Math.abs(b) / 1000,
+      })),
       start,
       // With u = the certified residual deviation the unscaled covariance is the certified one.
-      estimator: leastSquaresEstimator(y, y.map(() => residualSd)),
+      estimator: leastSquaresEstimator(
+        y,
+        y.map(() => residualSd),
+      ),
       model: (b, out) => x.forEach((at, i) => (out[i] = models[name]!(at, b))),
     })
     expect(outcome.failure).toBeNull()

@@ -2,7 +2,12 @@
 export function bruteHistogram(
   starts: BigInt64Array,
   stops: BigInt64Array,
-  { binPs, halfBins, offsetPs, sameChannel }: { binPs: bigint; halfBins: number; offsetPs: bigint; sameChannel: boolean },
+  {
+    binPs,
+    halfBins,
+    offsetPs,
+    sameChannel,
+  }: { binPs: bigint; halfBins: number; offsetPs: bigint; sameChannel: boolean },
 ): number[] {
   const counts = new Array<number>(2 * halfBins + 1).fill(0)
   starts.forEach((a, i) =>
@@ -18,7 +23,13 @@ export function bruteHistogram(
   return counts
 }
 
-export function bruteWindow(starts: BigInt64Array, stops: BigInt64Array, lo: bigint, width: bigint, sameChannel: boolean): number {
+export function bruteWindow(
+  starts: BigInt64Array,
+  stops: BigInt64Array,
+  lo: bigint,
+  width: bigint,
+  sameChannel: boolean,
+): number {
   let count = 0
   starts.forEach((a, i) =>
     stops.forEach((b, j) => {

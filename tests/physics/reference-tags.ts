@@ -59,7 +59,10 @@ export function readReferenceTags(name: string): TagRecord {
 
 /** `timestamp_ps,channel` with a header line, already in order of time. */
 function parseTags(name: string): TagRecord {
-  const lines = readFileSync(referencePath(`tags/${name}.csv`), 'utf8').trim().split('\n').slice(1)
+  const lines = readFileSync(referencePath(`tags/${name}.csv`), 'utf8')
+    .trim()
+    .split('\n')
+    .slice(1)
   return {
     times: BigInt64Array.from(lines, (line) => BigInt(line.slice(0, line.indexOf(',')))),
     channels: Uint16Array.from(lines, (line) => Number(line.slice(line.indexOf(',') + 1))),

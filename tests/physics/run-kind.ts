@@ -18,8 +18,13 @@ export async function runKind<Result>(kind: string, parameters: unknown, ...reco
 }
 
 /** A record from a list of [time in ps, channel]. */
-export function recordOf(tags: [number | bigint, number][], declaredDurationPs: bigint | null = null): TagRecord {
-  const sorted = tags.map(([t, c]) => [BigInt(t), c] as const).sort((a, b) => (a[0] < b[0] ? -1 : a[0] > b[0] ? 1 : 0))
+export function recordOf(
+  tags: [number | bigint, number][],
+  declaredDurationPs: bigint | null = null,
+): TagRecord {
+  const sorted = tags
+    .map(([t, c]) => [BigInt(t), c] as const)
+    .sort((a, b) => (a[0] < b[0] ? -1 : a[0] > b[0] ? 1 : 0))
   return {
     times: BigInt64Array.from(sorted, ([t]) => t),
     channels: Uint16Array.from(sorted, ([, c]) => c),

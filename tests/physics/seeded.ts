@@ -19,7 +19,7 @@ export function poisson(random: () => number, mean: number): number {
 /** Ascending times of a Poisson process of rate `perPs` over `durationPs`. */
 export function poissonTimes(random: () => number, perPs: number, durationPs: number): number[] {
   const times: number[] = []
-  for (let t = 0; ; ) {
+  for (let t = 0; ;) {
     t -= Math.log(1 - random()) / perPs
     if (t >= durationPs) return times
     times.push(Math.floor(t))

@@ -27,7 +27,12 @@ describe('special functions against closed forms', () => {
       closeTo(incompleteGamma(1, x).upper, Math.exp(-x), 1e-13)
     }
     // Q(a, x) = sum of exp(-x) x^k/k! for k < a (closed form).
-    for (const [a, x] of [[5, 2], [5, 12], [40, 30], [40, 60]] as const) {
+    for (const [a, x] of [
+      [5, 2],
+      [5, 12],
+      [40, 30],
+      [40, 60],
+    ] as const) {
       let term = Math.exp(-x)
       let sum = 0
       for (let k = 0; k < a; k++) {
@@ -39,7 +44,8 @@ describe('special functions against closed forms', () => {
   })
 
   it('chi-squared: with two degrees of freedom the quantile is -2 ln(1 - p)', () => {
-    for (const p of [1e-6, 0.025, 0.5, 0.975, 0.999999]) closeTo(chiSquaredQuantile(p, 2), -2 * Math.log1p(-p), 1e-10)
+    for (const p of [1e-6, 0.025, 0.5, 0.975, 0.999999])
+      closeTo(chiSquaredQuantile(p, 2), -2 * Math.log1p(-p), 1e-10)
     expect(chiSquaredQuantile(0, 4)).toBe(0)
   })
 

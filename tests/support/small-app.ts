@@ -1,11 +1,11 @@
 import type { AddressInfo } from 'node:net'
-import { pino } from 'pino'
 import { settableClock, type SettableClock } from '../../server/platform/clock.ts'
 import { readConfig, type Config } from '../../server/platform/config.ts'
 import { buildHttp } from '../../server/platform/http/build-http.ts'
 import type { Route } from '../../server/platform/http/route.ts'
 import { serve } from '../../server/platform/http/serve.ts'
 import { openSessions } from '../../server/platform/identity/session.ts'
+import { openLog } from '../../server/platform/logger.ts'
 import { openServices } from '../../server/platform/open-services.ts'
 import type { Services } from '../../server/platform/services.ts'
 import { freePort } from '../../server/launch/ports.mjs'
@@ -33,7 +33,7 @@ export async function startSmallApp(
   const config = change(readConfig({ ...environment, PORT: String(port), PUBLIC_ORIGIN: url }))
   const clock = settableClock(new Date())
   const logged: string[] = []
-  const log = pino({ level: 'info' }, { write: (line: string) => void logged.push(line) })
+  const log = openLog('test', { write: (line: string) => void logged.push(line) })
   const { services, close } = await openServices(config, config.database.app, log, clock)
   const sessions = openSessions(config)
   const app = buildHttp(services, { routes: routes(services), sessions, signIn: { onSignIn: async () => undefined } })

@@ -1,7 +1,7 @@
 import type { Response } from 'express'
 import type { Calculation } from '../../contract/calculations.ts'
 import { endpoints } from '../../contract/endpoints.ts'
-import { renderSvg } from '../../physics/figure-svg/index.ts'
+import { renderSvg } from '../../physics/figure-svg/render-svg.ts'
 import { kindDefinitions, parametersJsonSchema } from '../../physics/registry.ts'
 import { figureCsv } from '../../physics/table-csv.ts'
 import { answer, route, type Route } from '../../platform/http/route.ts'

@@ -44,8 +44,8 @@ async function findWay(task: ReadingTask): Promise<Way | { unreadable: string }>
   const head = await store.getBytes(task.objectKey, task.objectVersion ?? undefined, { offset: 0, length: HEAD_BYTES })
   const found = detectReading(head, task.name)
   if ('unreadable' in found) return found
-  const { format, version, options, confident } = found
-  return { format, version, options, doubt: confident ? null : 'Which columns hold time and channel was guessed: check the reading.' }
+  const { format, version, options, doubt } = found
+  return { format, version, options, doubt }
 }
 
 async function parse(task: ReadingTask, way: Way): Promise<Reading> {

@@ -43,7 +43,7 @@ digest is printed beside the anchors; compare it (sha256sum data/check.html) or 
 
 The manifests must list the very files that are here; this prints nothing:
 
-    find data -type f | LC_ALL=C sort | diff - <(cut -c67- manifest-sha256.txt)
+    find data -type f | LC_ALL=C sort > ../found.txt; cut -c67- manifest-sha256.txt | diff - ../found.txt
     ls -A
 
 The second lists bag-info.txt bagit.txt data manifest-sha256.txt manifest-sha512.txt signature tagmanifest-sha256.txt

@@ -67,7 +67,7 @@ export function checkTimeStamp(
 
 function readToken(response: Uint8Array): SignedData {
   checkWholeDer(response)
-  const answer = TimeStampResp.fromBER(response)
+  const answer = TimeStampResp.fromBER(response.slice())
   need(answer.status.status === 0 || answer.status.status === 1, 'time stamp was not granted')
   const token: ContentInfo | undefined = answer.timeStampToken
   if (token?.contentType !== ContentInfo.SIGNED_DATA) throw new Wrong('time stamp holds no signed data')

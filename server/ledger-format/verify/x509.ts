@@ -80,7 +80,7 @@ export function readCertificate(der: Uint8Array): Certificate {
 
 function parseCertificate(der: Uint8Array): Certificate {
   checkWholeDer(der)
-  const parsed = ParsedCertificate.fromBER(der)
+  const parsed = ParsedCertificate.fromBER(der.slice())
   const extensions = new Map((parsed.extensions ?? []).map((extension) => [extension.extnID, extension]))
   need(extensions.size === (parsed.extensions ?? []).length, 'an extension stands twice')
   const value = (id: string) => extensions.get(id)?.extnValue.valueBlock.valueHexView
@@ -107,7 +107,7 @@ function parseCertificate(der: Uint8Array): Certificate {
     authority: basic ? readBasicConstraints(basic) : null,
     keyUsage: usage ? { critical: critical(oid.keyUsage), bits: readKeyUsage(usage) } : null,
     extendedUsage: extended
-      ? { critical: critical(oid.extKeyUsage), purposes: ExtKeyUsage.fromBER(extended).keyPurposes }
+      ? { critical: critical(oid.extKeyUsage), purposes: ExtKeyUsage.fromBER(extended.slice()).keyPurposes }
       : null,
     subjectKeyIdentifier: identifier ? octets(identifier) : null,
     strange:
@@ -243,7 +243,7 @@ export interface RevocationList {
 export function readRevocationList(pem: Uint8Array, authority: Certificate): RevocationList {
   const der = pemBlock(pem, 'X509 CRL')
   checkWholeDer(der)
-  const parsed = CertificateRevocationList.fromBER(der)
+  const parsed = CertificateRevocationList.fromBER(der.slice())
   checkIssuedBy(
     {
       issuer: nameBytes(parsed.issuer),

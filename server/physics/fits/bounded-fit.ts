@@ -1,4 +1,10 @@
-import { minimise, type FitFailure, type FitOutcome, type FitParameter, type FitProblem } from './levenberg-marquardt.ts'
+import {
+  minimise,
+  type FitFailure,
+  type FitOutcome,
+  type FitParameter,
+  type FitProblem,
+} from './levenberg-marquardt.ts'
 
 export interface BoundedParameter extends FitParameter {
   unit: string
@@ -67,7 +73,8 @@ const isAt = (value: number, bound: number | undefined): boolean =>
   bound !== undefined && Math.abs(value - bound) <= AT_PHYSICAL_BOUND
 
 function isStuck(value: number, { lower, upper }: FitParameter): boolean {
-  const near = (bound: number) => Number.isFinite(bound) && Math.abs(value - bound) <= AT_OTHER_BOUND * Math.max(1, Math.abs(bound))
+  const near = (bound: number) =>
+    Number.isFinite(bound) && Math.abs(value - bound) <= AT_OTHER_BOUND * Math.max(1, Math.abs(bound))
   return near(lower) || near(upper)
 }
 

@@ -30,6 +30,9 @@ function oneSided(x: number, z: Complex, sigma: number): Complex {
   if (y.re >= 0) return scaled(complexErfcx(y), bell)
   // erfc(y) = 2 - erfc(-y), with the factor taken inside so that nothing overflows.
   const square = times(z, z)
-  const growth = exponential({ re: (sigma * sigma * square.re) / 2 - z.re * x, im: (sigma * sigma * square.im) / 2 - z.im * x })
+  const growth = exponential({
+    re: (sigma * sigma * square.re) / 2 - z.re * x,
+    im: (sigma * sigma * square.im) / 2 - z.im * x,
+  })
   return minus(growth, scaled(complexErfcx(scaled(y, -1)), bell))
 }

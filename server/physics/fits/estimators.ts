@@ -47,6 +47,7 @@ export function leastSquaresEstimator(values: ArrayLike<number>, u: ArrayLike<nu
 /** Pearson's chi2 = sum (n - m)^2/m, or the weighted sum of squares. */
 export function chiSquaredOf(estimator: Estimator, model: Float64Array): number {
   let sum = 0
-  for (let i = 0; i < estimator.size; i++) sum += estimator.residual(model, i) ** 2 * estimator.weight(model, i)
+  for (let i = 0; i < estimator.size; i++)
+    sum += estimator.residual(model, i) ** 2 * estimator.weight(model, i)
   return sum
 }

@@ -77,11 +77,17 @@ export function fitCorrelation(data: FitData, request: FitRequest): FitResult {
   return converged(model, request, parameters, data, sigma, outcome)
 }
 
-function parametersOf(model: FitModel, data: CorrelationData, { tau0Ps, level }: FitRequest): BoundedParameter[] {
+function parametersOf(
+  model: FitModel,
+  data: CorrelationData,
+  { tau0Ps, level }: FitRequest,
+): BoundedParameter[] {
   const own = model
     .parameters(data)
     .map((p): BoundedParameter => (p.name === 'tau0' && tau0Ps !== undefined ? { ...p, fixed: true } : p))
-  return level === 'fixed' ? own : [...own, { name: 'level', unit: '1', lower: 1e-6, upper: Infinity, scale: 0.1 }]
+  return level === 'fixed'
+    ? own
+    : [...own, { name: 'level', unit: '1', lower: 1e-6, upper: Infinity, scale: 0.1 }]
 }
 
 function startsOf(
@@ -94,7 +100,10 @@ function startsOf(
   const unknown = Object.keys(start).find((name) => parameters.every((p) => p.name !== name))
   if (unknown !== undefined) {
     const names = parameters.map((p) => p.name).join(', ') || 'none'
-    refuse(`/parameters/fit/start/${unknown}`, `The model ${model.name} has no parameter "${unknown}". It has ${names}.`)
+    refuse(
+      `/parameters/fit/start/${unknown}`,
+      `The model ${model.name} has no parameter "${unknown}". It has ${names}.`,
+    )
   }
   return model
     .starts(data)
@@ -132,7 +141,9 @@ function converged(
   const enough = outcome.model.every((m) => m >= 5)
   const quantities = parameters.map((p, j) => parameterQuantity(p, outcome, j))
   const { values, u } = curveOf(model, request.level, parameters, all, sigma, outcome)
-  const residuals = Array.from(outcome.model, (m, i) => (m > 0 ? (fitted.counts[i]! - m) / Math.sqrt(m) : null))
+  const residuals = Array.from(outcome.model, (m, i) =>
+    m > 0 ? (fitted.counts[i]! - m) / Math.sqrt(m) : null,
+  )
   return {
     model: request.model,
     converged: true,
@@ -163,14 +174,25 @@ function parameterQuantity(parameter: BoundedParameter, outcome: BoundedOutcome,
 }
 
 /** The fitted model at x = 0, without response and bin average. */
-function g2AtZero({ parameter, offset, slope }: NonNullable<FitModel['atZero']>, quantities: Quantity[]): Quantity {
+function g2AtZero(
+  { parameter, offset, slope }: NonNullable<FitModel['atZero']>,
+  quantities: Quantity[],
+): Quantity {
   if (parameter === null) return quantity(offset, null, '1')
   const { value, u, upper, lower } = quantities[parameter]!
   const limit = upper ?? lower
-  return quantity(offset + slope * value!, u, '1', limit === undefined ? {} : { upper: offset + slope * limit })
+  return quantity(
+    offset + slope * value!,
+    u,
+    '1',
+    limit === undefined ? {} : { upper: offset + slope * limit },
+  )
 }
 
-function linewidthOf({ parameter, factor }: NonNullable<FitModel['linewidth']>, quantities: Quantity[]): Quantity {
+function linewidthOf(
+  { parameter, factor }: NonNullable<FitModel['linewidth']>,
+  quantities: Quantity[],
+): Quantity {
   const { value, u } = quantities[parameter]!
   return quantity(factor / value!, u === null ? null : (factor / value!) * (u / value!), 'Hz')
 }
@@ -188,14 +210,30 @@ function curveOf(
   const evaluate = modelCounts(model, ones, sigma, level)
   const values = new Float64Array(all.counts.length)
   evaluate(outcome.values, values)
-  const jacobian = derivatives({ parameters, estimator: poissonEstimator(all.counts), model: evaluate }, outcome.values)
+  const jacobian = derivatives(
+    { parameters, estimator: poissonEstimator(all.counts), model: evaluate },
+    outcome.values,
+  )
   const u = Array.from(values, (_, i) =>
-    Math.sqrt(Math.max(0, quadraticForm(outcome.covariance, outcome.free.map((j) => jacobian[j]![i]!)))),
+    Math.sqrt(
+      Math.max(
+        0,
+        quadraticForm(
+          outcome.covariance,
+          outcome.free.map((j) => jacobian[j]![i]!),
+        ),
+      ),
+    ),
   )
   return { values: Array.from(values), u }
 }
 
-function empty(request: FitRequest, parameters: BoundedParameter[], data: FitData, reason: string): FitResult {
+function empty(
+  request: FitRequest,
+  parameters: BoundedParameter[],
+  data: FitData,
+  reason: string,
+): FitResult {
   const none = new Array<null>(data.all.counts.length).fill(null)
   return {
     model: request.model,

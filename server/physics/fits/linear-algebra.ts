@@ -38,6 +38,11 @@ export function symmetricInverse(matrix: number[][]): number[][] | null {
   if (!scale.every(Number.isFinite)) return null
   const factor = choleskyFactor(matrix.map((row, i) => row.map((x, j) => x * scale[i]! * scale[j]!)))
   if (factor === null) return null
-  const columns = matrix.map((_, j) => solveWith(factor, matrix.map((_row, i) => (i === j ? 1 : 0))))
+  const columns = matrix.map((_, j) =>
+    solveWith(
+      factor,
+      matrix.map((_row, i) => (i === j ? 1 : 0)),
+    ),
+  )
   return columns.map((column, j) => column.map((x, i) => x * scale[i]! * scale[j]!))
 }

@@ -15,7 +15,13 @@ const AFTERPULSE_RANGE_PS = 1_000_000n
 /** What the channels that are paired show by themselves: drift, silent ends, a short undeclared record. */
 export function channelNotes(pooled: PooledPairs, a: number, b: number): Note[] {
   return pooled.inputs.flatMap(({ exposure, timesA, timesB }) => {
-    const pairs: [number, BigInt64Array][] = a === b ? [[a, timesA]] : [[a, timesA], [b, timesB]]
+    const pairs: [number, BigInt64Array][] =
+      a === b
+        ? [[a, timesA]]
+        : [
+            [a, timesA],
+            [b, timesB],
+          ]
     return pairs.flatMap(([channel, times]) => {
       const bins = timeBins(exposure, null, defaultBinCount(times.length))
       return [
@@ -31,12 +37,20 @@ export function channelNotes(pooled: PooledPairs, a: number, b: number): Note[] 
 export function fewPairsNote(pairs: number, where: string): Note[] {
   if (pairs >= FEW_PAIRS) return []
   const count = pairs === 0 ? 'no pair' : pairs === 1 ? '1 pair' : `${pairs} pairs`
-  return [{ code: 'few-pairs', detail: `${where} holds ${count}: its uncertainty is asymmetric. Fewer than ${FEW_PAIRS} carry the result.` }]
+  return [
+    {
+      code: 'few-pairs',
+      detail: `${where} holds ${count}: its uncertainty is asymmetric. Fewer than ${FEW_PAIRS} carry the result.`,
+    },
+  ]
 }
 
 /** The width is narrower than the resolution that the time stamps show. */
 export function resolutionNote(pooled: PooledPairs, widthPs: number, what: string): Note[] {
-  const steps = pooled.inputs.flatMap(({ timesA, timesB }) => [gapsOf(timesA).resolutionPs, gapsOf(timesB).resolutionPs])
+  const steps = pooled.inputs.flatMap(({ timesA, timesB }) => [
+    gapsOf(timesA).resolutionPs,
+    gapsOf(timesB).resolutionPs,
+  ])
   const resolution = steps.reduce(commonDivisor, 0)
   if (widthPs >= resolution) return []
   return [

@@ -19,7 +19,10 @@ export function exposureOf(record: TagRecord, pointer: string): Exposure {
   const firstPs = times[0]!
   const lastPs = times[times.length - 1]!
   if (firstPs < -MAX_PICOSECONDS || lastPs > MAX_PICOSECONDS) {
-    refuse(pointer, 'A tag lies beyond 2^61 ps (27 days) from zero, where differences overflow. Give times from the start of the run.')
+    refuse(
+      pointer,
+      'A tag lies beyond 2^61 ps (27 days) from zero, where differences overflow. Give times from the start of the run.',
+    )
   }
   const span = lastPs - firstPs
   if (declaredDurationPs === null) return { firstPs, lastPs, durationPs: span, durationFrom: 'tags' }
@@ -36,7 +39,10 @@ function emptyExposure(declared: bigint | null, pointer: string): Exposure {
   if (declared !== null && declared > 0n) {
     return { firstPs: 0n, lastPs: 0n, durationPs: declared, durationFrom: 'declared' }
   }
-  return refuse(pointer, 'The record holds no tags and states no acquisition time, so there is no rate. Give the run its duration.')
+  return refuse(
+    pointer,
+    'The record holds no tags and states no acquisition time, so there is no rate. Give the run its duration.',
+  )
 }
 
 export const seconds = (ps: bigint): number => Number(ps) / PS_PER_S

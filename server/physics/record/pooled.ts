@@ -26,7 +26,10 @@ export function poolPairs(inputs: ComputeInput[], a: number, b: number): PooledP
   const read = inputs.map((input, i): PairInput => {
     const exposure = exposureOf(input.record, `/inputs/${i}`)
     if (exposure.durationPs === 0n) {
-      refuse(`/inputs/${i}`, 'All tags have one time and no acquisition time is declared, so there is no rate. Give the run its duration.')
+      refuse(
+        `/inputs/${i}`,
+        'All tags have one time and no acquisition time is declared, so there is no rate. Give the run its duration.',
+      )
     }
     const timesA = channelTimes(input.record, a)
     return { input, exposure, timesA, timesB: a === b ? timesA : channelTimes(input.record, b) }
@@ -59,6 +62,9 @@ export function chancePairs(pooled: PooledPairs, widthPs: number, rawDelayPs: bi
 export function requireInside(pooled: PooledPairs, reachPs: bigint, pointer: string, what: string): void {
   for (const { exposure } of pooled.inputs) {
     if (reachPs < exposure.durationPs) continue
-    refuse(pointer, `${what} reaches ${reachPs} ps, but the record lasts ${exposure.durationPs} ps. Choose a smaller one.`)
+    refuse(
+      pointer,
+      `${what} reaches ${reachPs} ps, but the record lasts ${exposure.durationPs} ps. Choose a smaller one.`,
+    )
   }
 }

@@ -3,7 +3,10 @@ export interface Complex {
   im: number
 }
 
-export const times = (a: Complex, b: Complex): Complex => ({ re: a.re * b.re - a.im * b.im, im: a.re * b.im + a.im * b.re })
+export const times = (a: Complex, b: Complex): Complex => ({
+  re: a.re * b.re - a.im * b.im,
+  im: a.re * b.im + a.im * b.re,
+})
 export const minus = (a: Complex, b: Complex): Complex => ({ re: a.re - b.re, im: a.im - b.im })
 export const scaled = (a: Complex, by: number): Complex => ({ re: a.re * by, im: a.im * by })
 
@@ -34,7 +37,7 @@ const COEFFICIENTS = Array.from({ length: TERMS }, (_, n) => {
 
 /**
  * exp(z^2) erfc(z) for complex z with Re z >= 0, by the rational expansion of Weideman, SIAM J. Numer. Anal. 31, 1497
- * (1994), to about 1e-13.
+ * (1994; from memory), to about 1e-13 (tested against the real function and quadrature).
  */
 export function complexErfcx(z: Complex): Complex {
   // w(iz) with i(iz) = -z: the expansion runs in Z = (L - z)/(L + z).

@@ -1,16 +1,7 @@
 const HALF_LOG_TWO_PI = 0.9189385332046727
 
 /** B(2n) / (2n (2n - 1)), the coefficients of the Stirling series (Abramowitz & Stegun 6.1.40). */
-const STIRLING = [
-  1 / 12,
-  -1 / 360,
-  1 / 1260,
-  -1 / 1680,
-  1 / 1188,
-  -691 / 360360,
-  1 / 156,
-  -3617 / 122400,
-]
+const STIRLING = [1 / 12, -1 / 360, 1 / 1260, -1 / 1680, 1 / 1188, -691 / 360360, 1 / 156, -3617 / 122400]
 
 /** From here on eight terms of the Stirling series are exact to the last digit of a double. */
 export const STIRLING_FROM = 16

@@ -30,7 +30,10 @@ export function correctDeadTime(counts: number, durationS: number, deadTime: Dea
   const share = rate * tau
   if (deadTime.kind === 'non-extending') {
     const corrected = rate / (1 - share)
-    return { rate: corrected, u: Math.hypot(Math.sqrt(counts) / (durationS * (1 - share)), corrected ** 2 * uTau) }
+    return {
+      rate: corrected,
+      u: Math.hypot(Math.sqrt(counts) / (durationS * (1 - share)), corrected ** 2 * uTau),
+    }
   }
   const y = smallestRootOfYExpMinusY(share)
   const corrected = tau === 0 ? rate : y / tau

@@ -18,9 +18,13 @@ export function timeBins(exposure: Exposure, widthPs: bigint | null, bins: numbe
   const { firstPs, durationPs } = exposure
   if (widthPs === null) return { startPs: firstPs, binPs: bins > 0 ? durationPs / BigInt(bins) : 0n, bins }
   const count = durationPs / widthPs
-  if (count < 1n) refuse('/parameters/traceBinPs', 'The time bin is longer than the record. Choose a shorter one.')
+  if (count < 1n)
+    refuse('/parameters/traceBinPs', 'The time bin is longer than the record. Choose a shorter one.')
   if (count > BigInt(MOST_BINS)) {
-    refuse('/parameters/traceBinPs', `The record would fall into ${count} time bins; at most ${MOST_BINS} are computed. Choose a longer bin.`)
+    refuse(
+      '/parameters/traceBinPs',
+      `The record would fall into ${count} time bins; at most ${MOST_BINS} are computed. Choose a longer bin.`,
+    )
   }
   return { startPs: firstPs, binPs: widthPs, bins: Number(count) }
 }

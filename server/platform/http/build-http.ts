@@ -1,7 +1,5 @@
 import compression from 'compression'
 import express, { Router, type Express } from 'express'
-import { pinoHttp } from 'pino-http'
-import { randomUUID } from 'node:crypto'
 import { fileURLToPath } from 'node:url'
 import path from 'node:path'
 import { loadVisitor } from './access.ts'
@@ -11,6 +9,7 @@ import { healthRoutes } from './health.ts'
 import { limitCalls, limitSignIns } from './limits.ts'
 import { mountRoutes } from './mount.ts'
 import { openApiDocument } from './openapi.ts'
+import { requestLog } from './request-log.ts'
 import { answerProblems, nothingHere } from './problem-answers.ts'
 import type { Route } from './route.ts'
 import { allowedHosts, inlineScriptHashes, notStored, ownOriginOnly, securityHeaders } from './security.ts'
@@ -34,7 +33,7 @@ export function buildHttp(services: Services, { routes, sessions, signIn }: AppP
   app.set('etag', false)
   // Behind a proxy (https) the caller's address is the last one the proxy wrote; without one nobody may claim another.
   app.set('trust proxy', config.origin.startsWith('https:') ? 1 : false)
-  app.use(pinoHttp({ logger: log, genReqId: () => randomUUID(), autoLogging: { ignore: (req) => !isCall(req.url) } }))
+  app.use(requestLog(log))
   app.use(securityHeaders(config, inlineScriptHashes(path.join(clientFolder, 'index.html'))))
   app.use(allowedHosts(config))
   app.use(healthRoutes(services))
@@ -64,10 +63,6 @@ function interfaceOf(services: Services, routes: Route[], sessions: SessionStore
   router.use(mountRoutes(services, routes))
   router.use(nothingHere)
   return router
-}
-
-function isCall(url: string | undefined): boolean {
-  return url !== undefined && (url.startsWith('/api/') || url.startsWith('/auth/'))
 }
 
 function isStream(type: unknown): boolean {

@@ -4,6 +4,7 @@ import type { Database, Transaction } from '../db/database.ts'
 import type { Events } from '../events/events.ts'
 import type { Logger } from '../logger.ts'
 import type { Job } from './job.ts'
+import { openPresence } from './presence.ts'
 import { queueSchema, type QueueName } from './queues.ts'
 
 export interface SendOptions {
@@ -29,7 +30,7 @@ export interface Queue {
 
 const POLLING_S = 0.5
 const GRACE_MS = 30_000
-/** An abandoned job (its process died and no other started since) is taken up again after this time. */
+/** A job whose process died while others go on serving its queue is taken up again after this time. */
 const EXPIRE_HOURS = 2
 
 /**
@@ -40,13 +41,14 @@ export async function openQueue(url: string, db: Database, events: Events, log: 
   const boss = new PgBoss({ connectionString: url, schema: queueSchema, migrate: false, schedule: false, max: 6 })
   boss.on('error', (error) => log.error({ err: error }, 'queue'))
   await boss.start()
+  const presence = await openPresence(url)
   const stopping = new AbortController()
   const silence: (() => void)[] = []
 
   function joined(transaction: Transaction): PgBoss.Db {
     return {
       executeSql: async (text, values) => ({
-        rows: await db.sequelize.query(text, { type: QueryTypes.SELECT, bind: values, transaction, raw: true }),
+        rows: await db.sequelize.query(text, { type: QueryTypes.SELECT, bind: values.map((value: unknown) => value ?? null), transaction, raw: true }),
       }),
     }
   }
@@ -66,6 +68,7 @@ export async function openQueue(url: string, db: Database, events: Events, log: 
   }
 
   async function work(job: Job, { pollingS = POLLING_S }: { pollingS?: number } = {}) {
+    await presence.begin(job.queue)
     for (let slot = 0; slot < job.concurrency; slot++) {
       const worker = await boss.work(job.queue, { batchSize: 1, pollingIntervalSeconds: pollingS }, async (jobs) => {
         for (const { id, data } of jobs) await runLogged(job, data, id)
@@ -93,6 +96,7 @@ export async function openQueue(url: string, db: Database, events: Events, log: 
       const abort = setTimeout(() => stopping.abort(new Error('the process stops')), GRACE_MS)
       await boss.stop({ graceful: true, wait: true, timeout: GRACE_MS + 5000 })
       clearTimeout(abort)
+      await presence.end()
     },
   }
 }

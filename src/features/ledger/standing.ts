@@ -1,11 +1,11 @@
 import type { z } from 'zod'
 import type { verificationSchema } from '../../../server/contract/ledger.ts'
-import { countText } from '../../lib/format-quantity.ts'
+import { eventNumber } from './event-number.ts'
 
 export type Verification = z.infer<typeof verificationSchema>
 
 export interface Standing {
-  state: 'ok' | 'note' | 'fault'
+  state: 'ok' | 'queued' | 'note' | 'fault'
   words: string
 }
 
@@ -19,14 +19,14 @@ export function standingOf(sequence: number, verification: Verification | undefi
   if (broken && sequence > broken.sequence) return { state: 'note', words: 'after the break' }
   const covered = treeSize !== null && sequence <= treeSize
   return covered
-    ? { state: 'ok', words: `under head ${countText(treeSize)}` }
-    : { state: 'note', words: 'not yet under a head' }
+    ? { state: 'ok', words: `under head ${eventNumber(treeSize)}` }
+    : { state: 'queued', words: 'not yet under a head' }
 }
 
 /** The result in one sentence, as the title of the page. */
 export function resultWords(verification: Verification): string {
   if (verification.holds) return 'The chain holds'
   const broken = verification.firstBroken
-  if (broken) return `The chain breaks at event ${countText(broken.sequence)}`
+  if (broken) return `The chain breaks at event ${eventNumber(broken.sequence)}`
   return 'The chain and the head do not agree'
 }

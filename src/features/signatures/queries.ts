@@ -39,3 +39,11 @@ export function entryForReviewQuery(id: string) {
 }
 
 export type DeskEntry = Awaited<ReturnType<typeof call<'listMyEntries'>>>['items'][number]
+
+/** One calculation in full, under the name that the sheet's blocks use too: what they have read counts as opened. */
+export function calculationQuery(id: string) {
+  return queryOptions({
+    queryKey: queryKeys.calculation(id),
+    queryFn: ({ signal }) => call('getCalculation', { params: { id }, signal }),
+  })
+}

@@ -53,9 +53,10 @@ export function ClosedSetUp({ variant }: { variant: BeamVariant }) {
   const drawing = wide[variant]
   const [, height] = drawing.size
   return (
-    <div className="hs-beam" data-light="none" data-bare="">
+    <div className="hs-beam" data-light="none">
       <svg
         className="hs-beam-wide"
+        data-bare=""
         viewBox={`20 30 800 ${height - 20}`}
         width="800"
         role="img"

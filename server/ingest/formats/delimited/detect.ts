@@ -4,7 +4,7 @@ import { isNumber, layoutOf, type Layout } from './layout.ts'
 import type { DelimitedOptions } from './options.ts'
 import { roleOf, unitOptions } from './roles.ts'
 
-export type Detected = { options: DelimitedOptions; confident: boolean } | { unreadable: string }
+export type Detected = { options: DelimitedOptions; doubts: string[] } | { unreadable: string }
 
 /**
  * Recognises a delimited file from its beginning: a tag record by the names of its columns or, without names, by their
@@ -56,7 +56,7 @@ function tagColumns(names: string[]): TagColumns | null {
 
 function byNames(layout: Layout): Detected {
   const columns = tagColumns(layout.names)
-  if (columns === null) return { options: found(layout, {}), confident: true }
+  if (columns === null) return { options: found(layout, {}), doubts: [] }
   const { time, channel, unit, unique } = columns
   const stated = unitOptions(
     unit ?? unitByValues(layout, layout.names.indexOf(time)),
@@ -69,8 +69,16 @@ function byNames(layout: Layout): Detected {
         'The file is safe; set the reading with tickPs, the length of a tick in ps.',
     }
   }
-  return { options: found(layout, { time, channel, ...stated }), confident: unit !== null && unique }
+  const doubts = [
+    ...(unit === null ? [unitDoubt(stated.unit!)] : []),
+    ...(unique
+      ? []
+      : [`Several columns could be the time or the channel: ${time} and ${channel} were taken.`]),
+  ]
+  return { options: found(layout, { time, channel, ...stated }), doubts }
 }
+
+const unitDoubt = (unit: string) => `The file does not say the unit of the times: ${unit} was assumed.`
 
 /** Unit of times that nothing states: whole numbers are taken for ps, others for ns. */
 function unitByValues({ rows }: Layout, column: number): string {
@@ -103,9 +111,10 @@ function byValues(layout: Layout): Detected {
   )
   const [time, channel] = [times[0], channels[0]]
   if (columns.length !== 2 || time === undefined || channel === undefined) {
-    return { options: found(layout, {}), confident: false }
+    return { options: found(layout, {}), doubts: ['The columns have no names in the file.'] }
   }
   const named = { time: layout.names[time]!, channel: layout.names[channel]! }
   const unit = unitOptions(unitByValues(layout, time), null)!
-  return { options: found(layout, { ...named, ...unit }), confident: false }
+  const guess = `The columns have no names: ${named.time} was taken for the time and ${named.channel} for the channel.`
+  return { options: found(layout, { ...named, ...unit }), doubts: [guess, unitDoubt(unit.unit!)] }
 }

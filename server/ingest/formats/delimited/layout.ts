@@ -67,15 +67,14 @@ function linesOf(head: Uint8Array, isWhole: boolean): string[] {
 const looksLikeRow = (fields: string[], delimiter: Delimiter) =>
   fields.some((field) => isNumber(field, delimiter))
 
-/** How well a delimiter fits: share of the lines with the usual number of columns, at least two, and a number in them. */
+/** How well a delimiter fits: share of the lines, header included, with the number of columns of most rows, at least two. */
 function fitOf(lines: string[], delimiter: Delimiter): number {
-  const rows = lines
-    .map((line) => splitFields(line, delimiter))
-    .filter((fields) => looksLikeRow(fields, delimiter))
-  const widths = rows.map((fields) => fields.length)
-  const usual = mostCommon(widths)
+  const split = lines.map((line) => splitFields(line, delimiter))
+  const usual = mostCommon(
+    split.filter((fields) => looksLikeRow(fields, delimiter)).map((fields) => fields.length),
+  )
   if (usual < 2) return 0
-  return widths.filter((width) => width === usual).length / lines.length
+  return split.filter((fields) => fields.length === usual).length / lines.length
 }
 
 function mostCommon(values: number[]): number {
@@ -88,7 +87,9 @@ function mostCommon(values: number[]): number {
 function findDelimiter(lines: string[]): Delimiter {
   const fits = delimiterOrder.map((delimiter) => ({ delimiter, fit: fitOf(lines, delimiter) }))
   const best = Math.max(...fits.map(({ fit }) => fit))
-  return best === 0 ? 'spaces' : fits.find(({ fit }) => fit === best)!.delimiter
+  if (best > 0) return fits.find(({ fit }) => fit === best)!.delimiter
+  // No rows to go by: what cuts the first line, which may be a header alone.
+  return delimiterOrder.find((delimiter) => splitFields(lines[0]!, delimiter).length > 1) ?? 'spaces'
 }
 
 /** Fields of a header; between spaces a unit in brackets belongs to the name, and names may be of several words. */

@@ -8,7 +8,7 @@ export const timeUnits = ['ps', 'ns', 'us', 'ticks'] as const
 
 const tickSchema = z
   .union([z.string(), z.number().transform(String)])
-  .refine((text) => (/^\d+(\.\d+)?$/.test(text) ? parseDecimal(text)!.digits > 0n : false), {
+  .refine((text) => /^\d+(\.\d+)?$/.test(text) && (parseDecimal(text)?.digits ?? 0n) > 0n, {
     error: 'tickPs must be a positive decimal, as text: "12.5".',
   })
 

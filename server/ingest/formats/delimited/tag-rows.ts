@@ -33,6 +33,7 @@ export class TagRows {
   private readonly unit: Decimal
   private readonly delimiter: number
   private readonly reader: TagNumberReader
+  private channelRead = 0
 
   constructor(
     private readonly layout: Layout,
@@ -57,23 +58,15 @@ export class TagRows {
     return this.fastRow(bytes, start, end) ? null : this.exactRow(decodeText(bytes.subarray(start, end)))
   }
 
+  /** Takes a row of plain numbers; false, and nothing taken, for any other. */
   private fastRow(bytes: Uint8Array, start: number, end: number): boolean {
     const { delimiter } = this
     const last = this.layout.names.length - 1
-    let channel = 0
     let at = this.skipBlanks(bytes, start, end)
     for (let column = 0; column <= last; column++) {
       if (column === this.time) at = this.reader.read(bytes, at, end)
-      else if (column === this.channel) {
-        const from = at
-        channel = 0
-        for (; at < end && at - from < 6; at++) {
-          const digit = bytes[at]! - 0x30
-          if (digit < 0 || digit > 9) break
-          channel = channel * 10 + digit
-        }
-        if (at === from || channel > largestChannel) return false
-      } else while (at < end && bytes[at] !== delimiter && bytes[at] !== tab) at++
+      else if (column === this.channel) at = this.readChannel(bytes, at, end)
+      else while (at < end && bytes[at] !== delimiter && bytes[at] !== tab) at++
       if (at < 0) return false
       const fieldEnd = at
       at = this.skipBlanks(bytes, at, end)
@@ -82,8 +75,21 @@ export class TagRows {
       if (delimiter !== space) at = this.skipBlanks(bytes, at + 1, end)
     }
     if (at !== end) return false
-    this.tags.push(this.reader.high, this.reader.low, channel)
+    this.tags.push(this.reader.high, this.reader.low, this.channelRead)
     return true
+  }
+
+  /** Reads digits into `channelRead`. Returns where they end, or -1 when they must be read the exact way. */
+  private readChannel(bytes: Uint8Array, start: number, end: number): number {
+    let channel = 0
+    let at = start
+    for (; at < end && at - start < 6; at++) {
+      const digit = bytes[at]! - 0x30
+      if (digit < 0 || digit > 9) break
+      channel = channel * 10 + digit
+    }
+    this.channelRead = channel
+    return at === start || channel > largestChannel ? -1 : at
   }
 
   private skipBlanks(bytes: Uint8Array, start: number, end: number): number {

@@ -30,7 +30,8 @@ export const chaoticLorentzian: FitModel = {
   title: 'Chaotic light, Lorentzian line',
   parameters,
   starts,
-  mean: (from, to, sigma, [beta, tc, tau0]) => 1 + beta! * meanTwoSided(from - tau0!, to - tau0!, tc! / 2, sigma),
+  mean: (from, to, sigma, [beta, tc, tau0]) =>
+    1 + beta! * meanTwoSided(from - tau0!, to - tau0!, tc! / 2, sigma),
   atZero: { parameter: 0, offset: 1, slope: 1 },
   linewidth: { parameter: 1, factor: 1e12 / Math.PI },
 }

@@ -63,7 +63,8 @@ export function drivenDip(x: number, rabi: number, gamma: number): number {
   const square = rabi * rabi - (gamma * gamma) / 16
   const m = Math.sqrt(Math.abs(square))
   // Near m = 0 both forms become 1 + decay t; the series avoids 0/0.
-  if (m * t < 1e-4) return Math.exp(-decay * t) * (1 - (square * t * t) / 2 + decay * t * (1 - (square * t * t) / 6))
+  if (m * t < 1e-4)
+    return Math.exp(-decay * t) * (1 - (square * t * t) / 2 + decay * t * (1 - (square * t * t) / 6))
   if (square > 0) return Math.exp(-decay * t) * (Math.cos(m * t) + (decay / m) * Math.sin(m * t))
   // cosh and sinh joined to the decay, so that a long delay does not overflow.
   const slow = Math.exp((m - decay) * t)

@@ -25,9 +25,7 @@ export const threeLevel: FitModel = {
     const dip = featureOf(data, -1, 3)
     const depth = Math.min(Math.max(-dip.height, 0.1), 0.95)
     return [range / 5, range / 20, range / 80].flatMap((t1) =>
-      [4, 20].flatMap((ratio) =>
-        [0.2, 1].map((a) => [depth, a, t1, t1 * ratio, dip.position]),
-      ),
+      [4, 20].flatMap((ratio) => [0.2, 1].map((a) => [depth, a, t1, t1 * ratio, dip.position])),
     )
   },
   atZero: { parameter: 0, offset: 1, slope: -1 },

@@ -14,7 +14,8 @@ export const twoLevel: FitModel = {
       tau0Parameter(scales),
     ]
   },
-  mean: (from, to, sigma, [g0, t1, tau0]) => 1 - (1 - g0!) * meanTwoSided(from - tau0!, to - tau0!, t1!, sigma),
+  mean: (from, to, sigma, [g0, t1, tau0]) =>
+    1 - (1 - g0!) * meanTwoSided(from - tau0!, to - tau0!, t1!, sigma),
   starts: (data) => {
     const { range, bin } = scalesOf(data)
     const dip = featureOf(data, -1, 5)

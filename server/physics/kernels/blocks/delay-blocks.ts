@@ -3,8 +3,14 @@ import { EXACT_SPAN, lowerBound, offsetsFrom } from './halves.ts'
 /** Starts taken at once: large enough to spread the cost of a search, small enough to stay in the cache. */
 const STARTS_PER_BLOCK = 1 << 16
 
-/** Offsets of one block: start offsets from a base, stop offsets from that base + lo, so that a delay d = lo + (stop - start). */
-export type VisitBlock = (starts: Float64Array, startCount: number, stops: Float64Array, stopCount: number) => void
+/** Offsets of one block: start offsets from a base, stop offsets from that base + lo, so that a delay d = lo + (stop - start). `firstStart` is the index of the first start. */
+export type VisitBlock = (
+  starts: Float64Array,
+  startCount: number,
+  stops: Float64Array,
+  stopCount: number,
+  firstStart: number,
+) => void
 
 /**
  * Walks two ascending channels in blocks and hands each block over as doubles, together with every stop that lies
@@ -23,7 +29,7 @@ export function forEachDelayBlock(
   const startOffsets = new Float64Array(Math.min(STARTS_PER_BLOCK, starts.length))
   let stopOffsets = new Float64Array(0)
   let stopFrom = 0
-  for (let from = 0; from < starts.length; ) {
+  for (let from = 0; from < starts.length;) {
     const base = starts[from]!
     const most = Math.min(from + STARTS_PER_BLOCK, starts.length)
     const to = starts[most - 1]! - base < EXACT_SPAN ? most : lowerBound(starts, base + EXACT_SPAN, from)
@@ -33,7 +39,7 @@ export function forEachDelayBlock(
       if (stopOffsets.length < stopTo - stopFrom) stopOffsets = new Float64Array(2 * (stopTo - stopFrom))
       offsetsFrom(starts, from, to, base, startOffsets)
       offsetsFrom(stops, stopFrom, stopTo, base + lo, stopOffsets)
-      visit(startOffsets, to - from, stopOffsets, stopTo - stopFrom)
+      visit(startOffsets, to - from, stopOffsets, stopTo - stopFrom, from)
     }
     from = to
   }

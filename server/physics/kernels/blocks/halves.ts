@@ -20,7 +20,13 @@ function halves(times: BigInt64Array): { words: Int32Array; unsigned: Uint32Arra
  * Exact as long as |time - base| < 2^53: the difference of the upper words times 2^32 is a scaling by a power of two,
  * the difference of the lower words is below 2^32, and their sum is an integer that a double holds, so no step rounds.
  */
-export function offsetsFrom(times: BigInt64Array, from: number, to: number, base: bigint, out: Float64Array): void {
+export function offsetsFrom(
+  times: BigInt64Array,
+  from: number,
+  to: number,
+  base: bigint,
+  out: Float64Array,
+): void {
   const { words, unsigned } = halves(times)
   const baseHigh = Number(base >> 32n)
   const baseLow = Number(base & 0xffffffffn)

@@ -50,7 +50,9 @@ function addInBlocks(
 ): void {
   const bin = Number(binPs)
   const width = binPs * BigInt(counts.length)
-  forEachDelayBlock(starts, stops, lo, width, (a, aCount, b, bCount) => addBlock(a, aCount, b, bCount, bin, counts))
+  forEachDelayBlock(starts, stops, lo, width, (a, aCount, b, bCount) =>
+    addBlock(a, aCount, b, bCount, bin, counts),
+  )
 }
 
 /** The same for ranges beyond 2^52 ps (75 minutes), where doubles could lose picoseconds: slow, in 64-bit integers. */

@@ -11,7 +11,15 @@ export interface Trace {
  * Counts per time bin: bin k holds start + k b <= t < start + (k+1) b. The edges are looked up in the ascending times,
  * which costs a search per bin instead of a pass over all tags. Tags outside the bins are not counted.
  */
-export function createTrace({ startPs, binPs, bins }: { startPs: bigint; binPs: bigint; bins: number }): Trace {
+export function createTrace({
+  startPs,
+  binPs,
+  bins,
+}: {
+  startPs: bigint
+  binPs: bigint
+  bins: number
+}): Trace {
   const counts = new Float64Array(bins)
   return {
     push(times) {

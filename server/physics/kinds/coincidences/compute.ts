@@ -1,5 +1,12 @@
 import type { Computed, ComputeTask, Note } from '../../definition.ts'
-import { afterpulseNote, channelNotes, fewPairsNote, narrowWindowNote, resolutionNote, wideWindowNote } from '../../notes/pair-notes.ts'
+import {
+  afterpulseNote,
+  channelNotes,
+  fewPairsNote,
+  narrowWindowNote,
+  resolutionNote,
+  wideWindowNote,
+} from '../../notes/pair-notes.ts'
 import { picosecondsJson } from '../../quantities.ts'
 import { chancePairs, poolPairs, requireInside, type PooledPairs } from '../../record/pooled.ts'
 import { countWindows } from './count.ts'
@@ -26,7 +33,11 @@ export function compute({
     const reach = size(centrePs) + BigInt(perSide) * stepPs + widthPs
     requireInside(pooled, reach, '/parameters/offPeakWindows', 'The outermost off-peak window')
   }
-  const { pairs, offPeakCounts } = countWindows(pooled, { a, b, widthPs, centrePs, perSide, stepPs }, progress)
+  const { pairs, offPeakCounts, windows } = countWindows(
+    pooled,
+    { a, b, widthPs, centrePs, perSide, stepPs },
+    progress,
+  )
   const lo = centrePs - widthPs / 2n
   const counted: PairCounts = {
     countsA: pooled.countsA,
@@ -59,8 +70,10 @@ export function compute({
       rawCar: derived.rawCar,
       g2: derived.g2,
       klyshko: derived.klyshko,
+      expectedByProduct: counted.product,
+      windows: windows.map((w) => ({ delayPs: picosecondsJson(w.centrePs), counts: w.counts })),
     },
-    notes: [...notesOf(parameters, pooled, counted, derived)],
+    notes: notesOf(parameters, pooled, counted, derived),
   }
 }
 
@@ -97,5 +110,6 @@ const noSingles: Note = {
 
 const belowZero: Note = {
   code: 'below-zero',
-  detail: 'The true rate is below zero: more accidentals were subtracted than pairs were counted. For antibunched light the window sees fewer pairs than chance.',
+  detail:
+    'The true rate is below zero: more accidentals were subtracted than pairs were counted. For antibunched light the window sees fewer pairs than chance.',
 }

@@ -2,7 +2,12 @@ import { z } from 'zod'
 import { picosecondsSchema } from '../../../contract/common.ts'
 import { quantitySchema } from '../../../contract/quantity.ts'
 import type { KindDefinition } from '../../definition.ts'
-import { channelParameter, picosecondsParameter, quantityParameter, uDurationParameter } from '../../parameters.ts'
+import {
+  channelParameter,
+  picosecondsParameter,
+  quantityParameter,
+  uDurationParameter,
+} from '../../parameters.ts'
 
 const noDark = { value: 0, u: 0, unit: 'cps' as const }
 
@@ -23,7 +28,8 @@ const parametersSchema = z
     offPeakStepPs: picosecondsParameter({
       title: 'Off-peak step',
       min: 1,
-      description: 'Distance between windows, at least their width; a multiple of the period for pulsed light.',
+      description:
+        'Distance between windows, at least their width; a multiple of the period for pulsed light.',
     }).optional(),
     darkRates: z
       .strictObject({
@@ -44,7 +50,8 @@ const parametersSchema = z
     uDurationPs: uDurationParameter,
   })
   .superRefine((p, context) => {
-    const say = (field: string, message: string) => context.addIssue({ code: 'custom', path: [field], message })
+    const say = (field: string, message: string) =>
+      context.addIssue({ code: 'custom', path: [field], message })
     if (p.subtract === 'offPeak' && p.offPeakWindows === 0) {
       say('subtract', 'Off-peak accidentals need at least one off-peak window.')
     }
@@ -77,6 +84,10 @@ const resultSchema = z.object({
   rawCar: quantitySchema,
   g2: quantitySchema,
   klyshko: z.object({ a: quantitySchema, b: quantitySchema }),
+  /** Pairs that the product of the rates lets expect in one window. */
+  expectedByProduct: z.number(),
+  /** Every counted window by ascending delay, the peak among them. */
+  windows: z.array(z.object({ delayPs: picosecondsSchema, counts: z.int() })),
 })
 export type CoincidencesResult = z.infer<typeof resultSchema>
 
@@ -84,11 +95,14 @@ export const coincidences: KindDefinition = {
   kind: 'coincidences',
   version: 1,
   title: 'Coincidences',
-  summary: 'Pairs of detections in a window: rate, accidentals in two independent ways, true rate, efficiencies and g2.',
+  summary:
+    'Pairs of detections in a window: rate, accidentals in two independent ways, true rate, efficiencies and g2.',
   inputs: { min: 1, max: 100, accepts: ['tags'] },
   parameters: parametersSchema,
   result: resultSchema,
-  example: { parameters: { a: 1, b: 2, windowPs: 2001, delayPs: 0, offPeakWindows: 5, offPeakStepPs: 100000 } },
+  example: {
+    parameters: { a: 1, b: 2, windowPs: 2001, delayPs: 0, offPeakWindows: 5, offPeakStepPs: 100000 },
+  },
   figures: (result) => [
     { pointer: '/rate', label: 'W2' },
     { pointer: '/trueRate', label: 'true rate' },

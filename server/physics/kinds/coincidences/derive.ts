@@ -78,7 +78,8 @@ function carOf(c: PairCounts, used: 'offPeak' | 'product'): Quantity {
   if (c.pairs === 0) return quantity(-1, null, '1')
   const ratio = c.pairs / accidentals
   const variance = ratioVariance(c, accidentals)
-  if (used === 'product') return quantity(ratio - 1, inQuadrature(Math.sqrt(variance), ratio * c.relativeUDuration), '1')
+  if (used === 'product')
+    return quantity(ratio - 1, inQuadrature(Math.sqrt(variance), ratio * c.relativeUDuration), '1')
   const fromOffPeak = (ratio ** 2 * (1 + mirrorExcess(c, accidentals))) / c.offPeak!.counts
   return quantity(ratio - 1, Math.sqrt(variance + fromOffPeak), '1')
 }

@@ -18,7 +18,8 @@ export interface RatesSeen {
 
 /** The signal share of a background parameter (definitions.md B3). */
 export function signalShare(background: BackgroundParameter, seen: RatesSeen): SignalShare {
-  if ('rho' in background) return { q: background.rho ** 2, relativeU: (2 * background.uRho) / background.rho }
+  if ('rho' in background)
+    return { q: background.rho ** 2, relativeU: (2 * background.uRho) / background.rho }
   const [a, b] =
     'rateA' in background
       ? [
@@ -47,7 +48,10 @@ function fraction(
       `A background of ${rate.value} cps leaves no signal in the ${total.toPrecision(4)} cps of this channel. Give a rate from 0 to below the channel's own.`,
     )
   }
-  return { rho, u: inQuadrature((rate.u ?? 0) / total, (rate.value / total ** 2) * (Math.sqrt(counts) / durationS)) }
+  return {
+    rho,
+    u: inQuadrature((rate.u ?? 0) / total, (rate.value / total ** 2) * (Math.sqrt(counts) / durationS)),
+  }
 }
 
 /** g_c = 1 - (1 - g)/q (Brouri et al., Opt. Lett. 25, 1294 (2000), for unequal fractions). */
@@ -58,5 +62,10 @@ export function correctedQuantity(raw: Quantity, share: SignalShare): Quantity {
   if (raw.value === null) return quantity(null, null, '1')
   const value = withoutBackground(raw.value, share)
   const u = raw.u === null ? null : inQuadrature(raw.u / share.q, (1 - value) * share.relativeU)
-  return quantity(value, u, '1', raw.upper === undefined ? {} : { upper: withoutBackground(raw.upper, share) })
+  return quantity(
+    value,
+    u,
+    '1',
+    raw.upper === undefined ? {} : { upper: withoutBackground(raw.upper, share) },
+  )
 }

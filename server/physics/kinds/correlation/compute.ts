@@ -59,7 +59,10 @@ function shapeOf(parameters: CorrelationParameters): HistogramShape {
     )
   }
   if (parameters.a === parameters.b && offsetPs !== 0n) {
-    refuse('/parameters/offsetPs', 'A channel has no cable offset against itself. Leave it out, or choose two channels.')
+    refuse(
+      '/parameters/offsetPs',
+      'A channel has no cable offset against itself. Leave it out, or choose two channels.',
+    )
   }
   return { a: parameters.a, b: parameters.b, binPs, halfBins: Number(halfBins), offsetPs }
 }
@@ -84,12 +87,19 @@ function fitOf(
 ): FitResult | null {
   if (request === undefined) return null
   if (!norm.every((m) => m > 0)) {
-    refuse('/parameters/fit', 'A channel has no tags, so there is nothing to fit. Choose channels that have tags, or leave the fit out.')
+    refuse(
+      '/parameters/fit',
+      'A channel has no tags, so there is nothing to fit. Choose channels that have tags, or leave the fit out.',
+    )
   }
   // An autocorrelation is even: its zero delay is known.
   const tau0Ps = request.tau0Ps ?? (pooled.sameChannel ? 0 : undefined)
   const fit = fitCorrelation(fitDataOf(shape, counts, norm, pooled.sameChannel), { ...request, tau0Ps })
   if (share === undefined || fit.g2Zero === undefined) return fit
   const { linewidth, ...rest } = fit
-  return { ...rest, g2ZeroCorrected: correctedQuantity(fit.g2Zero, share), ...(linewidth ? { linewidth } : {}) }
+  return {
+    ...rest,
+    g2ZeroCorrected: correctedQuantity(fit.g2Zero, share),
+    ...(linewidth ? { linewidth } : {}),
+  }
 }

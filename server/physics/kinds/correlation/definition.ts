@@ -23,7 +23,10 @@ const backgroundParameter = z
       rateB: quantityParameter('cps', { title: 'Background rate B' }),
     }),
   ])
-  .meta({ title: 'Background', description: 'Uncorrelated background with g2 = 1, as signal fractions or as rates.' })
+  .meta({
+    title: 'Background',
+    description: 'Uncorrelated background with g2 = 1, as signal fractions or as rates.',
+  })
 export type BackgroundParameter = z.infer<typeof backgroundParameter>
 
 const fitParameter = z
@@ -38,7 +41,10 @@ const fitParameter = z
       unit: 'ps',
       description: 'Full width at half maximum for the pair of detectors, not for one of them.',
     }),
-    tau0Ps: z.number().optional().meta({ title: 'Zero delay', unit: 'ps', description: 'Free where not given.' }),
+    tau0Ps: z
+      .number()
+      .optional()
+      .meta({ title: 'Zero delay', unit: 'ps', description: 'Free where not given.' }),
     level: z.enum(['fixed', 'free']).default('fixed').meta({
       title: 'Level',
       description: 'Free: the model is multiplied by a parameter, for bunching beyond the fitted range.',
@@ -51,7 +57,10 @@ const parametersSchema = z.strictObject({
   b: channelParameter({ title: 'Channel B', description: 'Stops.' }),
   binPs: picosecondsParameter({ title: 'Bin', min: 1 }),
   halfRangePs: picosecondsParameter({ title: 'Half range', min: 0 }),
-  offsetPs: picosecondsParameter({ title: 'Cable offset', description: 'Subtracted from the delays.' }).default(0),
+  offsetPs: picosecondsParameter({
+    title: 'Cable offset',
+    description: 'Subtracted from the delays.',
+  }).default(0),
   background: backgroundParameter.optional(),
   fit: fitParameter.optional(),
 })
@@ -108,7 +117,8 @@ export const correlation: KindDefinition = {
   kind: 'correlation',
   version: 1,
   title: 'Correlation',
-  summary: 'Histogram of pair delays as g2 with uncertainties, g2(0), background correction and a fitted model.',
+  summary:
+    'Histogram of pair delays as g2 with uncertainties, g2(0), background correction and a fitted model.',
   inputs: { min: 1, max: 100, accepts: ['tags'] },
   parameters: parametersSchema,
   result: resultSchema,
@@ -125,6 +135,9 @@ function figures(result: unknown): FigurePointer[] {
     { pointer: '/g2ZeroCorrected', label: 'g2(0), corrected' },
     { pointer: '/fit/g2Zero', label: 'g2(0), fit' },
     { pointer: '/fit/g2ZeroCorrected', label: 'g2(0), fit, corrected' },
-    ...Object.keys(fit?.parameters ?? {}).map((name) => ({ pointer: `/fit/parameters/${name}`, label: name })),
+    ...Object.keys(fit?.parameters ?? {}).map((name) => ({
+      pointer: `/fit/parameters/${name}`,
+      label: name,
+    })),
   ]
 }

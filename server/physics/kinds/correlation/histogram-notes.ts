@@ -10,7 +10,11 @@ const MOST_CROSSTALK_PEAKS = 2
  * Odd and even bins differ systematically, as uneven time bins of a tagger make them: the alternating sum of second differences
  * in the outer half of the range, where g2 is smooth, beyond four standard deviations.
  */
-export function alternationNote(counts: ArrayLike<number>, norm: ArrayLike<number>, halfBins: number): Note[] {
+export function alternationNote(
+  counts: ArrayLike<number>,
+  norm: ArrayLike<number>,
+  halfBins: number,
+): Note[] {
   let sum = 0
   let variance = 0
   for (let i = 1; i + 1 < counts.length; i += 2) {
@@ -57,7 +61,12 @@ function stands(counts: ArrayLike<number>, i: number): boolean {
 }
 
 /** Fewer than three bins make up the dip (or what is seen of it): g2(0) then depends on the bin. */
-export function wideBinNote(g2: readonly (number | null)[], counts: ArrayLike<number>, halfBins: number, binPs: number): Note[] {
+export function wideBinNote(
+  g2: readonly (number | null)[],
+  counts: ArrayLike<number>,
+  halfBins: number,
+  binPs: number,
+): Note[] {
   const zero = g2[halfBins]
   if (zero === null || zero === undefined || zero > 0.7 || halfBins < 4) return []
   const half = (1 + zero) / 2

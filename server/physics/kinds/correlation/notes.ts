@@ -45,7 +45,8 @@ const noChance: Note = {
 
 const belowZero: Note = {
   code: 'below-zero',
-  detail: 'The corrected g2(0) is below zero: more background was taken out than there is. Check the signal fractions.',
+  detail:
+    'The corrected g2(0) is below zero: more background was taken out than there is. Check the signal fractions.',
 }
 
 /** One detector cannot see two photons within its dead time: the empty zero bin says nothing about the light. */
@@ -71,7 +72,12 @@ function blockNote({ blockU, g2Zero }: CorrelationResult): Note[] {
 
 function fitNotes(fit: Fit, binPs: number): Note[] {
   if (!fit.converged) {
-    return [{ code: 'not-converged', detail: `The ${fit.model} fit did not converge: ${reasonText(fit.reason)}. No parameter is reported.` }]
+    return [
+      {
+        code: 'not-converged',
+        detail: `The ${fit.model} fit did not converge: ${reasonText(fit.reason)}. No parameter is reported.`,
+      },
+    ]
   }
   return [
     ...fit.atBound.map((name) => ({
@@ -85,7 +91,9 @@ function fitNotes(fit: Fit, binPs: number): Note[] {
 }
 
 function reasonText(reason: string | null): string {
-  return reason === 'bound' ? 'a parameter ran into a bound that has no meaning for it' : (reason ?? 'no reason is known')
+  return reason === 'bound'
+    ? 'a parameter ran into a bound that has no meaning for it'
+    : (reason ?? 'no reason is known')
 }
 
 /** chi2/dof says that the model or the errors are wrong. With few counts a bin chi2 scatters by 2 + 1/m per bin. */

@@ -1,7 +1,14 @@
 import type { Quantity } from '../../../contract/quantity.ts'
 import type { Computed, ComputeTask, Note } from '../../definition.ts'
 import { deadTimeNote, driftNote, pauseNote, spanNotes, undeclaredNote } from '../../notes/rate-notes.ts'
-import { inQuadrature, picosecondsJson, PS_PER_S, quantity, zeroCounts, noQuantity } from '../../quantities.ts'
+import {
+  inQuadrature,
+  picosecondsJson,
+  PS_PER_S,
+  quantity,
+  zeroCounts,
+  noQuantity,
+} from '../../quantities.ts'
 import { channelsOf, channelTimes } from '../../record/channel.ts'
 import { exposureOf, seconds, type Exposure } from '../../record/exposure.ts'
 import { gapsOf } from '../../record/gaps.ts'
@@ -15,7 +22,11 @@ import type { SinglesParameters, SinglesResult } from './definition.ts'
 type ChannelResult = SinglesResult['channels'][number]
 
 /** Counts and rates of each channel with their trace (definitions.md B7, physics.md section 1). */
-export function compute({ parameters, inputs, progress }: ComputeTask<SinglesParameters>): Computed<SinglesResult> {
+export function compute({
+  parameters,
+  inputs,
+  progress,
+}: ComputeTask<SinglesParameters>): Computed<SinglesResult> {
   const record = inputs[0]!.record
   const exposure = exposureOf(record, '/inputs/0')
   const channels = parameters.channels ?? channelsOf(record)
@@ -72,7 +83,9 @@ function channelResult(
       smallestGapPs: gaps.smallestPs,
     },
     remarks: [
-      ...(durationS > 0 ? deadTimeNote(channel, (counts / durationS) * (deadPs / PS_PER_S)) : [noDuration(channel)]),
+      ...(durationS > 0
+        ? deadTimeNote(channel, (counts / durationS) * (deadPs / PS_PER_S))
+        : [noDuration(channel)]),
       ...driftNote(channel, dispersion),
       ...spanNotes(channel, times, exposure),
       ...pauseNote(channel, counts, gaps, exposure),

@@ -34,7 +34,10 @@ const parametersSchema = z.strictObject({
     title: 'Dark rates',
     description: 'By channel number; subtracted after the dead-time correction.',
   }).optional(),
-  deadTimes: perChannel(deadTimeParameter, { title: 'Dead times', description: 'By channel number.' }).optional(),
+  deadTimes: perChannel(deadTimeParameter, {
+    title: 'Dead times',
+    description: 'By channel number.',
+  }).optional(),
   uDurationPs: uDurationParameter,
 })
 export type SinglesParameters = z.infer<typeof parametersSchema>
@@ -79,7 +82,8 @@ export const singles: KindDefinition = {
   kind: 'singles',
   version: 1,
   title: 'Singles',
-  summary: 'Counts and rate of each channel, corrected for dead time and dark counts, and whether the rate is steady.',
+  summary:
+    'Counts and rate of each channel, corrected for dead time and dark counts, and whether the rate is steady.',
   inputs: { min: 1, max: 1, accepts: ['tags'] },
   parameters: parametersSchema,
   result: resultSchema,

@@ -3,7 +3,7 @@ import { useState } from 'react'
 import { anchorsBytes, type Anchors } from '../../../../server/ledger-format/anchors.ts'
 import { sentenceOf } from '../../../lib/api-problem.ts'
 import { saveAsFile } from '../save-as-file.ts'
-import { countText } from '../../../lib/format-quantity.ts'
+import { eventNumber } from '../event-number.ts'
 import { dateAndTime } from '../../../lib/times.ts'
 import { Button } from '../../../ui/button.tsx'
 import { groupedDigest } from '../../../ui/digest.tsx'
@@ -65,7 +65,7 @@ export function HeadSection() {
   const signed = useQuery(headQuery)
   if (signed.error) return null
   return (
-    <Section title="Newest head" count={signed.data && countText(signed.data.head.treeSize)}>
+    <Section title="Newest head" count={signed.data && eventNumber(signed.data.head.treeSize)}>
       {signed.data && (
         <>
           <p className="mb-2">

@@ -3,7 +3,7 @@ import { TextLink } from '../../../ui/button.tsx'
 import { shortDigest } from '../../../ui/digest.tsx'
 import { FringeMark } from '../../../ui/fringe-mark.tsx'
 import { StateGlyph } from '../../../ui/state-glyph.tsx'
-import { countText } from '../../../lib/format-quantity.ts'
+import { eventNumber } from '../event-number.ts'
 import { stampTime, zoneInWords } from '../../../lib/times.ts'
 import type { ShownEvent } from '../queries.ts'
 import { actorWords, eventWords, subjectInWords } from '../event-words.ts'
@@ -118,7 +118,7 @@ function EventRow({
           aria-label={`Event ${event.sequence}, ${open ? 'close' : 'open'} its details`}
           onClick={onToggle}
         >
-          {countText(event.sequence)}
+          {eventNumber(event.sequence)}
         </button>
       </td>
       <td className="hs-fig hs-desk-only">{stampTime(event.time)}</td>

@@ -1,7 +1,7 @@
 import { useQuery } from '@tanstack/react-query'
 import type { ReactNode } from 'react'
 import { sentenceOf } from '../../../lib/api-problem.ts'
-import { countText } from '../../../lib/format-quantity.ts'
+import { eventNumber } from '../event-number.ts'
 import { TextButton } from '../../../ui/button.tsx'
 import { groupedDigest } from '../../../ui/digest.tsx'
 import { Message } from '../../../ui/message.tsx'
@@ -36,7 +36,7 @@ export function EventDetails({
           { name: 'Action', value: event.action },
           {
             name: 'Subject',
-            value: `${name}, event ${countText(event.subjectSequence)} of its own chain`,
+            value: `${name}, event ${eventNumber(event.subjectSequence)} of its own chain`,
             words: true,
           },
           ...Object.entries(event.payload).map(([member, value]) => ({ name: member, value: payloadText(value) })),
@@ -66,8 +66,8 @@ function PlaceCheck({ event, head }: { event: ShownEvent; head: SignedHead | nul
   const check = checkEventHere(event, proof.data, head)
   if (check.digest && check.inclusion)
     return (
-      <Message kind="good" title={`This event stands under head ${countText(head.treeSize)}.`}>
-        Checked in this browser: its digest was computed from what is shown here, and {countText(proof.data.path.length)}{' '}
+      <Message kind="good" title={`This event stands under head ${eventNumber(head.treeSize)}.`}>
+        Checked in this browser: its digest was computed from what is shown here, and {eventNumber(proof.data.path.length)}{' '}
         hashes lead from it to the root {groupedDigest(head.rootHash.slice(0, 16))}…
       </Message>
     )

@@ -1,5 +1,5 @@
 import { ticks } from 'd3-array'
-import { countText } from '../../../lib/format-quantity.ts'
+import { eventNumber } from '../event-number.ts'
 
 const width = 936
 
@@ -13,10 +13,12 @@ export function RangeBar({ events, brokenAt, head }: { events: number; brokenAt:
   const step = (major[1] ?? events) - (major[0] ?? 0)
   const minor = ticks(0, events, 50).filter((tick) => Number.isInteger(tick))
   const checked = brokenAt === null ? events : brokenAt - 1
+  // Two labels need room; where they would meet, the break alone is told.
+  const close = head !== null && brokenAt !== null && Math.abs(at(head) - at(brokenAt)) < 130
   return (
     <div className="overflow-x-auto">
       <svg
-        className="mt-3.5 block h-auto max-w-full overflow-visible max-[700px]:max-w-none"
+        className="mt-3.5 block h-auto w-full min-w-180 overflow-visible"
         viewBox={`0 0 ${width} 52`}
         width={width}
         height="52"
@@ -39,14 +41,14 @@ export function RangeBar({ events, brokenAt, head }: { events: number; brokenAt:
           .filter((tick) => tick > step / 2 && tick < events - step * 0.6)
           .map((tick) => (
             <text key={tick} className="hs-axis-number" x={at(tick)} y="49" textAnchor="middle">
-              {countText(tick)}
+              {eventNumber(tick)}
             </text>
           ))}
         <text className="hs-axis-number" x={width} y="49" textAnchor="end">
-          {countText(events)}
+          {eventNumber(events)}
         </text>
-        {head !== null && <Mark x={at(head)} words={`head at ${countText(head)}`} colour="var(--hs-ink2)" />}
-        {brokenAt !== null && <Mark x={at(brokenAt)} words={`breaks at ${countText(brokenAt)}`} colour="var(--hs-fault)" />}
+        {head !== null && !close && <Mark x={at(head)} words={`head at ${eventNumber(head)}`} colour="var(--hs-ink2)" />}
+        {brokenAt !== null && <Mark x={at(brokenAt)} words={`breaks at ${eventNumber(brokenAt)}`} colour="var(--hs-fault)" />}
       </svg>
     </div>
   )

@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query'
 import { sentenceOf } from '../../../lib/api-problem.ts'
-import { countText } from '../../../lib/format-quantity.ts'
+import { eventNumber } from '../event-number.ts'
 import { dateAndTime } from '../../../lib/times.ts'
 import { Button } from '../../../ui/button.tsx'
 import { groupedDigest } from '../../../ui/digest.tsx'
@@ -62,7 +62,7 @@ function ResultDetail({ result }: { result: Verification }) {
   return (
     <>
       <p className="mt-1">
-        {countText(result.events)} events checked in {result.durationS.toFixed(1)} s on {dateAndTime(result.checkedAt)}.{' '}
+        {eventNumber(result.events)} events checked in {result.durationS.toFixed(1)} s on {dateAndTime(result.checkedAt)}.{' '}
         {result.firstBroken ? result.firstBroken.detail : result.detail}
       </p>
       {result.rootHash && (

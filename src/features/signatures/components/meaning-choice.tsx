@@ -1,11 +1,11 @@
 import { useState } from 'react'
 import type { Entry } from '../../../../server/contract/entries.ts'
-import { overlaps } from '../../../../server/ledger-format/record.ts'
 import { zoneInWords } from '../../../lib/times.ts'
 import { Button } from '../../../ui/button.tsx'
 import { TextField } from '../../../ui/field.tsx'
 import { OptionRow } from '../../../ui/option-row.tsx'
 import { Select } from '../../../ui/select.tsx'
+import { endOfRun, presenceTrouble } from '../presence.ts'
 import type { Presence } from '../signing.ts'
 import { utcOfZoned, zonedOfUtc } from '../zoned-time.ts'
 
@@ -51,10 +51,6 @@ export function MeaningChoice({
   )
 }
 
-function endOf(run: Run): string {
-  return new Date(Date.parse(run.startedAt) + Number(run.durationPs ?? 0) / 1e9).toISOString()
-}
-
 function PresenceTimes({
   runs,
   zone,
@@ -69,7 +65,7 @@ function PresenceTimes({
   const [runId, setRunId] = useState(runs[0]?.id ?? '')
   const run = runs.find((each) => each.id === runId)
   const [from, setFrom] = useState(run ? zonedOfUtc(run.startedAt, zone) : '')
-  const [to, setTo] = useState(run ? zonedOfUtc(endOf(run), zone) : '')
+  const [to, setTo] = useState(run ? zonedOfUtc(endOfRun(run), zone) : '')
   const trouble = run ? presenceTrouble(run, utcOfZoned(from, zone), utcOfZoned(to, zone)) : 'Choose the run.'
 
   function chooseRun(id: string) {
@@ -77,7 +73,7 @@ function PresenceTimes({
     setRunId(id)
     if (!chosen) return
     setFrom(zonedOfUtc(chosen.startedAt, zone))
-    setTo(zonedOfUtc(endOf(chosen), zone))
+    setTo(zonedOfUtc(endOfRun(chosen), zone))
     onPresence(null)
   }
 
@@ -112,12 +108,4 @@ function PresenceTimes({
       )}
     </>
   )
-}
-
-/** Why the times cannot be used, or null. */
-export function presenceTrouble(run: Run, from: string | null, to: string | null): string | null {
-  if (from === null || to === null) return 'Write the times as 2026-11-12 11:30.'
-  if (from > to) return 'The end lies before the beginning.'
-  const durationPs = run.durationPs === null ? null : String(run.durationPs)
-  return overlaps({ from, to }, { startedAt: run.startedAt, durationPs }) ? null : `The times do not overlap ${run.number}.`
 }

@@ -1,13 +1,14 @@
-import { useQuery } from '@tanstack/react-query'
+import { useQueries } from '@tanstack/react-query'
 import { useState } from 'react'
 import type { EntrySignature } from '../../../../server/contract/signatures.ts'
 import { dateAndTime } from '../../../lib/times.ts'
 import { Checkbox } from '../../../ui/checkbox.tsx'
 import { StateGlyph } from '../../../ui/state-glyph.tsx'
 import { waitingWords } from '../../../ui/waiting-scale.tsx'
-import { openedCalculationsQuery } from '../opened-calculations.ts'
+import { calculationQuery } from '../queries.ts'
 import { checksOf, openablesOf, questions, stillToDo, type Openable, type QuestionCode } from '../review-checks.ts'
 import { daysSince, dueDays } from '../waiting.ts'
+import { CalculationPeek } from './calculation-peek.tsx'
 import { ChecksList } from './checks-list.tsx'
 import { CountersignAct } from './countersign-act.tsx'
 import { FilePeek } from './file-peek.tsx'
@@ -16,7 +17,7 @@ import type { SheetOnScreen } from './sign-act.tsx'
 
 /**
  * Beside the sheet: what the program checked, what is to be opened and what was, the questions, and the two answers. The
- * text and the calculations count as opened when the sheet beside has read them; files are opened from here.
+ * text and the calculations count as opened once the sheet beside has read them; files are opened from here.
  */
 export function ReviewPanel({
   sheet,
@@ -35,7 +36,10 @@ export function ReviewPanel({
   onReturned: () => void
 }) {
   const { entry } = sheet
-  const { data: calculations = [] } = useQuery(openedCalculationsQuery(entry))
+  const calculations = useQueries({
+    queries: entry.calculations.map((each) => ({ ...calculationQuery(each.id), enabled: false })),
+    combine: (results) => results.flatMap(({ data }) => data ?? []),
+  })
   const [openedFiles, setOpenedFiles] = useState<string[]>([])
   const [answered, setAnswered] = useState<QuestionCode[]>([])
   const isOpened = (each: Openable) =>
@@ -91,12 +95,14 @@ function Opening({
       </h3>
       <ul className="hs-checks">
         {openables.map((each) => {
-          const file = each.kind === 'file' ? sheet.entry.files.find((candidate) => candidate.id === each.id) : undefined
+          const file = sheet.entry.files.find((candidate) => candidate.id === each.id)
           return (
             <li key={each.id}>
               {isOpened(each) ? <StateGlyph state="ok" wordless /> : <StateGlyph state="draft" wordless />}
               <span className="min-w-0 break-words">
-                {file ? <FilePeek file={file} onOpened={() => onFile(file.id)} /> : each.name}
+                {file && <FilePeek file={file} onOpened={() => onFile(file.id)} />}
+                {each.kind === 'calculation' && <CalculationPeek id={each.id} label={each.name} />}
+                {each.kind === 'text' && each.name}
                 {!isOpened(each) && <small>not opened yet</small>}
               </span>
             </li>

@@ -19,7 +19,8 @@ const runs = [...rows, ...rows.map((row) => [...row].reverse().join(''))]
 function costOfCharacter(character: string): number {
   if (/\d/.test(character)) return Math.log2(10)
   if (/[a-z]/.test(character)) return Math.log2(26)
-  return /[ \-_.,]/.test(character) ? 1 : 5.5
+  // What stands between words is the same throughout; it adds nothing.
+  return /[ \-_.,]/.test(character) ? 0 : 5.5
 }
 
 /** Bits of a piece that a guesser takes as one: a word, a row of keys, the same sign over and over, a year. Null: none. */

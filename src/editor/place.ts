@@ -1,0 +1,53 @@
+import type { Editor } from '@tiptap/core'
+import { Fragment, type Node } from '@tiptap/pm/model'
+import { NodeSelection, TextSelection, type EditorState, type Transaction } from '@tiptap/pm/state'
+
+/** Position after the block of the top level in which the selection ends. */
+function afterCurrentBlock(state: EditorState): number {
+  const { $to } = state.selection
+  return $to.depth === 0 ? $to.pos : $to.after(1)
+}
+
+/** Puts blocks after the one with the cursor, or in place of it when it is an empty paragraph; a line to go on follows. */
+export function insertBlocks(editor: Editor, nodes: { type: string; attrs: Record<string, unknown> }[]): void {
+  const { state, view } = editor
+  const { $from } = state.selection
+  const blocks = nodes.map((node) => state.schema.nodeFromJSON(node))
+  const here = $from.depth === 1 && $from.parent.type.name === 'paragraph' && $from.parent.content.size === 0
+  const from = here ? $from.before(1) : afterCurrentBlock(state)
+  const to = here ? $from.after(1) : from
+  const atEnd = to >= state.doc.content.size
+  const content = atEnd ? [...blocks, state.schema.nodes.paragraph!.create()] : blocks
+  const size = Fragment.from(content).size
+  const transaction = state.tr.replaceWith(from, to, content)
+  const next = Math.min(from + size - (atEnd ? 1 : 0), transaction.doc.content.size)
+  view.dispatch(transaction.setSelection(TextSelection.near(transaction.doc.resolve(next), -1)).scrollIntoView())
+}
+
+/** Moves the block at a position over its neighbour; null when there is none on that side. */
+export function moveBlock(state: EditorState, pos: number, by: -1 | 1): Transaction | null {
+  const $pos = state.doc.resolve(pos)
+  const node = $pos.nodeAfter
+  const neighbour = siblingOf($pos.parent, $pos.index(), by)
+  if (!node || !neighbour) return null
+  const transaction = state.tr.delete(pos, pos + node.nodeSize)
+  const target = by < 0 ? pos - neighbour.nodeSize : pos + neighbour.nodeSize
+  transaction.insert(target, node)
+  return transaction.setSelection(NodeSelection.create(transaction.doc, target)).scrollIntoView()
+}
+
+function siblingOf(parent: Node, index: number, by: -1 | 1): Node | null {
+  return parent.maybeChild(index + by)
+}
+
+/** A press under the last block goes on there: with the cursor in it when it is text, else in a new line. */
+export function continueAtEnd(editor: Editor): void {
+  const { doc, schema, tr } = editor.state
+  if (doc.lastChild?.isTextblock) {
+    editor.commands.focus('end')
+    return
+  }
+  tr.insert(doc.content.size, schema.nodes.paragraph!.create())
+  editor.view.dispatch(tr.setSelection(TextSelection.near(tr.doc.resolve(tr.doc.content.size), -1)))
+  editor.commands.focus()
+}

@@ -1,0 +1,2 @@
+export { PeopleTable } from './components/people-table.tsx'
+export { peopleQuery } from './queries.ts'
