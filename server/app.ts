@@ -1,6 +1,7 @@
 import type { Express } from 'express'
 import { calculationRoutes } from './features/calculations/index.ts'
 import { contentRoutes, waitingCount } from './features/entries/index.ts'
+import { exportRoutes } from './features/exports/index.ts'
 import { fileRoutes } from './features/files/index.ts'
 import { keyRoutes, signingKeyStatuses } from './features/keys/index.ts'
 import { ledgerRoutes } from './features/ledger/index.ts'
@@ -31,6 +32,7 @@ export function featureRoutes(services: Services): Route[] {
     ...keyRoutes(services),
     ...signatureRoutes(services),
     ...ledgerRoutes(services),
+    ...exportRoutes(services),
   ]
 }
 

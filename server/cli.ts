@@ -1,3 +1,4 @@
+import { closePrinter } from './features/evidence/index.ts'
 import { seedDemo } from './demo/seed-demo.ts'
 import { openLaboratory } from './features/laboratory/index.ts'
 import { addPerson } from './features/people/index.ts'
@@ -9,7 +10,7 @@ import { openLog } from './platform/logger.ts'
 import { openServices } from './platform/open-services.ts'
 import type { Services } from './platform/services.ts'
 
-const usage = `usage: node --import tsx server/cli.ts <command>
+const usage = `usage: node --import ./server/launch/typescript.mjs server/cli.ts <command>
   migrate    bring the database to the newest form; prints {"empty": true} when it holds no laboratory
   seed-demo  load the demonstration laboratory into an empty database
   open-laboratory <account id> <login> <full name> <e-mail>
@@ -50,6 +51,7 @@ async function withServices(work: (services: Services) => Promise<void>) {
     await work(services)
   } finally {
     await close()
+    await closePrinter()
   }
 }
 

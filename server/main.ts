@@ -1,4 +1,6 @@
 import { buildApp } from './app.ts'
+import { closePrinter, evidenceJobs, warmPrinter } from './features/evidence/index.ts'
+import { exportJobs } from './features/exports/index.ts'
 import { fileJobs } from './features/files/index.ts'
 import { findLaboratory, laboratoryJobs, scheduleHeadChecks } from './features/laboratory/index.ts'
 import { ConfigError, readConfig } from './platform/config.ts'
@@ -13,7 +15,7 @@ import type { Services } from './platform/services.ts'
 
 /** What runs beside the API, under the application's role. */
 function systemJobs(services: Services): Job[] {
-  return [sendMailJob(services), ...fileJobs(services), ...laboratoryJobs(services)]
+  return [sendMailJob(services), ...fileJobs(services), ...laboratoryJobs(services), ...evidenceJobs(services), ...exportJobs(services)]
 }
 
 /** Demo people have a published passphrase: their database is never served with real services (ruling 23). */
@@ -34,10 +36,12 @@ await runProcess(async () => {
   const http = await serve(buildApp(services, sessions), config.port)
   for (const job of systemJobs(services)) await services.queue.work(job)
   await scheduleHeadChecks(services)
+  warmPrinter()
   log.info({ origin: config.origin, port: config.port, demo: config.demo }, 'serving')
   return async () => {
     await http.close()
     await close()
+    await closePrinter()
     await sessions.close()
   }
 })

@@ -110,7 +110,8 @@ async function build(tell) {
   if (fs.existsSync(stamp) && fs.readFileSync(stamp, 'utf8') === wanted) return
   tell('Building the client')
   const { NODE_ENV: _, ...env } = process.env
-  for (const config of configs) await run(process.execPath, [at('node_modules/vite/bin/vite.js'), 'build', '--config', config, '--logLevel', 'warn'], env)
+  for (const config of configs)
+    await run(process.execPath, [at('node_modules/vite/bin/vite.js'), 'build', '--config', config, '--logLevel', 'warn'], { ...env, NO_COLOR: '1' })
   fs.writeFileSync(stamp, wanted)
 }
 

@@ -5,9 +5,11 @@ import { freePort } from './ports.mjs'
 import { readyByMessage, readyWhen } from './processes.mjs'
 import { root } from './root.mjs'
 
+const loader = new URL('./typescript.mjs', import.meta.url).href
+
 /** How this Node runs a TypeScript file of the checkout. */
 export function typescript(file, ...args) {
-  return { command: process.execPath, args: ['--import', 'tsx', path.join(root, file), ...args], cwd: root }
+  return { command: process.execPath, args: ['--import', loader, path.join(root, file), ...args], cwd: root }
 }
 
 /** Starts the object store and the other stand-ins that this environment wants; answers their ports. */

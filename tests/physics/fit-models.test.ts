@@ -43,8 +43,8 @@ describe('closed form of the models (definitions.md)', () => {
   })
 
   it('check 26: FWHM of the line times tc', () => {
-    closeTo(fitModels['chaotic-lorentzian'].linewidth.factor / 1e12, 0.318309886184, 1e-11)
-    closeTo(fitModels['chaotic-gaussian'].linewidth.factor / 1e12, 0.664282470268, 1e-11)
+    closeTo(fitModels['chaotic-lorentzian'].linewidth!.factor / 1e12, 0.318309886184, 1e-11)
+    closeTo(fitModels['chaotic-gaussian'].linewidth!.factor / 1e12, 0.664282470268, 1e-11)
   })
 
   it('nothing overflows far from zero or with a wide response', () => {

@@ -28,6 +28,11 @@ export function printPdf(html: string): Promise<Buffer> {
   return print
 }
 
+/** Starts the browser ahead of the first print; a failure shows when something is printed. */
+export function warmPrinter(): void {
+  queue = queue.then(openPage).catch(() => undefined)
+}
+
 /** Ends the browser; a later print starts another. */
 export async function closePrinter(): Promise<void> {
   const open = browser

@@ -16,15 +16,15 @@ export function checkRawFiles(c: Case, folder: string, record: SignedRecord): vo
         throw new Missing('left out by choice')
       }
       const path = `data/${item.path}`
-      need(path === `${folder}raw/${rawName(file, names)}`, `stored as ${item.path}, which is not its name`)
-      need(c.call(path), `${path} is absent`)
+      need(path === `${folder}raw/${rawName(file, names)}`, `stored in data/bundle.json as ${item.path}, which is not its name`)
+      need(c.call(path), `${path} of data/bundle.json is absent`)
       const { sha256, size } = c.file(path)
       const right =
         sha256 === file.sha256 &&
         sha256 === item.sha256 &&
         String(size) === file.size &&
         file.size === item.size
-      need(right, `${path} has another digest or size`)
+      need(right, `${path} has another digest or size than the record and data/bundle.json say`)
       need(!leftOut.has(file.id), 'both in raw and left out')
     })
   }

@@ -53,10 +53,13 @@ export function readCertificates(pem: Uint8Array): Certificate[] {
   return pemBlocks(pem, 'CERTIFICATE').map(readCertificate)
 }
 
-/** Throws unless the bytes are exactly one DER value. */
+/** Throws unless the bytes are exactly one value by their outermost length (X.690 section 8.1.3); parsers ignore what follows. */
 export function checkWholeDer(der: Uint8Array): void {
-  const { offset, result } = fromBER(der)
-  need(offset === der.length && result.error === '', 'not one DER value')
+  const first = der[1] ?? 0
+  const count = first < 0x80 ? 0 : first & 0x7f
+  need(der.length >= 2 + count && first !== 0x80 && count <= 4, 'not one DER value')
+  const long = der.subarray(2, 2 + count).reduce((n, byte) => n * 256 + byte, 0)
+  need(der.length === 2 + count + (count === 0 ? first : long), 'not one DER value')
 }
 
 /** The same few certificates stand beside every signature and stamp: each is read once, each issuance checked once. */

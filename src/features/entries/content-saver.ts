@@ -54,6 +54,11 @@ export class ContentSaver {
     return () => this.listeners.delete(listener)
   }
 
+  /** ETag of the text that the screen follows. */
+  getEtag(): string {
+    return this.etag
+  }
+
   /** Whether the screen holds something that the server has not confirmed. */
   hasUnsaved(): boolean {
     return this.dirty || this.inFlight !== null

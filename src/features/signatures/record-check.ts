@@ -6,6 +6,7 @@ import { sha256Hex } from '../../../server/ledger-format/digest.ts'
 import { checkForm } from '../../../server/ledger-format/forms.ts'
 import { bodyOf, recordForm, signingProblem, type SignedRecord } from '../../../server/ledger-format/record.ts'
 import { signingStatement } from '../../../server/ledger-format/statements.ts'
+import { filesToSign } from './entry-files.ts'
 
 /** What the screen shows and the signer means to sign; the bytes from the server must say exactly this (shapes 5). */
 export interface Expected {
@@ -97,7 +98,7 @@ function checkEntry(record: SignedRecord, { entry, content }: Expected): void {
 }
 
 function checkFiles(record: SignedRecord, entry: Entry): void {
-  const shown = new Map([...entry.files, ...entry.runs.flatMap((run) => run.files)].map((file) => [file.id, file]))
+  const shown = new Map(filesToSign(entry).map((file) => [file.id, file]))
   for (const file of record.files) {
     const onScreen = shown.get(file.id)
     demand(

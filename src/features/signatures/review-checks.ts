@@ -1,6 +1,7 @@
 import type { Calculation } from '../../../server/contract/calculations.ts'
 import type { Entry } from '../../../server/contract/entries.ts'
 import type { StateName } from '../../ui/state-glyph.tsx'
+import { filesToSign } from './entry-files.ts'
 
 export interface Check {
   state: Extract<StateName, 'ok' | 'note' | 'fault'>
@@ -30,7 +31,8 @@ function signatureChecks(entry: Entry): Check[] {
   return check
 }
 
-function fileChecks({ files }: Entry): Check[] {
+function fileChecks(entry: Entry): Check[] {
+  const files = filesToSign(entry)
   const bad = files.filter((file) => file.state !== 'verified')
   if (files.length === 0) return [{ state: 'note', what: 'No file is attached' }]
   if (bad.length === 0) return [{ state: 'ok', what: files.length === 1 ? 'The file matches its digest' : `${files.length} files match their digests` }]
@@ -75,7 +77,7 @@ export function openablesOf(entry: Entry): Openable[] {
   return [
     { kind: 'text', id: entry.id, name: 'The text' },
     ...entry.calculations.map((each) => ({ kind: 'calculation' as const, id: each.id, name: each.label })),
-    ...entry.files.map((file) => ({ kind: 'file' as const, id: file.id, name: file.name })),
+    ...filesToSign(entry).map((file) => ({ kind: 'file' as const, id: file.id, name: file.name })),
   ]
 }
 

@@ -11,9 +11,11 @@ export type Files = ReadonlyMap<string, Uint8Array>
 
 /** A stored zip with fixed dates. */
 export function pack(topFolder: string, files: Files): Uint8Array {
-  const named = [...files].map(
-    ([path, bytes]) => [`${topFolder}/${path}`, [bytes, { level: 0, mtime: new Date(2026, 0, 1) }]] as const,
-  )
+  const options = { level: 0, mtime: new Date(2026, 0, 1) } as const
+  const named = [...files].map(([path, bytes]): [string, [Uint8Array, typeof options]] => [
+    `${topFolder}/${path}`,
+    [bytes, options],
+  ])
   return zipSync(Object.fromEntries(named))
 }
 

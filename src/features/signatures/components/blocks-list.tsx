@@ -1,5 +1,6 @@
 import type { Entry } from '../../../../server/contract/entries.ts'
 import { StateGlyph } from '../../../ui/state-glyph.tsx'
+import { filesToSign } from '../entry-files.ts'
 
 type Block = Entry['blocks'][number]
 
@@ -48,7 +49,7 @@ function placeOf(block: Block, entry: Entry): { anchor: string; name: string } |
   if (pointer === null) return null
   const calculation = entry.calculations.find((each) => pointer.includes(each.id))
   if (calculation && document.getElementById(calculation.id)) return { anchor: calculation.id, name: calculation.label }
-  const file = entry.files.find((each) => pointer.includes(each.id))
+  const file = filesToSign(entry).find((each) => pointer.includes(each.id))
   if (file && document.getElementById(file.id)) return { anchor: file.id, name: file.name }
   return null
 }

@@ -5,6 +5,7 @@ import { dateAndTime, longDate } from '../../../lib/times.ts'
 import { ButtonLink } from '../../../ui/button.tsx'
 import { Message } from '../../../ui/message.tsx'
 import { Facts, Section } from '../../../ui/sheet.tsx'
+import { filesToSign } from '../entry-files.ts'
 import { entryForReviewQuery } from '../queries.ts'
 import { authorsOf } from './witness-queue.tsx'
 
@@ -25,7 +26,7 @@ export function DeskMargin({ entryId }: { entryId: string }) {
             { name: 'Work done', value: longDate(entry.runAt), words: true },
             { name: 'Revision', value: entry.revision },
             { name: 'Runs', value: entry.runs.map((run) => run.number).join(', ') || 'none' },
-            { name: 'Files', value: entry.files.length },
+            { name: 'Files', value: filesToSign(entry).length },
             { name: 'Witnesses', value: `${entry.witnesses.given} of ${entry.witnesses.required}` },
           ]}
         />

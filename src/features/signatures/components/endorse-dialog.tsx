@@ -15,6 +15,7 @@ import { checkedEnrolment, type CheckedEnrolment } from '../enrolment.ts'
 import { useEndorseKey, type Owner } from '../mutations.ts'
 import { enrolmentQuery } from '../queries.ts'
 import { signingTrouble } from '../signing-problems.ts'
+import { useShare } from '../use-share.ts'
 
 interface EndorseProps {
   person: Pick<Person, 'id' | 'name'>
@@ -79,7 +80,7 @@ function EndorseForm({
   const [identity, setIdentity] = useState('')
   const [compared, setCompared] = useState(false)
   const [passphrase, setPassphrase] = useState('')
-  const [share, setShare] = useState<number | null>(null)
+  const [share, setShare] = useShare()
   const endorse = useEndorseKey(me, laboratory)
   const { enrolment, digits, enrolmentSha256 } = enrolled
   const trouble = endorse.error ? signingTrouble(endorse.error) : null

@@ -9,6 +9,7 @@ import { enrolmentStatement } from '../../../../server/ledger-format/statements.
 import { useEnrolKey, type Owner } from '../mutations.ts'
 import { drawPhrase, phraseBits, wordsInPhrase } from '../passphrase/six-words.ts'
 import { judgePassphrase, leastLength } from '../passphrase/strength.ts'
+import { useShare } from '../use-share.ts'
 
 /** Makes a signing key: a passphrase chosen or drawn, written down once more, and the statement that the key signs. */
 export function EnrolForm({ me, laboratory, replaces }: { me: Owner; laboratory: { id: string; name: string }; replaces: boolean }) {
@@ -17,7 +18,7 @@ export function EnrolForm({ me, laboratory, replaces }: { me: Owner; laboratory:
   const [drawn, setDrawn] = useState<string | null>(null)
   const [meant, setMeant] = useState(false)
   const [tried, setTried] = useState(false)
-  const [share, setShare] = useState<number | null>(null)
+  const [share, setShare] = useShare()
   const enrol = useEnrolKey(me, laboratory)
   const judgement = judgePassphrase(passphrase)
   const differs = again !== passphrase ? 'This is not the same passphrase as above.' : null

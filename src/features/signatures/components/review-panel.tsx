@@ -5,6 +5,7 @@ import { dateAndTime } from '../../../lib/times.ts'
 import { Checkbox } from '../../../ui/checkbox.tsx'
 import { StateGlyph } from '../../../ui/state-glyph.tsx'
 import { waitingWords } from '../../../ui/waiting-scale.tsx'
+import { filesToSign } from '../entry-files.ts'
 import { calculationQuery } from '../queries.ts'
 import { checksOf, openablesOf, questions, stillToDo, type Openable, type QuestionCode } from '../review-checks.ts'
 import { daysSince, dueDays } from '../waiting.ts'
@@ -53,7 +54,7 @@ export function ReviewPanel({
   const mayWitness = entry.allowed.includes('witness:read')
 
   return (
-    <section className="hs-sheet hs-panel" aria-label="Your review">
+    <section className="hs-sheet hs-panel" id="review" aria-label="Your review">
       <h2>Your review</h2>
       {entry.submittedAt && (
         <p className="hs-quiet mt-0.5">
@@ -95,7 +96,7 @@ function Opening({
       </h3>
       <ul className="hs-checks">
         {openables.map((each) => {
-          const file = sheet.entry.files.find((candidate) => candidate.id === each.id)
+          const file = filesToSign(sheet.entry).find((candidate) => candidate.id === each.id)
           return (
             <li key={each.id}>
               {isOpened(each) ? <StateGlyph state="ok" wordless /> : <StateGlyph state="draft" wordless />}

@@ -9,6 +9,7 @@ import { Message } from '../../../ui/message.tsx'
 import { Progress } from '../../../ui/progress.tsx'
 import { signingTrouble } from '../signing-problems.ts'
 import { useSigning, type Preparation, type SigningSubject } from '../use-signing.ts'
+import { useShare } from '../use-share.ts'
 import { BlocksList } from './blocks-list.tsx'
 import { SignedDigest, WhatIsSigned } from './what-is-signed.tsx'
 
@@ -36,7 +37,7 @@ export function SignatureDialog(props: SignatureDialogProps) {
   const { onClose, subject, number, title, verb, harmless, before, chosen = true, inFull = false } = props
   const [signed, setSigned] = useState<EntrySignature | null>(null)
   const [passphrase, setPassphrase] = useState('')
-  const [share, setShare] = useState<number | null>(null)
+  const [share, setShare] = useShare()
   const form = useRef<HTMLFormElement>(null)
   const { preparation, signing } = useSigning(subject, chosen && signed === null, (signature) => {
     setSigned(signature)

@@ -1,0 +1,181 @@
+import type { Editor } from '@tiptap/react'
+import { useCallback, useEffect, useMemo, useRef, useState } from 'react'
+import type { EntrySummary, Entry } from '../../../server/contract/entries.ts'
+import type { RawFile } from '../../../server/contract/files.ts'
+import type { Notebook } from '../../../server/contract/notebooks.ts'
+import type { Session } from '../../../server/contract/people.ts'
+import type { NormalDocument } from '../../../server/document/index.ts'
+import { EditorPartsProvider } from '../../editor/editor-parts.ts'
+import { insertBlocks } from '../../editor/place.ts'
+import { SheetEditor } from '../../editor/sheet-editor.tsx'
+import { Toolbar } from '../../editor/toolbar.tsx'
+import { InsertCalculation } from '../../features/calculations/insert-calculation.tsx'
+import { useStartCalculations } from '../../features/calculations/mutations.ts'
+import { standardSet } from '../../features/calculations/standard-set.ts'
+import { experimentNames } from '../../features/entries/experiments.ts'
+import { SaveTrouble } from '../../features/entries/save-trouble.tsx'
+import { SealFoot } from '../../features/entries/seal-foot.tsx'
+import { Spine } from '../../features/entries/spine.tsx'
+import { useContentSaver } from '../../features/entries/use-content-saver.ts'
+import { DropZone } from '../../features/files/drop-zone.tsx'
+import { UploadLines } from '../../features/files/upload-lines.tsx'
+import { BeamStrip } from '../../features/runs/beam-strip.tsx'
+import { SignatureList } from '../../features/signatures/index.ts'
+import { sentenceOf } from '../../lib/api-problem.ts'
+import { Button } from '../../ui/button.tsx'
+import { Ground } from '../../ui/ground.tsx'
+import { Message } from '../../ui/message.tsx'
+import { Sheet, SheetBody, SheetRow } from '../../ui/sheet.tsx'
+import { useKeys } from '../../ui/use-keys.ts'
+import { entryPath, notebookPath } from '../paths.ts'
+import { LeaveGuard } from './leave-guard.tsx'
+import { OutsideLink } from './outside-link.tsx'
+import { SheetCrumbs } from './sheet-crumbs.tsx'
+import { SheetHeading } from './sheet-heading.tsx'
+import { SheetMargin } from './sheet-margin.tsx'
+import { StandingMessage } from './standing-message.tsx'
+import { useFollowServer } from './use-follow-server.ts'
+import { useNewAuthor } from './use-new-author.ts'
+import { filesOf } from './use-open-entry.ts'
+import { useSheetParts } from './use-sheet-parts.tsx'
+import { isPicture, useUploads } from './use-uploads.ts'
+import './sheet.css'
+
+interface SheetPageProps {
+  entry: Entry
+  notebook: Notebook
+  entries: EntrySummary[]
+  session: Session
+  content: { document: NormalDocument; etag: string }
+}
+
+/** The sheet: where a run is written down, computed and signed. */
+export function SheetPage({ entry, notebook, entries, session, content }: SheetPageProps) {
+  const editable = entry.allowed.includes('edit')
+  const [editor, setEditor] = useState<Editor | null>(null)
+  const [asking, setAsking] = useState(false)
+  const fileField = useRef<HTMLInputElement>(null)
+  const pictureField = useRef<HTMLInputElement>(null)
+  const text = useCallback(() => (editor ? (editor.getJSON() as NormalDocument) : content.document), [editor, content])
+  const { saver, state } = useContentSaver(entry.id, content.etag, text)
+  const asks = useMemo(
+    () => ({ calculation: () => setAsking(true), picture: () => pictureField.current?.click() }),
+    [],
+  )
+  const { parts, leaving, stay } = useSheetParts(entry, editable, asks)
+  const start = useStartCalculations(entry.id)
+  useFollowServer(entry.id, editor, saver)
+  useEffect(() => () => void saver.leave(), [saver])
+  useNewAuthor(entry, state)
+  useKeys({ e: () => editable && editor?.commands.focus('end') })
+
+  const { list, uploads } = useUploads(entry, placePicture)
+  const addFiles = useCallback((files: File[]) => list.add(files), [list])
+
+  function placePicture(file: RawFile) {
+    if (editor && isPicture(file.name)) insertBlocks(editor, [{ type: 'image', attrs: { fileId: file.id, alt: '', caption: '' } }])
+  }
+
+  function placeCalculations(ids: string[]) {
+    setAsking(false)
+    if (editor) insertBlocks(editor, ids.map((calculationId) => ({ type: 'calculation', attrs: { calculationId } })))
+  }
+
+  function startStandardSet(fileId: string) {
+    const file = filesOf(entry).find((each) => each.id === fileId)
+    if (file) start.mutate(standardSet(file), { onSuccess: (started) => placeCalculations(started.map(({ id }) => id)) })
+  }
+
+  function takeTheirs(document: NormalDocument, etag: string) {
+    editor?.commands.setContent(document, { emitUpdate: false })
+    saver.adopt(etag)
+  }
+
+  function fromField(field: HTMLInputElement) {
+    addFiles([...(field.files ?? [])])
+    field.value = ''
+  }
+
+  return (
+    <EditorPartsProvider value={parts}>
+      <Ground>
+        <SheetCrumbs {...{ entry, notebook, session, state, editable, saver, text }} />
+        <div className="hs-with-spine">
+          <Spine
+            notebook={notebook}
+            notebookPath={notebookPath(notebook.id)}
+            entries={entries}
+            currentId={entry.id}
+            pathOf={entryPath}
+          />
+          <div>
+            <SaveTrouble
+              saver={saver}
+              state={state}
+              document={text}
+              copyName={entry.number.replace('/', '-')}
+              entryId={entry.id}
+              onTakeTheirs={takeTheirs}
+            />
+            <DropZone enabled={editable} onFiles={addFiles}>
+              <Sheet>
+                <SheetHeading {...{ entry, notebook, editable }} />
+                <BeamStrip entry={entry} experimentName={experimentNames[entry.experiment]} />
+                {editable && editor && <Toolbar editor={editor} />}
+                <SheetBody>
+                  <SheetRow
+                    margin={
+                      <>
+                        <SheetMargin {...{ entry, editable }} onStandardSet={editable ? startStandardSet : null} />
+                        {uploads.length > 0 && <UploadLines list={list} uploads={uploads} />}
+                        {editable && (
+                          <div className="hs-attach">
+                            <Button size="small" icon="upload" onClick={() => fileField.current?.click()}>
+                              Attach files
+                            </Button>
+                            <span className="hs-quiet">or drop them anywhere on the sheet</span>
+                          </div>
+                        )}
+                      </>
+                    }
+                  >
+                    <StandingMessage entry={entry} editable={editable} />
+                    {start.isError && <Message kind="fault">{sentenceOf(start.error)}</Message>}
+                    <SheetEditor
+                      initial={content.document}
+                      editable={editable}
+                      label={`Text of ${entry.number}`}
+                      onChange={() => saver.changed()}
+                      onReady={setEditor}
+                    />
+                  </SheetRow>
+                </SheetBody>
+                <SealFoot entry={entry}>
+                  <SignatureList signatures={entry.signatures} />
+                </SealFoot>
+              </Sheet>
+            </DropZone>
+          </div>
+        </div>
+      </Ground>
+      <input ref={fileField} type="file" multiple hidden onChange={(event) => fromField(event.target)} />
+      <input
+        ref={pictureField}
+        type="file"
+        accept="image/png,image/jpeg,image/webp"
+        hidden
+        onChange={(event) => fromField(event.target)}
+      />
+      {asking && (
+        <InsertCalculation
+          entryId={entry.id}
+          files={filesOf(entry)}
+          onStarted={placeCalculations}
+          onClose={() => setAsking(false)}
+        />
+      )}
+      <OutsideLink href={leaving} onClose={stay} />
+      <LeaveGuard saver={saver} />
+    </EditorPartsProvider>
+  )
+}
