@@ -91,7 +91,7 @@ function unsafe(values: Values) {
   if (!values.HALFSILVER_DEMO) return faults
   if (!isLoopback(origin.hostname))
     faults.push({ variable: 'HALFSILVER_DEMO', detail: 'is set, but PUBLIC_ORIGIN is not on loopback; leave it out' })
-  for (const name of ['STORAGE_ENDPOINT', 'OAUTH_AUTHORIZE_URL', 'OAUTH_TOKEN_URL', 'SMTP_URL', 'TSA_URL'] as const)
+  for (const name of ['DATABASE_URL', 'STORAGE_ENDPOINT', 'OAUTH_AUTHORIZE_URL', 'OAUTH_TOKEN_URL', 'SMTP_URL', 'TSA_URL'] as const)
     if (!isLoopback(new URL(values[name]).hostname))
       faults.push({
         variable: 'HALFSILVER_DEMO',

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { fitCorrelation, type FitRequest } from '../../server/physics/fits/fit-correlation.ts'
+import { fitCorrelation } from '../../server/physics/fits/fit-correlation.ts'
+import type { FitRequest } from '../../server/physics/fits/fit-result.ts'
 import { leastSquaresEstimator, poissonEstimator } from '../../server/physics/fits/estimators.ts'
 import { minimise } from '../../server/physics/fits/levenberg-marquardt.ts'
 import { fitModels } from '../../server/physics/fits/models/index.ts'

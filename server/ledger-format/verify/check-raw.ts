@@ -16,7 +16,10 @@ export function checkRawFiles(c: Case, folder: string, record: SignedRecord): vo
         throw new Missing('left out by choice')
       }
       const path = `data/${item.path}`
-      need(path === `${folder}raw/${rawName(file, names)}`, `stored in data/bundle.json as ${item.path}, which is not its name`)
+      need(
+        path === `${folder}raw/${rawName(file, names)}`,
+        `stored in data/bundle.json as ${item.path}, which is not its name`,
+      )
       need(c.call(path), `${path} of data/bundle.json is absent`)
       const { sha256, size } = c.file(path)
       const right =

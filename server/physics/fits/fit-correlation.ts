@@ -8,59 +8,8 @@ import { chiSquaredOf, poissonEstimator } from './estimators.ts'
 import { sigmaOfFwhm } from './gaussian-response.ts'
 import { derivatives, quadraticForm } from './levenberg-marquardt.ts'
 import type { FitModel } from './model.ts'
-import { fitModels, type FitModelName } from './models/index.ts'
-
-export interface FitRequest {
-  model: FitModelName
-  /** Start values by name, in place of those from the data. */
-  start?: Record<string, number> | undefined
-  /** Full width at half maximum of the timing response of the pair, ps. */
-  responseFwhmPs?: number | undefined
-  /** Zero delay, where it is known; free otherwise. */
-  tau0Ps?: number | undefined
-  level: 'fixed' | 'free'
-}
-
-export interface FitResult {
-  model: FitModelName
-  converged: boolean
-  /** Why it did not converge; null where it did. */
-  reason: string | null
-  parameters: Record<string, Quantity>
-  g2Zero?: Quantity
-  g2ZeroCorrected?: Quantity
-  linewidth?: Quantity
-  chi2: number | null
-  dof: number
-  /** Share of the chi2 distribution above chi2; null below five counts a bin, where the distribution does not hold. */
-  pValue: number | null
-  deviance: number | null
-  responseFwhmPs: number
-  level: 'fixed' | 'free'
-  atBound: string[]
-  /** Where an unfinished fit stood; empty where it converged. */
-  stoppedAt: Record<string, number>
-  covariance: { parameters: string[]; matrix: number[][] }
-  /** Fitted g2 (counts for a decay) in each bin, averaged over it and the response, and its u. */
-  values: (number | null)[]
-  valuesU: (number | null)[]
-  /** (n - m)/sqrt(m) of each fitted bin; null for bins that were not fitted. */
-  residuals: (number | null)[]
-}
-
-const REASONS: Record<NonNullable<BoundedOutcome['failure']>, string> = {
-  bound: 'bound',
-  singular: 'the data do not determine all parameters',
-  iterations: 'no minimum was reached',
-  'impossible-start': 'the model is not possible at any of the start values',
-}
-
-/** Bins that are fitted, all bins that are drawn, and which of the latter is the first fitted one. */
-export interface FitData {
-  fitted: CorrelationData
-  all: CorrelationData
-  firstFitted: number
-}
+import { emptyFit, unconverged, type FitData, type FitRequest, type FitResult } from './fit-result.ts'
+import { fitModels } from './models/index.ts'
 
 /** Fits a model to a correlation histogram by Poisson maximum likelihood (definitions.md B3, Fit). */
 export function fitCorrelation(data: FitData, request: FitRequest): FitResult {
@@ -71,7 +20,7 @@ export function fitCorrelation(data: FitData, request: FitRequest): FitResult {
   const problem = { parameters, estimator, model: modelCounts(model, data.fitted, sigma, request.level) }
   const free = parameters.filter((p) => p.fixed !== true).length
   const dof = data.fitted.counts.length - free
-  if (dof < 0) return empty(request, parameters, data, 'fewer bins than free parameters')
+  if (dof < 0) return emptyFit(request, parameters, data, 'fewer bins than free parameters')
   const outcome = fitWithBounds(problem, startsOf(model, data.fitted, parameters, request))
   if (outcome.failure !== null) return unconverged(request, parameters, data, outcome)
   return converged(model, request, parameters, data, sigma, outcome)
@@ -226,44 +175,4 @@ function curveOf(
     ),
   )
   return { values: Array.from(values), u }
-}
-
-function empty(
-  request: FitRequest,
-  parameters: BoundedParameter[],
-  data: FitData,
-  reason: string,
-): FitResult {
-  const none = new Array<null>(data.all.counts.length).fill(null)
-  return {
-    model: request.model,
-    converged: false,
-    reason,
-    parameters: Object.fromEntries(parameters.map((p) => [p.name, quantity(null, null, p.unit)])),
-    chi2: null,
-    dof: data.fitted.counts.length - parameters.filter((p) => p.fixed !== true).length,
-    pValue: null,
-    deviance: null,
-    responseFwhmPs: request.responseFwhmPs ?? 0,
-    level: request.level,
-    atBound: [],
-    stoppedAt: {},
-    covariance: { parameters: [], matrix: [] },
-    values: none,
-    valuesU: none,
-    residuals: none,
-  }
-}
-
-/** Parameters of a fit that did not converge are no result: they stay empty, and where it stopped is told apart. */
-function unconverged(
-  request: FitRequest,
-  parameters: BoundedParameter[],
-  data: FitData,
-  outcome: BoundedOutcome,
-): FitResult {
-  return {
-    ...empty(request, parameters, data, REASONS[outcome.failure!]),
-    stoppedAt: Object.fromEntries(parameters.map((p, j) => [p.name, outcome.values[j]!])),
-  }
 }

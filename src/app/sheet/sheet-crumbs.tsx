@@ -4,6 +4,7 @@ import type { Session } from '../../../server/contract/people.ts'
 import type { ContentSaver, SaveState } from '../../features/entries/content-saver.ts'
 import { glyphOf, sheetNumber } from '../../features/entries/entry-state.ts'
 import { SaveStateLine } from '../../features/entries/save-state.tsx'
+import { ExportEntryButton } from '../../features/exports/index.ts'
 import { LifeActs, SignAct } from '../../features/signatures/index.ts'
 import { Button, ButtonLink, TextLink } from '../../ui/button.tsx'
 import { Crumbs } from '../../ui/ground.tsx'
@@ -47,6 +48,7 @@ export function SheetCrumbs({ entry, notebook, session, state, editable, saver, 
       acts={
         <>
           <LifeActs entry={entry} me={me} />
+          {entry.allowed.includes('export') && <ExportEntryButton entry={entry} />}
           {entry.allowed.includes('witness:read') && (
             <ButtonLink kind="primary" icon="eye" to={reviewPath(entry.id)}>
               Read as witness

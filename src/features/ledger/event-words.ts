@@ -14,10 +14,9 @@ const words: Record<string, string> = {
   'entry.run-filed': 'Run filed',
   'file.stored': 'File stored',
   'file.mismatch': 'File does not match',
-  'file.missing': 'File missing',
   'reading.set': 'Reading set',
   'calculation.finished': 'Calculated',
-  'calculation.failed': 'Calculation failed',
+  'calculation.cancelled': 'Calculation stopped',
   'entry.sealed': 'Sealed',
   'entry.reopened': 'Reopened',
   'entry.returned': 'Returned',
@@ -33,6 +32,9 @@ const words: Record<string, string> = {
   'notebook.member-removed': 'Member removed',
   'person.added': 'Person added',
   'person.signed-in': 'Signed in',
+  'person.signed-out': 'Signed out',
+  'token.created': 'Token made',
+  'token.ended': 'Token ended',
   'signing.unlocked': 'Key unlocked',
   'signing.refused': 'Passphrase refused',
   'signing.locked': 'Signing locked',
@@ -80,5 +82,6 @@ export const eventFilters = [
   { value: 'returned', label: 'Returns', action: 'entry.returned' },
   { value: 'amended', label: 'Amendments', action: 'entry.amended' },
   { value: 'keys', label: 'Keys', action: 'key.certified' },
+  { value: 'exports', label: 'Exports', action: 'entry.exported' },
 ] as const
 export type EventFilterName = (typeof eventFilters)[number]['value']

@@ -1,5 +1,6 @@
 import type { Computed, ComputeTask } from '../../definition.ts'
-import { fitCorrelation, type FitResult } from '../../fits/fit-correlation.ts'
+import { fitCorrelation } from '../../fits/fit-correlation.ts'
+import type { FitResult } from '../../fits/fit-result.ts'
 import { picosecondsJson, quantity } from '../../quantities.ts'
 import { poolPairs, requireInside, type PooledPairs } from '../../record/pooled.ts'
 import { refuse } from '../../refuse.ts'

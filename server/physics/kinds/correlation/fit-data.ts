@@ -1,5 +1,5 @@
 import type { CorrelationData } from '../../fits/correlation-data.ts'
-import type { FitData } from '../../fits/fit-correlation.ts'
+import type { FitData } from '../../fits/fit-result.ts'
 import type { HistogramShape } from './count.ts'
 
 /**
