@@ -1,11 +1,7 @@
 import { closePrinter } from './features/evidence/index.ts'
-import { seedDemo } from './demo/seed-demo.ts'
-import { openLaboratory } from './features/laboratory/index.ts'
-import { addPerson } from './features/people/index.ts'
 import { readConfig, ConfigError } from './platform/config.ts'
 import { openDatabase } from './platform/db/database.ts'
 import { migrate } from './platform/db/migrate.ts'
-import { identityProvider } from './platform/identity/sign-in.ts'
 import { openLog } from './platform/logger.ts'
 import { openServices } from './platform/open-services.ts'
 import type { Services } from './platform/services.ts'
@@ -28,7 +24,9 @@ const commands: Record<string, (given: string[]) => Promise<void>> = {
     await db.close()
     process.stdout.write(`${JSON.stringify({ migrated: done, empty: laboratory === null })}\n`)
   },
+  // Loaded only when asked for: every start migrates, few do more.
   async 'seed-demo'() {
+    const { seedDemo } = await import('./demo/seed-demo.ts')
     await withServices(async (services) => {
       if (!services.config.demo) throw new Error('HALFSILVER_DEMO is not set: the demonstration is loaded only where nothing real is configured.')
       await seedDemo(services, (step) => process.stdout.write(`${step}\n`))
@@ -36,6 +34,9 @@ const commands: Record<string, (given: string[]) => Promise<void>> = {
   },
   async 'open-laboratory'([accountId = '', login = '', name = '', email = '']) {
     if (!/^\d+$/.test(accountId) || !login || !name || !email) throw new Error(usage)
+    const { openLaboratory } = await import('./features/laboratory/index.ts')
+    const { addPerson } = await import('./features/people/index.ts')
+    const { identityProvider } = await import('./platform/identity/sign-in.ts')
     await withServices(async (services) => {
       await openLaboratory(services, { name: services.config.laboratory.name, demo: false })
       await addPerson(services, { login, name, email, provider: identityProvider, providerAccountId: accountId, roles: ['manager'] })

@@ -1,10 +1,10 @@
-import { createHash } from 'node:crypto'
 import { spawn } from 'node:child_process'
 import fs from 'node:fs'
 import os from 'node:os'
 import path from 'node:path'
 import { pathDigest } from './data-folder.mjs'
 import { postgresBinaries } from './cluster.mjs'
+import { digestOf } from './digest.mjs'
 import { pause, startTime } from './processes.mjs'
 import { root } from './root.mjs'
 import { Refusal, say } from './say.mjs'
@@ -60,7 +60,7 @@ function holderLives(file) {
 
 async function installPackages(tell) {
   const stamp = at('node_modules/.halfsilver')
-  const wanted = digestOf([at('package-lock.json')])
+  const wanted = digestOf(['package-lock.json'])
   if (fs.existsSync(stamp) ? fs.readFileSync(stamp, 'utf8') === wanted : installedFits()) {
     fs.writeFileSync(stamp, wanted)
     return
@@ -104,25 +104,15 @@ export function chromium() {
 const sources = ['src', 'public', 'server/contract', 'server/document', 'server/ledger-format', 'index.html', 'package-lock.json', 'tsconfig.json']
 
 async function build(tell) {
-  const configs = ['vite.config.ts', 'vite.checker.config.ts'].map((name) => at(name)).filter((file) => fs.existsSync(file))
-  const wanted = digestOf([...sources.map((name) => at(name)), ...configs])
+  const configs = ['vite.config.ts', 'vite.checker.config.ts']
+  const wanted = digestOf([...sources, ...configs])
   const stamp = at('dist/built-from')
   if (fs.existsSync(stamp) && fs.readFileSync(stamp, 'utf8') === wanted) return
   tell('Building the client')
   const { NODE_ENV: _, ...env } = process.env
   for (const config of configs)
-    await run(process.execPath, [at('node_modules/vite/bin/vite.js'), 'build', '--config', config, '--logLevel', 'warn'], { ...env, NO_COLOR: '1' })
+    await run(process.execPath, [at('node_modules/vite/bin/vite.js'), 'build', '--config', at(config), '--logLevel', 'warn'], { ...env, NO_COLOR: '1' })
   fs.writeFileSync(stamp, wanted)
-}
-
-/** One digest over names and contents of files and folders. */
-function digestOf(places) {
-  const hash = createHash('sha256')
-  for (const place of places.filter((one) => fs.existsSync(one))) {
-    const files = fs.statSync(place).isDirectory() ? fs.readdirSync(place, { recursive: true }).map((name) => path.join(place, name)).sort() : [place]
-    for (const file of files.filter((one) => fs.statSync(one).isFile())) hash.update(path.relative(root, file)).update('\0').update(fs.readFileSync(file))
-  }
-  return hash.digest('hex')
 }
 
 /** Runs a command; its output is shown only when it fails. */

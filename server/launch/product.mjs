@@ -5,6 +5,7 @@ import { createInterface } from 'node:readline'
 import { removeCluster, startCluster } from './cluster.mjs'
 import { isDemo, productEnvironment, standIns, workerEnvironment } from './configuration.mjs'
 import { lockDataFolder, openDataFolder, secretsOf } from './data-folder.mjs'
+import { digestOf } from './digest.mjs'
 import { isFree } from './ports.mjs'
 import { endLeftovers, pause, Processes, readyByMessage } from './processes.mjs'
 import { Refusal } from './say.mjs'
@@ -12,10 +13,11 @@ import { typescript, startStandIns } from './services.mjs'
 
 /**
  * Starts database and stand-ins on a data folder and brings the database up to date.
- * @param given `dataFolder`, `port`, `environment`, `fast` (tests: a database without safety against power cuts), `tell` (line of progress)
+ * @param given `dataFolder`, `port`, `environment`, `fast` (tests: a database without safety against power cuts), `tell`
+ *   (hears each line of progress), `signal` (gives up the start: what runs already is stopped and the start throws)
  * @returns `{ url, env, workerEnv, ports, processes, stop }`
  */
-export async function startServices({ dataFolder: folder, port, environment = process.env, fast = false, tell }) {
+export async function startServices({ dataFolder: folder, port, environment = process.env, fast = false, tell, signal }) {
   const dataFolder = openDataFolder(folder)
   const release = lockDataFolder(dataFolder)
   const processes = new Processes(dataFolder)
@@ -35,8 +37,9 @@ export async function startServices({ dataFolder: folder, port, environment = pr
     ])
     const demo = isDemo(environment)
     const env = productEnvironment({ environment, port, dataFolder, secrets, database, ports, demo })
-    const { empty } = JSON.parse((await command(env, 'migrate')).at(-1))
-    if (empty && demo) await loadDemo(env, dataFolder, tell)
+    signal?.throwIfAborted()
+    await bringUpToDate({ env, dataFolder, clusterFolder: database?.folder, demo, tell, signal })
+    signal?.throwIfAborted()
     return { url: env.PUBLIC_ORIGIN, env, workerEnv: workerEnvironment(env), ports, processes, stop }
   } catch (error) {
     await stop()
@@ -55,6 +58,7 @@ export async function startProduct(given) {
       processes.start('worker', { ...typescript('server/worker.ts'), env: workerEnv, ...shared }),
       processes.start('api', { ...typescript('server/main.ts'), env, ...shared }),
     ])
+    given.signal?.throwIfAborted()
     await untilReady(`http://127.0.0.1:${env.PORT}/readyz`)
     return services
   } catch (error) {
@@ -72,12 +76,22 @@ async function untilReady(url) {
   throw new Error(`The product does not become ready: ${await (await fetch(url)).text()}`)
 }
 
+/** Migrates, and loads the demonstration where it belongs; a private database that had both before is left alone. */
+async function bringUpToDate({ env, dataFolder, clusterFolder, demo, tell, signal }) {
+  const note = clusterFolder && path.join(clusterFolder, 'migrated')
+  const wanted = digestOf(['server/platform/db', 'server/platform/queue/queues.ts'])
+  if (note && fs.existsSync(note) && fs.readFileSync(note, 'utf8') === wanted) return
+  const { empty } = JSON.parse((await command(env, 'migrate', { signal })).at(-1))
+  if (empty && demo) await loadDemo(env, dataFolder, { tell, signal })
+  if (note && !(empty && !demo)) fs.writeFileSync(note, wanted)
+}
+
 const halfDemo = (dataFolder) => path.join(dataFolder, 'demo-loading')
 
-async function loadDemo(env, dataFolder, tell) {
+async function loadDemo(env, dataFolder, { tell, signal }) {
   tell('Loading the demonstration laboratory')
   fs.writeFileSync(halfDemo(dataFolder), '')
-  await command(env, 'seed-demo', tell)
+  await command(env, 'seed-demo', { tell, signal })
   fs.rmSync(halfDemo(dataFolder))
 }
 
@@ -91,13 +105,13 @@ function forgetHalfDemo(dataFolder, tell) {
 }
 
 /** Runs a command of server/cli.ts and answers its lines; `tell` hears each as it comes. */
-function command(env, name, tell = () => undefined) {
+function command(env, name, { tell, signal }) {
   const { command: node, args, cwd } = typescript('server/cli.ts', name)
-  const child = spawn(node, args, { cwd, env, stdio: ['ignore', 'pipe', 'pipe'], detached: true })
+  const child = spawn(node, args, { cwd, env, stdio: ['ignore', 'pipe', 'pipe'], detached: true, signal })
   const lines = []
   createInterface({ input: child.stdout }).on('line', (line) => {
     lines.push(line)
-    tell(`  ${line}`)
+    tell?.(`  ${line}`)
   })
   let complaint = ''
   child.stderr.on('data', (chunk) => {

@@ -9,23 +9,25 @@ await runMain(async () => {
   const { startProduct } = await import('./product.mjs')
   const port = Number(process.env.PORT ?? 4310)
   const dataFolder = path.resolve(root, process.env.HALFSILVER_DATA ?? '.data')
+  const giveUp = new AbortController()
   let product = null
-  let asked = false
+  let stopping = false
   const stop = async () => {
-    if (asked) return
-    asked = true
-    if (!product) return
+    if (stopping) return
+    stopping = true
     say('Stopping')
-    await product.stop()
-    process.exit(0)
+    giveUp.abort()
+    await product?.stop()
+    if (product) process.exit(0)
   }
   process.on('SIGINT', stop)
   process.on('SIGTERM', stop)
   const environment = { ...process.env, NODE_ENV: process.env.NODE_ENV ?? 'production' }
-  product = await startProduct({ dataFolder, port, environment, tell: say })
-  if (asked) {
-    await product.stop()
-    process.exit(0)
+  try {
+    product = await startProduct({ dataFolder, port, environment, tell: say, signal: giveUp.signal })
+  } catch (error) {
+    if (!stopping) throw error
+    return
   }
   say(`Mail goes to http://127.0.0.1:${product.ports.inbox}`)
   say(`Halfsilver is ready at ${product.url}`)

@@ -3,6 +3,7 @@ import { StrictMode } from 'react'
 import { createRoot } from 'react-dom/client'
 import { watchForInput } from '../lib/person-active.ts'
 import '../styles/app.css'
+import './common.css'
 import { App } from './providers.tsx'
 
 watchForInput()

@@ -3,7 +3,7 @@ import { endpoints, type EndpointName } from '../../server/contract/endpoints.ts
 import type { BodyInputOf, ReplyOf } from '../../server/contract/endpoint.ts'
 import { problemFrom, unreachable } from './api-problem.ts'
 import { personActive } from './person-active.ts'
-import { untilSignedIn } from './session-gate.ts'
+import { hadSession, untilSignedIn } from './session-gate.ts'
 import { urlOf, type PathValues, type QueryValues } from './url-of.ts'
 
 type Table = typeof endpoints
@@ -19,7 +19,7 @@ export type CallOptions<N extends EndpointName> = (string extends keyof ParamsFo
     signal?: AbortSignal
     /** Lets the request outlive the page. */
     keepalive?: boolean
-    /** What a 401 does: wait for a sign-in in another window (usual), or throw. */
+    /** When the session ended: wait for a sign-in in another window (usual), or throw. */
     signedOut?: 'wait' | 'throw'
   }
 
@@ -57,9 +57,12 @@ export async function callForBytes<N extends EndpointName>(
 async function fetchEndpoint<N extends EndpointName>(name: N, options: CallOptions<N>): Promise<Response> {
   const response = await send(name, options)
   if (response.ok) return response
-  if (response.status === 401 && options.signedOut !== 'throw') {
-    await untilSignedIn()
-    return fetchEndpoint(name, options)
+  if (response.status === 401 && hadSession()) {
+    const again = untilSignedIn()
+    if (options.signedOut !== 'throw') {
+      await again
+      return fetchEndpoint(name, options)
+    }
   }
   throw problemFrom(response.status, await response.json().catch(() => null))
 }

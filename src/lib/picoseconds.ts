@@ -21,9 +21,9 @@ export function suitableUnit(ps: number): TimeUnit {
   return [...units].reverse().find((each) => Math.abs(ps) >= each.ps)?.unit ?? 'ps'
 }
 
-/** A time with a unit that suits, up to six digits: 600 s, 2 ns, 500 ps. */
+/** A time with a unit that suits, up to four digits: 600 s, 2 ns, 500 ps. */
 export function durationText(ps: number | string): string {
   const value = Number(ps)
   const unit = suitableUnit(value)
-  return `${Number((value / picosecondsIn(unit)).toPrecision(6))} ${unit}`
+  return `${Number((value / picosecondsIn(unit)).toPrecision(4))} ${unit}`
 }

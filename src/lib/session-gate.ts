@@ -8,6 +8,18 @@ type Listener = () => void
 const listeners = new Set<Listener>()
 let waiting: { done: Promise<void>; finish: () => void } | null = null
 
+let known = false
+
+/** Notes that somebody is signed in: from now on a 401 means that the session ended under the person's hands. */
+export function noteSession(): void {
+  known = true
+}
+
+/** Whether a session was there and may have ended; before the first there is nothing on the screen to keep. */
+export function hadSession(): boolean {
+  return known
+}
+
 function tell(): void {
   for (const listener of listeners) listener()
 }

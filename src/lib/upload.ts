@@ -1,7 +1,7 @@
 import { endpoints } from '../../server/contract/endpoints.ts'
 import type { RawFile } from '../../server/contract/files.ts'
 import { problemFrom, unreachable, ApiProblem } from './api-problem.ts'
-import { untilSignedIn } from './session-gate.ts'
+import { hadSession, untilSignedIn } from './session-gate.ts'
 import { urlOf } from './url-of.ts'
 
 export interface UploadProgress {
@@ -21,7 +21,7 @@ export async function upload(name: 'uploadToEntry' | 'uploadToRun', options: Upl
   try {
     return await sendOnce(name, options)
   } catch (error) {
-    if (!(error instanceof ApiProblem) || error.status !== 401) throw error
+    if (!(error instanceof ApiProblem) || error.status !== 401 || !hadSession()) throw error
     await untilSignedIn()
     return upload(name, options)
   }

@@ -1,5 +1,5 @@
 import { Select as BaseSelect } from '@base-ui/react/select'
-import { useEffect, useId, useState, type KeyboardEvent } from 'react'
+import { useId, useState, type KeyboardEvent } from 'react'
 import { FieldError } from './field.tsx'
 import { ChoiceList, type Choice } from './select.tsx'
 
@@ -31,10 +31,13 @@ export function ParameterField({
   const id = useId()
   const [text, setText] = useState(value)
   const [refused, setRefused] = useState<string | null>(null)
-  useEffect(() => {
+  const [seen, setSeen] = useState(value)
+  // A new value from outside replaces what stands in the field.
+  if (seen !== value) {
+    setSeen(value)
     setText(value)
     setRefused(null)
-  }, [value])
+  }
 
   function commit() {
     const trimmed = text.trim()

@@ -2,7 +2,7 @@ import { afterEach, describe, expect, test, vi } from 'vitest'
 import { problemTable } from '../../server/contract/problems.ts'
 import { ApiProblem, mayPass, problemFrom } from '../../src/lib/api-problem.ts'
 import { call, callForAnswer } from '../../src/lib/call.ts'
-import { isWaitingForSignIn, letWaitingGo } from '../../src/lib/session-gate.ts'
+import { isWaitingForSignIn, letWaitingGo, noteSession } from '../../src/lib/session-gate.ts'
 import { urlOf } from '../../src/lib/url-of.ts'
 
 const id = '00000000-0000-4000-8000-00000000000a'
@@ -83,7 +83,14 @@ describe('problems', () => {
     expect([412, 409, 422, 403].map((status) => mayPass(problemFrom(status, null)))).toEqual([false, false, false, false])
   })
 
+  test('before anyone has signed in a 401 is thrown at once', async () => {
+    answers(problem('not-signed-in'))
+    await expect(call('getEntry', { params: { id } })).rejects.toMatchObject({ status: 401 })
+    expect(isWaitingForSignIn()).toBe(false)
+  })
+
   test('a call that meets the end of the session waits for a sign-in and is made again', async () => {
+    noteSession()
     const fetch = answers(problem('not-signed-in'), json(saved))
     const answer = call('putContent', { params: { id }, body: content, ifMatch: '*' })
     await vi.waitFor(() => expect(isWaitingForSignIn()).toBe(true))

@@ -53,11 +53,12 @@ describe('correlation of the reference records (reference/tags/expected.json)', 
     closeTo(result.fit!.linewidth!.value! * tc!.value!, 0.318309886184e12, 1e-11)
   })
 
-  it('a run of 260 000 tags takes well under a second', async () => {
+  it('a run of 260 000 tags takes well under a second of processor time', async () => {
     const record = readReferenceTags('emitter-cw')
-    const began = performance.now()
+    const before = process.cpuUsage()
     await correlation({ a: 1, b: 2, binPs: 500, halfRangePs: 60000 }, record)
-    expect(performance.now() - began).toBeLessThan(1000)
+    const { user, system } = process.cpuUsage(before)
+    expect((user + system) / 1e6).toBeLessThan(1)
   })
 })
 

@@ -40,7 +40,7 @@ export function detectorSheets(): Act[] {
           doc(
             p('Fibres capped, room light off. Bias supplies on for an hour before; stored charge: supplies were switched off and discharged before the caps were changed.'),
             calculation(singles),
-            p('D1: ', quote(singles, '/channels/0/rate'), ' cps. D2: ', quote(singles, '/channels/1/rate'), ' cps. The counts are Poissonian by the index of dispersion.'),
+            p('D1: ', quote(singles, '/channels/0/rate'), '. D2: ', quote(singles, '/channels/1/rate'), '. The counts are Poissonian by the index of dispersion.'),
           ),
         )
         await bench.sign(maren, entry, 'authorship')

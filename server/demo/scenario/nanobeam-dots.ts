@@ -48,7 +48,7 @@ export function nanobeamDots(): Act[] {
           doc(
             p('A known bunched source before the dots: light of one line of the lamp behind the single-mode fibre. Both detectors must show the peak of chaotic light, or the set-up is at fault.'),
             calculation(g2),
-            p('The contrast is ', quote(g2, '/fit/parameters/beta'), ' and the coherence time ', quote(g2, '/fit/parameters/tc'), ' ps, as expected for one polarisation through one spatial mode.'),
+            p('The contrast is ', quote(g2, '/fit/parameters/beta'), ' and the coherence time ', quote(g2, '/fit/parameters/tc'), ', as expected for one polarisation through one spatial mode.'),
           ),
         )
         await bench.sign(maren, entry, 'authorship')
@@ -89,7 +89,7 @@ export function nanobeamDots(): Act[] {
           ],
           apparatus: splitterSetup(apparatus, 'dot31b'),
         })
-        const file = await bench.upload(maren, run, 'splitter-915.csv', continuousRecord(3812, { drivePs: 14_000, lifetimePs: 3600, efficiency: 1.1e-3 }, 0.9))
+        const file = await bench.upload(maren, run, 'splitter-915.csv', continuousRecord(3812, { drivePs: 14_000, lifetimePs: 3600, efficiency: 1.1e-3, leakCps: 2_000 }, 0.9))
         const singles = await bench.compute(maren, splitterSheet, 'singles', file, {})
         await bench.write(
           maren,
@@ -97,7 +97,7 @@ export function nanobeamDots(): Act[] {
           doc(
             p('Ratio of the two arms on the dot’s own line. Singles on D1 and D2 with the filter in place:'),
             calculation(singles),
-            p('D1 counts ', quote(singles, '/channels/0/rate'), ' cps, D2 ', quote(singles, '/channels/1/rate'), ' cps.'),
+            p('D1 counts ', quote(singles, '/channels/0/rate'), ', D2 ', quote(singles, '/channels/1/rate'), '.'),
           ),
         )
         await bench.sign(maren, splitterSheet, 'authorship')
@@ -125,7 +125,7 @@ export function nanobeamDots(): Act[] {
           doc(
             p('Shutter closed, room light off, one minute.'),
             calculation(singles),
-            p('D2 reads ', quote(singles, '/channels/1/rate'), ' cps, a little more than before the cooldown.'),
+            p('D2 reads ', quote(singles, '/channels/1/rate'), ', a little more than before the cooldown.'),
           ),
         )
         await bench.sign(maren, darkSheet, 'authorship')
@@ -161,7 +161,7 @@ export function nanobeamDots(): Act[] {
           ],
           apparatus: splitterSetup(apparatus, 'dot27a'),
         })
-        const file = await bench.upload(teo, run, 'dot-27a-pulsed.csv', pulsedRecord(4107, { lifetimePs: 900, efficiency: 1.1e-3, secondChance: 0.03 }, 1.2))
+        const file = await bench.upload(teo, run, 'dot-27a-pulsed.csv', pulsedRecord(4107, { lifetimePs: 900, efficiency: 4e-3, secondChance: 0.03 }, 1.2))
         const comb = await bench.compute(teo, entry, 'correlation', file, { a: 1, b: 2, binPs: 500, halfRangePs: 60_000 })
         const missing = await bench.compute(teo, entry, 'coincidences', file, { a: 1, b: 4, windowPs: 3000, delayPs: 0, offPeakWindows: 4, offPeakStepPs: 12_500 })
         await bench.write(
@@ -193,7 +193,7 @@ export function nanobeamDots(): Act[] {
           ],
           apparatus: [...splitterSetup(apparatus, 'dot31b'), { id: apparatus.filter, role: 'filter', channel: null }],
         })
-        const file = await bench.upload(maren, run, 'dot-31b-cw.csv', continuousRecord(4231, { drivePs: 11_000, lifetimePs: 3600, efficiency: 1.3e-3 }, 2))
+        const file = await bench.upload(maren, run, 'dot-31b-cw.csv', continuousRecord(4231, { drivePs: 11_000, lifetimePs: 3600, efficiency: 8.4e-3, leakCps: 24_000 }, 1.2))
         const singles = await bench.compute(maren, entry, 'singles', file, {})
         const pairs = await bench.compute(maren, entry, 'coincidences', file, {
           a: 1,
@@ -218,13 +218,13 @@ export function nanobeamDots(): Act[] {
             p('Counts per bin were normalised to the accidental rate ', m("W_1 W_1'\\,\\Delta t"), ' of the same run, so no assumption about the far level enters the plot. The model is a single emitter with lifetime ', m('t_1'), ' folded with the timing response of the pair,'),
             maths('g^{(2)}(\\tau) = 1 - (1 - g_0)\\,e^{-|\\tau|/t_1} \\;\\ast\\; \\mathcal{N}(0, \\sigma)'),
             h(2, 'Rates'),
-            table(['Drive / µW', 'D1 / kcps', 'D2 / kcps', 'Remark'], ['0.20', '11.4', '11.0', 'stable'], ['0.80', '45.2', '43.7', 'chosen'], ['2.40', '78.9', '76.1', 'broadened']),
+            table(['Drive / µW', 'D1 / kcps', 'D2 / kcps', 'Remark'], ['0.20', '83', '80', 'stable'], ['0.80', '304', '295', 'chosen'], ['2.40', '518', '502', 'broadened']),
             p(LASER_CAUTION),
             calculation(singles),
             calculation(pairs),
             h(2, 'Correlation'),
             calculation(g2),
-            p('The fit gives ', m('g^{(2)}(0) ='), ' ', quote(g2, '/fit/g2Zero'), ' with a recovery time of ', quote(g2, '/fit/parameters/t1'), ' ps; the bin at zero delay alone reads ', quote(g2, '/g2Zero'), '. The light comes from one emitter.'),
+            p('The fit gives ', m('g^{(2)}(0) ='), ' ', quote(g2, '/fit/g2Zero'), ' with a recovery time of ', quote(g2, '/fit/parameters/t1'), '; the bin at zero delay alone reads ', quote(g2, '/g2Zero'), '. The light comes from one emitter.'),
           ),
         )
         await bench.write(

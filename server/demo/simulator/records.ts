@@ -1,4 +1,4 @@
-import { detect, split, tagText, type Detector } from './detection.ts'
+import { darkArrivals, detect, split, tagText, type Detector } from './detection.ts'
 import { chaoticLight, drivenEmitter, heraldedPairs, pulsedEmitter } from './light.ts'
 import { seededRandom } from './random.ts'
 
@@ -7,11 +7,16 @@ export const heron: Detector = { channel: 1, jitterFwhmPs: 350, deadTimePs: 45_0
 export const plover: Detector = { channel: 2, jitterFwhmPs: 380, deadTimePs: 45_000, darkCps: 87 }
 export const lapwing: Detector = { channel: 0, jitterFwhmPs: 420, deadTimePs: 45_000, darkCps: 110 }
 
-/** A quantum dot under continuous drive behind a 50 : 50 splitter. */
-export function continuousRecord(seed: number, light: { drivePs: number; lifetimePs: number; efficiency: number }, seconds: number): string {
+/** A quantum dot under continuous drive behind a 50 : 50 splitter, with a steady leak of the drive laser. */
+export function continuousRecord(
+  seed: number,
+  light: { drivePs: number; lifetimePs: number; efficiency: number; leakCps: number },
+  seconds: number,
+): string {
   const random = seededRandom(seed)
   const duration = seconds * 1e12
-  const [a, b] = split(random, drivenEmitter(random, light, duration), 0.508)
+  const photons = [...drivenEmitter(random, light, duration), ...darkArrivals(random, light.leakCps, duration)]
+  const [a, b] = split(random, photons, 0.508)
   return tagText([detect(random, a, heron, duration), detect(random, b, plover, duration)])
 }
 

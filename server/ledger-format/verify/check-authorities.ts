@@ -12,7 +12,7 @@ export function checkOwnAnchors(c: Case): void {
     const anchors = parseCanonical(c.read(dataPath.anchors)) as unknown
     c.anchors = anchors as Case['anchors']
     checkForm(anchorsForm, anchors)
-    need(anchors.laboratory === c.bundle.laboratory, 'another laboratory')
+    need(anchors.laboratory === c.bundle.laboratory, 'another laboratory than data/bundle.json names')
     const sorted = [...new Set(anchors.tsaRootsSha256)].sort()
     need(
       sorted.join() === anchors.tsaRootsSha256.join() && anchors.ledgerKeysSha256.length > 0,

@@ -79,7 +79,7 @@ export function checkHead(c: Case): void {
     need(head.laboratory === c.bundle.laboratory, 'another laboratory')
     const { treeSize, rootHash, keySha256, previous } = head
     const named = canonicalBytes({ treeSize, rootHash, keySha256 })
-    need(sameBytes(named, canonicalBytes(c.bundle.head)), 'bundle.json names another head')
+    need(sameBytes(named, canonicalBytes(c.bundle.head)), 'data/bundle.json names another head')
     const repeats = previous?.treeSize === treeSize && previous.rootHash === rootHash
     need(!previous || previous.treeSize < treeSize || repeats, 'previous head is newer')
   })

@@ -36,6 +36,10 @@ export function signInRoutes(services: Services, { onSignIn }: SignInEvents): Ro
       done(null, { accountId: String(profile.id), login: profile.username ?? '' }),
   )
 
+  // passport keeps a request's outcome on the strategy it is given: one object for all would hand a person's sign-in to
+  // whoever signs in at the same moment.
+  const forOneRequest = () => Object.create(strategy) as Strategy
+
   async function finish(req: Request, res: Response, account: { accountId: string; login: string }) {
     const person = await db.row<{ id: string; active: boolean }>(
       'select id, active from work.people where provider = :provider and provider_account_id = :id',
@@ -60,14 +64,14 @@ export function signInRoutes(services: Services, { onSignIn }: SignInEvents): Ro
   const router = Router()
   router.get('/github', (req, res, next) => {
     req.session.returnTo = returnPath(req.query.returnTo, config.origin)
-    passport.authenticate(strategy, { session: false })(req, res, next)
+    passport.authenticate(forOneRequest(), { session: false })(req, res, next)
   })
   router.get('/github/callback', (req, res, next) => {
     const finished = (error: unknown, account: unknown, info: unknown) => {
       if (error || !account) return refuse(res, 'not-completed', error ?? (info as { message?: string } | undefined)?.message)
       finish(req, res, account as { accountId: string; login: string }).catch(next)
     }
-    passport.authenticate(strategy, { session: false }, finished)(req, res, next)
+    passport.authenticate(forOneRequest(), { session: false }, finished)(req, res, next)
   })
   return router
 }

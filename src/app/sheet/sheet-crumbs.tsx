@@ -54,16 +54,15 @@ export function SheetCrumbs({ entry, notebook, session, state, editable, saver, 
               Read as witness
             </ButtonLink>
           )}
-          {entry.allowed.includes('sign:authorship') &&
-            (unsafe ? (
-              <Button icon="pen" disabledReason="The text is not saved.">
-                Sign and submit
-              </Button>
-            ) : (
-              <SignAct
-                sheet={{ entry, me, laboratoryId: session.laboratory.id, shownContent: text, save: () => saver.flush() }}
-              />
-            ))}
+          {unsafe && entry.allowed.includes('sign:authorship') ? (
+            <Button icon="pen" disabledReason="The text is not saved.">
+              Sign and submit
+            </Button>
+          ) : (
+            <SignAct
+              sheet={{ entry, me, laboratoryId: session.laboratory.id, shownContent: text, save: () => saver.flush() }}
+            />
+          )}
         </>
       }
     />

@@ -2,7 +2,7 @@ import type { FigureText } from '../../../server/contract/calculations.ts'
 import { BlockResult } from '../../ui/block.tsx'
 import { KeyResult, OtherResult } from '../../ui/quantity.tsx'
 import { Symbol } from '../../ui/symbol.tsx'
-import { symbolOf } from './figure-label.ts'
+import { labelParts } from './figure-label.ts'
 
 /** The figures a calculation reports, the first one large. */
 export function KeyResults({ figures, stale }: { figures: FigureText[]; stale: boolean }) {
@@ -18,13 +18,14 @@ export function KeyResults({ figures, stale }: { figures: FigureText[]; stale: b
   )
 }
 
-/** A symbol in its own setting, or words; `equals` puts = after a symbol. */
+/** A symbol in its own setting, then words; `equals` puts = after it where a symbol stands. */
 export function FigureName({ label, equals = false }: { label: string; equals?: boolean }) {
-  const symbol = symbolOf(label)
+  const { symbol, words } = labelParts(label)
   if (symbol === null) return <>{label}</>
   return (
     <>
       <Symbol>{symbol}</Symbol>
+      {words && <span className="hs-figure-words">{words}</span>}
       {equals && ' ='}
     </>
   )

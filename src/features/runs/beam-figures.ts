@@ -37,7 +37,11 @@ export function beamNodes(entry: Entry, run: Run | undefined, variant: BeamVaria
   const latest = (label: RegExp) => figures.findLast((figure) => label.test(figure.label))
   const channels = channelsIn(figures)
   const slots: NodeId[] = variant === 'her' ? ['herald', 'detector-1', 'detector-2'] : ['detector-1', 'detector-2']
-  const nodes: BeamNodes = { source: sourceNode(run) }
+  const nodes: BeamNodes = { source: pieceNode(run, 'source', 'Source') ?? { label: 'Source' } }
+  const filter = pieceNode(run, 'filter', 'Filter')
+  const splitter = pieceNode(run, 'splitter', 'Splitter')
+  if (filter) nodes.filter = filter
+  if (splitter) nodes.splitter = splitter
   slots.forEach((slot, at) => {
     const channel = channels[at]
     const rate = channel === undefined ? undefined : latest(rateOf(channel))
@@ -56,9 +60,12 @@ function channelsIn(figures: FigureText[]): number[] {
   return [...new Set(found.map(Number))].sort((one, two) => one - two)
 }
 
-function sourceNode(run: Run | undefined): BeamNode {
-  const source = run?.apparatus.find((piece) => piece.kind === 'source')
-  return { label: source ? `Source ${source.name}` : 'Source' }
+/** A piece of the run's equipment with the first of its figures; null when the run names none. */
+function pieceNode(run: Run | undefined, kind: string, word: string): BeamNode | null {
+  const piece = run?.apparatus.find((each) => each.kind === kind)
+  if (!piece) return null
+  const figure = piece.figures[0]
+  return { label: `${word} ${piece.name}`, ...withFigure(figure && { ...figure, pointer: '', label: figure.name }) }
 }
 
 function detectorName(run: Run | undefined, channel: number | undefined): string | undefined {

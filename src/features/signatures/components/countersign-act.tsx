@@ -1,13 +1,17 @@
 import { useState } from 'react'
-import type { EntrySignature, Meaning } from '../../../../server/contract/signatures.ts'
+import type { Entry } from '../../../../server/contract/entries.ts'
+import type { EntrySignature } from '../../../../server/contract/signatures.ts'
 import { Button } from '../../../ui/button.tsx'
 import { stampWords } from '../meaning-words.ts'
 import type { Presence } from '../signing.ts'
-import { MeaningChoice } from './meaning-choice.tsx'
+import { MeaningChoice, type WitnessMeaning } from './meaning-choice.tsx'
 import type { SheetOnScreen } from './sign-act.tsx'
 import { SignatureDialog } from './signature-dialog.tsx'
 
-/** The witness's act: first what the signature is to mean, then the statement and the passphrase. */
+/**
+ * The witness's act, where it is open to the person: what the signature is to mean, then the statement and the passphrase.
+ * To be kept on the page: its result outlives the right to sign.
+ */
 export function CountersignAct({
   sheet,
   zone,
@@ -19,41 +23,48 @@ export function CountersignAct({
   disabledReason: string | null
   onSigned: (signature: EntrySignature) => void
 }) {
-  const [open, setOpen] = useState(false)
-  const [meaning, setMeaning] = useState<Extract<Meaning, `witness-${string}`>>('witness-read')
+  // The entry as it was when the dialog opened; the act itself changes what the page has.
+  const [begun, setBegun] = useState<Entry | null>(null)
+  const [meaning, setMeaning] = useState<WitnessMeaning>('witness-read')
   const [presence, setPresence] = useState<Presence | null>(null)
   const { entry } = sheet
-  const seals = entry.witnesses.given + 1 >= entry.witnesses.required
+  const present = meaning === 'witness-present'
   return (
     <>
-      <Button kind="primary" disabledReason={disabledReason} onClick={() => setOpen(true)}>
-        Countersign
-      </Button>
-      {open && (
+      {entry.allowed.includes('witness:read') && (
+        <Button kind="primary" disabledReason={disabledReason} onClick={() => setBegun(entry)}>
+          Countersign
+        </Button>
+      )}
+      {begun && (
         <SignatureDialog
           key={meaning}
-          onClose={() => setOpen(false)}
-          subject={{ ...sheet, entryId: entry.id, meaning, presence: meaning === 'witness-present' ? (presence ?? undefined) : undefined }}
+          onClose={() => setBegun(null)}
+          subject={{ ...sheet, entryId: entry.id, meaning, presence: present ? (presence ?? undefined) : undefined }}
           number={entry.number}
           title={entry.title}
           verb="Countersign"
           harmless="Keep reading"
           before={
-            <MeaningChoice entry={entry} zone={zone} meaning={meaning} onMeaning={setMeaning} presence={presence} onPresence={setPresence} />
+            <MeaningChoice entry={begun} zone={zone} meaning={meaning} onMeaning={setMeaning} presence={presence} onPresence={setPresence} />
           }
-          chosen={meaning === 'witness-read' || presence !== null}
+          chosen={!present || presence !== null}
           onSigned={onSigned}
-          done={(signature) => (
-            <>
-              <b>Countersigned.</b>{' '}
-              {seals
-                ? 'The sheet is sealed in the ledger; nothing in it can change afterwards.'
-                : `${entry.witnesses.required - entry.witnesses.given - 1} more must countersign before it is sealed.`}{' '}
-              It is {stampWords(signature.timeStamp)}.
-            </>
-          )}
+          done={(signature) => <Countersigned signature={signature} more={begun.witnesses.required - begun.witnesses.given - 1} />}
         />
       )}
+    </>
+  )
+}
+
+function Countersigned({ signature, more }: { signature: EntrySignature; more: number }) {
+  return (
+    <>
+      <b>Countersigned.</b>{' '}
+      {more <= 0
+        ? 'The sheet is sealed in the ledger; nothing in it can change afterwards.'
+        : `${more} more must countersign before it is sealed.`}{' '}
+      It is {stampWords(signature.timeStamp)}.
     </>
   )
 }

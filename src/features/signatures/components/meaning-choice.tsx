@@ -9,7 +9,7 @@ import { endOfRun, presenceTrouble } from '../presence.ts'
 import type { Presence } from '../signing.ts'
 import { utcOfZoned, zonedOfUtc } from '../zoned-time.ts'
 
-type WitnessMeaning = 'witness-read' | 'witness-present'
+export type WitnessMeaning = 'witness-read' | 'witness-present'
 type Run = Entry['runs'][number]
 
 /** What the witness's signature is to say. The two meanings are shown and printed apart, and never merged. */

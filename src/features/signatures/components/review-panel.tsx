@@ -67,7 +67,7 @@ export function ReviewPanel({
       {mayWitness && <Questions answered={answered} onAnswered={setAnswered} />}
       <div className="hs-actions mt-5">
         {entry.allowed.includes('return') && <ReturnAct entry={entry} onReturned={onReturned} />}
-        {mayWitness && <CountersignAct sheet={sheet} zone={zone} disabledReason={reason} onSigned={onSigned} />}
+        <CountersignAct sheet={sheet} zone={zone} disabledReason={reason} onSigned={onSigned} />
       </div>
       {!mayWitness && <CannotWitness sheet={sheet} />}
     </section>

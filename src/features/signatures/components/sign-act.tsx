@@ -15,21 +15,25 @@ export interface SheetOnScreen {
   save?: () => Promise<void>
 }
 
-/** The author's act. With one author left it submits the sheet to the witness, else the others sign after this. */
+/**
+ * The author's act, where it is open to the person. With one author left it submits the sheet to the witness, else the
+ * others sign after this. To be kept on the page: its result outlives the right to sign.
+ */
 export function SignAct({ sheet, onSigned }: { sheet: SheetOnScreen; onSigned?: (signature: EntrySignature) => void }) {
-  const [open, setOpen] = useState(false)
+  // The entry as it was when the dialog opened; the act itself changes what the page has.
+  const [begun, setBegun] = useState<Entry | null>(null)
   const { entry, me } = sheet
-  const others = entry.authors.filter((author) => !author.signed && author.personId !== me.id)
-  const last = others.length === 0
-  const verb = last ? 'Sign and submit' : 'Sign'
+  const { verb, others } = authorshipOf(begun ?? entry, me.id)
   return (
     <>
-      <Button kind="primary" icon="pen" onClick={() => setOpen(true)}>
-        {verb}
-      </Button>
-      {open && (
+      {entry.allowed.includes('sign:authorship') && (
+        <Button kind="primary" icon="pen" onClick={() => setBegun(entry)}>
+          {verb}
+        </Button>
+      )}
+      {begun && (
         <SignatureDialog
-          onClose={() => setOpen(false)}
+          onClose={() => setBegun(null)}
           subject={{ ...sheet, entryId: entry.id, meaning: 'authorship' }}
           number={entry.number}
           title={entry.title}
@@ -37,17 +41,27 @@ export function SignAct({ sheet, onSigned }: { sheet: SheetOnScreen; onSigned?: 
           harmless="Keep writing"
           inFull
           onSigned={(signature) => onSigned?.(signature)}
-          done={(signature) => (
-            <>
-              <b>{last ? 'Signed and submitted.' : 'Signed.'}</b>{' '}
-              {last
-                ? 'The sheet waits for a witness; its text can change only after a return or a recall.'
-                : `${others.map((author) => author.name).join(' and ')} must sign too before it goes to the witness.`}{' '}
-              It is {stampWords(signature.timeStamp)}.
-            </>
-          )}
+          done={(signature) => <Signed signature={signature} others={others} />}
         />
       )}
+    </>
+  )
+}
+
+/** Who must sign after me, and what the act is called accordingly. */
+function authorshipOf(entry: Entry, myId: string) {
+  const others = entry.authors.filter((author) => !author.signed && author.personId !== myId).map((author) => author.name)
+  return { others, verb: others.length === 0 ? 'Sign and submit' : 'Sign' }
+}
+
+function Signed({ signature, others }: { signature: EntrySignature; others: string[] }) {
+  return (
+    <>
+      <b>{others.length === 0 ? 'Signed and submitted.' : 'Signed.'}</b>{' '}
+      {others.length === 0
+        ? 'The sheet waits for a witness; its text can change only after a return or a recall.'
+        : `${others.join(' and ')} must sign too before it goes to the witness.`}{' '}
+      It is {stampWords(signature.timeStamp)}.
     </>
   )
 }

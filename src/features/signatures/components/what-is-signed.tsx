@@ -16,7 +16,10 @@ export function SignedDigest({ record }: { record: SignedRecord }) {
           You sign exactly this sheet: <span className="hs-fig">{record.entry.number}</span>, revision{' '}
           <span className="hs-fig">{record.entry.revision}</span>
         </p>
-        <p className="hs-fig hs-digest-full mt-1 leading-relaxed">{groupedDigest(record.bodySha256)}</p>
+        <p className="hs-fig hs-digest-full mt-1 leading-relaxed">
+          <span className="block">{groupedDigest(record.bodySha256.slice(0, 32))}</span>{' '}
+          <span className="block">{groupedDigest(record.bodySha256.slice(32))}</span>
+        </p>
       </div>
     </div>
   )
