@@ -2,7 +2,7 @@ import { Inflate } from 'fflate'
 import { sameBytes } from '../bytes.ts'
 import { pureDigester, type Digester } from '../digest.ts'
 import { Crc32 } from './crc32.ts'
-import { need, Report, Wrong } from './report.ts'
+import { need, type Report, Wrong } from './report.ts'
 import {
   checkEntry,
   Fields,
