@@ -59,7 +59,9 @@ export async function createTimeStampAuthority(given: {
       if (!request) return refusal('badDataFormat: the request is not a TimeStampReq over SHA-256')
       const info = timeStampInfo(request, given.clock.now())
       const content = await sign(info, signer, request.certReq === true)
-      return der(new pkijs.TimeStampResp({ status: new pkijs.PKIStatusInfo({ status: 0 }), timeStampToken: content }))
+      return der(
+        new pkijs.TimeStampResp({ status: new pkijs.PKIStatusInfo({ status: 0 }), timeStampToken: content }),
+      )
     },
   }
 }
@@ -118,10 +120,14 @@ async function makeKeys(folder: string, now: Date): Promise<void> {
   const pkcs8 = Buffer.from(await webcrypto.subtle.exportKey('pkcs8', signerKeys.privateKey))
   writeFileSync(path.join(folder, 'tsa-signer.key'), pkcs8, { mode: 0o600 })
   writeFileSync(path.join(folder, 'tsa-signer.der'), Buffer.from(certificate.rawData))
-  writeFileSync(path.join(folder, 'tsa-chain.pem'), `${root.toString('pem')}\n${certificate.toString('pem')}\n`)
+  writeFileSync(
+    path.join(folder, 'tsa-chain.pem'),
+    `${root.toString('pem')}\n${certificate.toString('pem')}\n`,
+  )
 }
 
-const newKeys = () => webcrypto.subtle.generateKey(algorithm, true, ['sign', 'verify']) as Promise<CryptoKeyPair>
+const newKeys = () =>
+  webcrypto.subtle.generateKey(algorithm, true, ['sign', 'verify']) as Promise<CryptoKeyPair>
 // First bit clear: a serial number is positive.
 const serial = () => Buffer.concat([Buffer.of(0x4a), randomBytes(15)]).toString('hex')
 
@@ -136,7 +142,9 @@ function readRequest(requestDer: Uint8Array): pkijs.TimeStampReq | null {
   try {
     const request = pkijs.TimeStampReq.fromBER(toBuffer(requestDer))
     const { hashAlgorithm, hashedMessage } = request.messageImprint
-    return hashAlgorithm.algorithmId === oids.sha256 && hashedMessage.valueBlock.valueHexView.length === 32 ? request : null
+    return hashAlgorithm.algorithmId === oids.sha256 && hashedMessage.valueBlock.valueHexView.length === 32
+      ? request
+      : null
   } catch {
     return null
   }
@@ -170,18 +178,25 @@ async function sign(info: Uint8Array, signer: Signer, withCertificate: boolean):
           issuer: signer.certificate.issuer,
           serialNumber: signer.certificate.serialNumber,
         }),
-        signedAttrs: new pkijs.SignedAndUnsignedAttributes({ type: 0, attributes: signedAttributes(info, signer.der) }),
+        signedAttrs: new pkijs.SignedAndUnsignedAttributes({
+          type: 0,
+          attributes: signedAttributes(info, signer.der),
+        }),
       }),
     ],
     ...(withCertificate ? { certificates: [signer.certificate] } : {}),
   })
   await signedData.sign(signer.key, 0, 'SHA-256')
-  return new pkijs.ContentInfo({ contentType: pkijs.ContentInfo.SIGNED_DATA, content: signedData.toSchema(true) })
+  return new pkijs.ContentInfo({
+    contentType: pkijs.ContentInfo.SIGNED_DATA,
+    content: signedData.toSchema(true),
+  })
 }
 
 /** Content type, digest of the content, and the digest that ties the signer's certificate to it (RFC 5816). */
 function signedAttributes(info: Uint8Array, certificate: Uint8Array): pkijs.Attribute[] {
-  const digestOf = (bytes: Uint8Array) => new asn1js.OctetString({ valueHex: toBuffer(createHash('sha256').update(bytes).digest()) })
+  const digestOf = (bytes: Uint8Array) =>
+    new asn1js.OctetString({ valueHex: toBuffer(createHash('sha256').update(bytes).digest()) })
   const essCertificate = new asn1js.Sequence({ value: [digestOf(certificate)] })
   const attributes = [
     attribute(oids.contentType, new asn1js.ObjectIdentifier({ value: oids.tstInfo })),
@@ -198,7 +213,10 @@ function signedAttributes(info: Uint8Array, certificate: Uint8Array): pkijs.Attr
 const attribute = (type: string, value: asn1js.AsnType) => new pkijs.Attribute({ type, values: [value] })
 
 function refusal(words: string): Uint8Array {
-  const status = new pkijs.PKIStatusInfo({ status: 2, statusStrings: [new asn1js.Utf8String({ value: words })] })
+  const status = new pkijs.PKIStatusInfo({
+    status: 2,
+    statusStrings: [new asn1js.Utf8String({ value: words })],
+  })
   return der(new pkijs.TimeStampResp({ status }))
 }
 

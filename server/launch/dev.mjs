@@ -4,6 +4,8 @@ import { prepare } from './prepare.mjs'
 import { root } from './root.mjs'
 import { runMain, say } from './say.mjs'
 
+const loader = new URL('./typescript.mjs', import.meta.url).href
+
 /**
  * `npm run dev`: the services of `npm start`, the API and the worker restarted when their files change, and the Vite server
  * with hot reload in front (PORT, default 4310), which hands calls on to the API.
@@ -17,7 +19,7 @@ await runMain(async () => {
   const apiPort = await freePort()
   // The product's address is the page's, the API listens elsewhere.
   const api = { ...env, PORT: String(apiPort) }
-  const watched = (file, own) => run(process.execPath, [path.join(root, 'node_modules/tsx/dist/cli.mjs'), 'watch', '--clear-screen=false', file], own)
+  const watched = (file, own) => run(process.execPath, [path.join(root, 'node_modules/tsx/dist/cli.mjs'), 'watch', '--clear-screen=false', '--import', loader, file], own)
   const vite = [path.join(root, 'node_modules/vite/bin/vite.js'), '--port', String(port), '--strictPort']
   const children = [
     watched('server/main.ts', api),

@@ -61,7 +61,8 @@ function holderLives(file) {
 async function installPackages(tell) {
   const stamp = at('node_modules/.halfsilver')
   const wanted = digestOf(['package-lock.json'])
-  if (fs.existsSync(stamp) ? fs.readFileSync(stamp, 'utf8') === wanted : installedFits()) {
+  if (fs.existsSync(stamp) && fs.readFileSync(stamp, 'utf8') === wanted) return
+  if (!fs.existsSync(stamp) && installedFits()) {
     fs.writeFileSync(stamp, wanted)
     return
   }

@@ -19,7 +19,7 @@ export class Processes {
 
   constructor(dataFolder) {
     this.#folder = dataFolder
-    fs.mkdirSync(path.join(dataFolder, 'logs'), { recursive: true })
+    fs.mkdirSync(path.join(dataFolder, 'logs'), { recursive: true, mode: 0o700 })
   }
 
   /**

@@ -27,7 +27,7 @@ export async function startStandIns(processes, { environment, dataFolder, secret
 
 function startStorage(processes, { environment, dataFolder, secrets, port, onDeath }) {
   const folder = path.join(dataFolder, 'objects')
-  fs.mkdirSync(folder, { recursive: true })
+  fs.mkdirSync(folder, { recursive: true, mode: 0o700 })
   return processes.start('storage', {
     ...typescript('storage-fake/main.ts'),
     env: {
@@ -45,7 +45,7 @@ function startStorage(processes, { environment, dataFolder, secrets, port, onDea
 
 function startFakes(processes, { environment, dataFolder, secrets, fakes, ports, onDeath }) {
   const folder = path.join(dataFolder, 'fakes')
-  fs.mkdirSync(path.join(folder, 'stamps'), { recursive: true })
+  fs.mkdirSync(path.join(folder, 'stamps'), { recursive: true, mode: 0o700 })
   return processes.start('fakes', {
     ...typescript('server/fakes/main.ts'),
     env: {

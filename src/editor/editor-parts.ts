@@ -14,7 +14,8 @@ export interface QuotableFigure {
 
 /** What the editor shows and asks for but does not fetch itself; the page gives it. */
 export interface EditorParts {
-  calculation(calculationId: string, placeActs: ReactNode): ReactNode
+  /** A block; `succeed` puts the calculation that takes its place into the text. */
+  calculation(calculationId: string, placeActs: ReactNode, succeed: (successorId: string) => void): ReactNode
   quote(calculationId: string, pointer: string): ReactNode
   imageAddress(fileId: string): string
   figures: QuotableFigure[]

@@ -40,6 +40,18 @@ function siblingOf(parent: Node, index: number, by: -1 | 1): Node | null {
   return parent.maybeChild(index + by)
 }
 
+/**
+ * Puts a successor in the place of a calculation: in its block and in every figure quoted from it. One edit, so that one
+ * undo takes the curve and the figures back together.
+ */
+export function succeedCalculation(state: EditorState, calculationId: string, successorId: string): Transaction {
+  const transaction = state.tr
+  state.doc.descendants((node, pos) => {
+    if (node.attrs.calculationId === calculationId) transaction.setNodeAttribute(pos, 'calculationId', successorId)
+  })
+  return transaction
+}
+
 /** A press under the last block goes on there: with the cursor in it when it is text, else in a new line. */
 export function continueAtEnd(editor: Editor): void {
   const { doc, schema, tr } = editor.state

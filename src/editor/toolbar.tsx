@@ -23,14 +23,14 @@ export function Toolbar({ editor }: { editor: Editor }) {
         keys="Ctrl ,"
         on={now.subscript}
         run={() => run().toggleMark('subscript').run()}
-        text={<>x{<sub>2</sub>}</>}
+        text={<span>x<sub>2</sub></span>}
       />
       <Tool
         label="Raised"
         keys="Ctrl ."
         on={now.superscript}
         run={() => run().toggleMark('superscript').run()}
-        text={<>x{<sup>2</sup>}</>}
+        text={<span>x<sup>2</sup></span>}
       />
       <Tool label="Link" on={now.link} run={() => setLinking(true)} icon="link" />
       <Gap />

@@ -54,9 +54,11 @@ interface MenuListProps {
 function MenuList({ editor, trigger, items, chosen, onTake }: MenuListProps) {
   const id = useId()
   const current = useRef<HTMLLIElement>(null)
-  useEffect(() => current.current?.scrollIntoView({ block: 'nearest' }), [chosen])
+  useEffect(() => {
+    current.current?.scrollIntoView({ block: 'nearest' })
+  }, [chosen])
   const at = editor.view.coordsAtPos(trigger.from)
-  const below = at.bottom + 300 < window.innerHeight
+  const below = at.bottom + Math.min(290, 16 + 46 * items.length) < window.innerHeight
   const style = {
     left: Math.min(at.left, window.innerWidth - 340),
     ...(below ? { top: at.bottom + 6 } : { bottom: window.innerHeight - at.top + 6 }),

@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest'
 import type { Run } from '../../server/contract/runs.ts'
-import { presenceTrouble } from '../../src/features/signatures/presence.ts'
+import { presenceTrouble, spanOfRun } from '../../src/features/signatures/presence.ts'
 import { deskSentence, daysSince } from '../../src/features/signatures/waiting.ts'
 import { utcOfZoned, zonedOfUtc } from '../../src/features/signatures/zoned-time.ts'
 
@@ -51,5 +51,14 @@ describe('the desk in one sentence', () => {
   })
   test('a clock ahead of ours waits no negative time', () => {
     expect(daysSince(days(-1), now)).toBe(0)
+  })
+})
+
+describe('times offered for presence', () => {
+  test('hold the whole run, in whole seconds', () => {
+    const run = { number: 'R-0009', startedAt: '2026-12-01T17:32:25.400Z', durationPs: '1999990000000' } as Run
+    const { from, to } = spanOfRun(run)
+    expect([from, to]).toEqual(['2026-12-01T17:32:25.000Z', '2026-12-01T17:32:28.000Z'])
+    expect(presenceTrouble(run, from, to)).toBeNull()
   })
 })

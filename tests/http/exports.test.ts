@@ -5,7 +5,16 @@ import type { Json } from '../../server/ledger-format/canonical-json.ts'
 import { verifyBundle, type VerifyReport } from '../../server/ledger-format/verify/index.ts'
 import { askJudge, judgeIsThere } from '../ledger/sample/judge.ts'
 import { signIn, type PersonClient } from '../support/session.ts'
-import { entryOf, newEntry, notebookOf, paragraph, sign, signerOf, write, type Signer } from './signing-people.ts'
+import {
+  entryOf,
+  newEntry,
+  notebookOf,
+  paragraph,
+  sign,
+  signerOf,
+  write,
+  type Signer,
+} from './signing-people.ts'
 
 // Bundles: shapes 2. The product's own verification reads each; the judge beside the checkout does too where it is there.
 
@@ -13,7 +22,12 @@ let maren: Signer, farid: Signer, noor: PersonClient, bram: PersonClient
 let notebook: string, sealed: string, draft: string
 beforeAll(async () => {
   const url = inject('url')
-  ;[maren, farid, noor, bram] = await Promise.all([signerOf(url, 'maren'), signerOf(url, 'farid'), signIn(url, 'noor'), signIn(url, 'bram')])
+  ;[maren, farid, noor, bram] = await Promise.all([
+    signerOf(url, 'maren'),
+    signerOf(url, 'farid'),
+    signIn(url, 'noor'),
+    signIn(url, 'bram'),
+  ])
   notebook = await notebookOf(maren.client, 'To be exported', { farid: 'supervisor', noor: 'auditor' })
   sealed = await newEntry(maren.client, notebook, 'Sealed with a file')
   const form = new FormData()
@@ -28,7 +42,10 @@ beforeAll(async () => {
 })
 
 async function written(id: string): Promise<void> {
-  await write(maren.client, id, paragraph('What was seen.'), { type: 'mathBlock', attrs: { latex: 'g^{(2)}(0) < \\tfrac{1}{2}' } })
+  await write(maren.client, id, paragraph('What was seen.'), {
+    type: 'mathBlock',
+    attrs: { latex: 'g^{(2)}(0) < \\tfrac{1}{2}' },
+  })
   for (let i = 0; i < 100 && (await entryOf(maren.client, id)).blocks.length > 0; i++) await pause(100)
 }
 
@@ -37,11 +54,18 @@ async function sealOf(id: string): Promise<void> {
   expect(await sign(farid, id, 'witness-read')).toMatchObject({ status: 201 })
 }
 
-async function bundleOf(who: PersonClient, body: object): Promise<{ id: string; zip: Buffer; name: string | null }> {
+async function bundleOf(
+  who: PersonClient,
+  body: object,
+): Promise<{ id: string; zip: Buffer; name: string | null }> {
   const started = await who.call<BundleExport>('POST', 'exports', body)
   expect(started.status, started.bytes.toString()).toBe(202)
   let state = started.json
-  for (const end = Date.now() + 50_000; !['done', 'failed'].includes(state.status) && Date.now() < end; await pause(100))
+  for (
+    const end = Date.now() + 50_000;
+    !['done', 'failed'].includes(state.status) && Date.now() < end;
+    await pause(100)
+  )
     state = await who.ok<BundleExport>('GET', `exports/${state.id}`)
   expect(state).toMatchObject({ status: 'done', error: null })
   const { bytes } = await who.call('GET', `exports/${state.id}/bundle`)
@@ -49,8 +73,12 @@ async function bundleOf(who: PersonClient, body: object): Promise<{ id: string; 
   return { id: state.id, zip: bytes, name: state.name }
 }
 
-const source = (zip: Buffer) => ({ size: zip.length, read: (offset: number, length: number) => new Uint8Array(zip.subarray(offset, offset + length)) })
-const failures = (report: VerifyReport) => report.checks.filter(({ ok }) => ok !== true).map(({ name, path, detail }) => `${name}: ${path}: ${detail}`)
+const source = (zip: Buffer) => ({
+  size: zip.length,
+  read: (offset: number, length: number) => new Uint8Array(zip.subarray(offset, offset + length)),
+})
+const failures = (report: VerifyReport) =>
+  report.checks.filter(({ ok }) => ok !== true).map(({ name, path, detail }) => `${name}: ${path}: ${detail}`)
 
 async function verified(zip: Buffer): Promise<VerifyReport> {
   const anchors = await noor.ok<Json>('GET', 'ledger/anchors')
@@ -73,13 +101,23 @@ test('a bundle asked for right after the seal holds, for us and for the judge; t
 
 test('a byte changed anywhere in it is found', async () => {
   const { zip } = await bundleOf(noor, { entryIds: [sealed] })
-  for (const name of ['record.json', 'record.sig', 'entry.pdf', 'VERIFY.md', 'timestamp.tsr', 'events.jsonl']) {
+  for (const name of [
+    'record.json',
+    'record.sig',
+    'entry.pdf',
+    'VERIFY.md',
+    'timestamp.tsr',
+    'events.jsonl',
+  ]) {
     const forged = Buffer.from(zip)
     const at = forged.indexOf(name) + name.length + 40
     forged[at] = (forged[at] ?? 0) ^ 1
     const report = await verified(forged)
     expect(report.verdict, name).toBe('broken')
-    expect(failures(report).some((line) => line.includes(name)), name).toBe(true)
+    expect(
+      failures(report).some((line) => line.includes(name)),
+      name,
+    ).toBe(true)
   }
 })
 
@@ -98,10 +136,15 @@ test('a notebook is exported whole: every number is in or named as left out, and
   const report = await verified(whole.zip)
   expect(failures(report)).toEqual([])
   expect(whole.name).toMatch(/-N-\d+-\d{4}-\d\d-\d\d$/)
-  const [sealedNumber, draftNumber, addendumNumber] = await Promise.all([sealed, draft, addendum.id].map(async (id) => (await entryOf(noor, id)).number))
+  const [sealedNumber, draftNumber, addendumNumber] = await Promise.all(
+    [sealed, draft, addendum.id].map(async (id) => (await entryOf(noor, id)).number),
+  )
   expect(report.about.entries).toEqual([sealedNumber, addendumNumber])
   expect(whole.zip.toString('latin1')).toContain(`"number":"${draftNumber}","reason":"not-sealed"`)
-  expect((await verified((await bundleOf(noor, { entryIds: [sealed] })).zip)).about.entries).toEqual([sealedNumber, addendumNumber])
+  expect((await verified((await bundleOf(noor, { entryIds: [sealed] })).zip)).about.entries).toEqual([
+    sealedNumber,
+    addendumNumber,
+  ])
   expect((await verified((await bundleOf(noor, { entryIds: [addendum.id] })).zip)).verdict).toBe('holds')
 })
 
@@ -111,7 +154,9 @@ test('only sealed entries, only for members, and a bundle only for who made it',
   expect((await bram.call('POST', 'exports', { notebookId: notebook })).status).toBe(404)
   const { id } = await bundleOf(noor, { entryIds: [sealed] })
   expect((await maren.client.call('GET', `exports/${id}/bundle`)).status).toBe(404)
-  expect((await noor.ok<{ items: { id: string }[] }>('GET', 'exports')).items.map((item) => item.id)).toContain(id)
+  expect(
+    (await noor.ok<{ items: { id: string }[] }>('GET', 'exports')).items.map((item) => item.id),
+  ).toContain(id)
 })
 
 test('the right to export is asked again at the download', async () => {

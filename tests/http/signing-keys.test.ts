@@ -18,7 +18,9 @@ const zeros = (size: number) => toBase64(new Uint8Array(size))
 test('guesses sent at once are counted one after another: five are told wrong, the others find the lock', async () => {
   const proof = zeros(32)
   const answers = await Promise.all(
-    Array.from({ length: 9 }, () => noor.call<{ attemptsLeft?: number; until?: string }>('POST', 'me/signing-key/unlock', { proof })),
+    Array.from({ length: 9 }, () =>
+      noor.call<{ attemptsLeft?: number; until?: string }>('POST', 'me/signing-key/unlock', { proof }),
+    ),
   )
   const wrong = answers.filter(({ status }) => status === 403)
   expect(wrong.map(({ json }) => json.attemptsLeft).sort()).toEqual([0, 1, 2, 3, 4])
@@ -30,20 +32,29 @@ test('guesses sent at once are counted one after another: five are told wrong, t
 
 test('the lock is told by mail and in the ledger, on the person alone', async () => {
   const { person } = await noor.ok<{ person: { id: string } }>('GET', 'session')
-  const { items } = await noor.ok<{ items: { action: string; subject: object }[] }>('GET', `ledger?subject=${person.id}&limit=20`)
+  const { items } = await noor.ok<{ items: { action: string; subject: object }[] }>(
+    'GET',
+    `ledger?subject=${person.id}&limit=20`,
+  )
   expect(items.filter(({ action }) => action === 'signing.refused').length).toBeGreaterThanOrEqual(5)
-  expect(items).toContainEqual(expect.objectContaining({ action: 'signing.locked', subject: { kind: 'person', id: person.id } }))
+  expect(items).toContainEqual(
+    expect.objectContaining({ action: 'signing.locked', subject: { kind: 'person', id: person.id } }),
+  )
 })
 
 test('answers that hold key material are never stored on the way', async () => {
   expect((await teo.call('GET', 'me/signing-key')).headers.get('cache-control')).toBe('no-store')
-  expect((await teo.call('POST', 'me/signing-key/unlock', { proof: zeros(32) })).headers.get('cache-control')).toBe('no-store')
+  expect(
+    (await teo.call('POST', 'me/signing-key/unlock', { proof: zeros(32) })).headers.get('cache-control'),
+  ).toBe('no-store')
 })
 
 /** A whole enrolment of teo, with one thing changed. */
 async function enrol(change: (body: Record<string, unknown>) => Record<string, unknown>) {
   const { seed, publicKey } = createKey()
-  const prepared = await teo.ok<{ id: string; document: string }>('POST', 'me/signing-key/enrolments', { publicKey: toBase64(publicKey) })
+  const prepared = await teo.ok<{ id: string; document: string }>('POST', 'me/signing-key/enrolments', {
+    publicKey: toBase64(publicKey),
+  })
   const wrapped = await wrapKey(seed, new Uint8Array(32))
   const signature = toBase64(signMessage(seed, fromBase64(prepared.document)))
   const body = { enrolmentId: prepared.id, signature, kdf: newKdf(), ...wrapped, proofSha256: '0'.repeat(64) }

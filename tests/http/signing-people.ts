@@ -2,21 +2,34 @@ import type { Entry } from '../../server/contract/entries.ts'
 import { endpoints, type EndpointName } from '../../server/contract/endpoints.ts'
 import type { Meaning } from '../../server/contract/signatures.ts'
 import { demoPassphrase } from '../../server/platform/identity/demo-accounts.ts'
-import { fetchRecord, withSigningKey, type Presence, type SigningCalls } from '../../src/features/signatures/signing.ts'
+import {
+  fetchRecord,
+  withSigningKey,
+  type Presence,
+  type SigningCalls,
+} from '../../src/features/signatures/signing.ts'
 import { ApiProblem, problemFrom } from '../../src/lib/api-problem.ts'
 import { urlOf } from '../../src/lib/url-of.ts'
 import { signIn, type Answer, type PersonClient } from '../support/session.ts'
 
 /** The client's own signing module, its calls sent through a signed-in test client. */
 export function callsOf(client: PersonClient): SigningCalls {
-  async function send(name: EndpointName, options: { params?: object; query?: object; body?: unknown }): Promise<Answer> {
-    const path = urlOf(name, options.params as Record<string, string>, options.query as Record<string, string>)
+  async function send(
+    name: EndpointName,
+    options: { params?: object; query?: object; body?: unknown },
+  ): Promise<Answer> {
+    const path = urlOf(
+      name,
+      options.params as Record<string, string>,
+      options.query as Record<string, string>,
+    )
     const answer = await client.call(endpoints[name].method, path, options.body)
     if (answer.status >= 300) throw problemFrom(answer.status, answer.json)
     return answer
   }
   return {
-    call: (async (name: EndpointName, options: object) => (await send(name, options)).json) as SigningCalls['call'],
+    call: (async (name: EndpointName, options: object) =>
+      (await send(name, options)).json) as SigningCalls['call'],
     callForBytes: (async (name: EndpointName, options: object) => {
       const { bytes, headers } = await send(name, options)
       return { bytes: new Uint8Array(bytes), headers }
@@ -37,7 +50,12 @@ export async function signerOf(url: string, login: string): Promise<Signer> {
   const calls = callsOf(client)
   const opened = await new Promise<{ sign: Signer['sign'] }>((resolve, reject) => {
     // The module overwrites the key when its callback ends, so the callback waits as long as the test process lives.
-    withSigningKey(demoPassphrase, (sign) => new Promise<never>(() => resolve({ sign })), undefined, calls).catch(reject)
+    withSigningKey(
+      demoPassphrase,
+      (sign) => new Promise<never>(() => resolve({ sign })),
+      undefined,
+      calls,
+    ).catch(reject)
   })
   return { client, calls, sign: opened.sign }
 }
@@ -67,7 +85,11 @@ export async function write(client: PersonClient, entryId: string, ...content: u
 }
 
 /** A notebook of the first person with the others as members. */
-export async function notebookOf(keeper: PersonClient, title: string, members: Record<string, string>): Promise<string> {
+export async function notebookOf(
+  keeper: PersonClient,
+  title: string,
+  members: Record<string, string>,
+): Promise<string> {
   const { id } = await keeper.ok<{ id: string }>('POST', 'notebooks', { title })
   const { items } = await keeper.ok<{ items: { id: string; login: string }[] }>('GET', 'people')
   for (const [login, role] of Object.entries(members)) {
@@ -78,7 +100,9 @@ export async function notebookOf(keeper: PersonClient, title: string, members: R
 }
 
 export async function newEntry(client: PersonClient, notebookId: string, title: string): Promise<string> {
-  return (await client.ok<{ id: string }>('POST', `notebooks/${notebookId}/entries`, { title, experiment: 'hbt' })).id
+  return (
+    await client.ok<{ id: string }>('POST', `notebooks/${notebookId}/entries`, { title, experiment: 'hbt' })
+  ).id
 }
 
 export const entryOf = (client: PersonClient, id: string) => client.ok<Entry>('GET', `entries/${id}`)

@@ -13,7 +13,12 @@ beforeAll(async () => {
 
 async function prepared(who: Signer, id: string, meaning: 'authorship' | 'witness-read') {
   const { bytes, sha256 } = await fetchRecord(id, meaning, undefined, who.calls)
-  return () => who.client.call('POST', `entries/${id}/signatures`, { meaning, recordSha256: sha256, signature: who.sign(bytes) })
+  return () =>
+    who.client.call('POST', `entries/${id}/signatures`, {
+      meaning,
+      recordSha256: sha256,
+      signature: who.sign(bytes),
+    })
 }
 
 test('50 signatures each against a save: one of the two wins, never both', async () => {
@@ -44,9 +49,14 @@ test('a witness and a return at the same moment: sealed or returned, with signat
   for (let n = 0; n < 8; n++) {
     const id = await newEntry(maren.client, notebook, `Seal or return ${n}`)
     await write(maren.client, id, paragraph('Text'))
-    await (await prepared(maren, id, 'authorship'))()
+    await (
+      await prepared(maren, id, 'authorship')
+    )()
     const give = await prepared(farid, id, 'witness-read')
-    const [witnessed, returned] = await Promise.all([give(), maren.client.call('POST', `entries/${id}/returns`, { reason: 'Recalled.' })])
+    const [witnessed, returned] = await Promise.all([
+      give(),
+      maren.client.call('POST', `entries/${id}/returns`, { reason: 'Recalled.' }),
+    ])
     const entry = await entryOf(maren.client, id)
     const living = entry.signatures.filter(({ voided }) => !voided).length
     expect([witnessed.status, returned.status, entry.state, living]).toEqual(

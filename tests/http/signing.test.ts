@@ -2,7 +2,16 @@ import { beforeAll, expect, inject, test } from 'vitest'
 import { parseCanonical } from '../../server/ledger-format/canonical-json.ts'
 import type { SignedRecord } from '../../server/ledger-format/record.ts'
 import { fetchRecord } from '../../src/features/signatures/signing.ts'
-import { entryOf, newEntry, notebookOf, paragraph, sign, signerOf, write, type Signer } from './signing-people.ts'
+import {
+  entryOf,
+  newEntry,
+  notebookOf,
+  paragraph,
+  sign,
+  signerOf,
+  write,
+  type Signer,
+} from './signing-people.ts'
 
 // The life of an entry: rulings 13 to 17, states and phases; signed bytes: shapes 1.
 
@@ -10,8 +19,16 @@ let maren: Signer, teo: Signer, farid: Signer
 let notebook: string
 beforeAll(async () => {
   const url = inject('url')
-  ;[maren, teo, farid] = await Promise.all([signerOf(url, 'maren'), signerOf(url, 'teo'), signerOf(url, 'farid')])
-  notebook = await notebookOf(maren.client, 'Life of an entry', { teo: 'experimentalist', farid: 'supervisor', noor: 'auditor' })
+  ;[maren, teo, farid] = await Promise.all([
+    signerOf(url, 'maren'),
+    signerOf(url, 'teo'),
+    signerOf(url, 'farid'),
+  ])
+  notebook = await notebookOf(maren.client, 'Life of an entry', {
+    teo: 'experimentalist',
+    farid: 'supervisor',
+    noor: 'auditor',
+  })
 })
 
 const record = async (who: Signer, id: string, meaning: 'authorship' | 'witness-read') =>
@@ -34,7 +51,12 @@ test('two authors, a return, a second round, a seal; every signature given stays
 
   await farid.client.ok('POST', `entries/${id}/returns`, { reason: 'Name the filter.' })
   const returned = await entryOf(maren.client, id)
-  expect(returned).toMatchObject({ state: 'draft', phase: 'returned', returned: { reason: 'Name the filter.' }, bodySha256: null })
+  expect(returned).toMatchObject({
+    state: 'draft',
+    phase: 'returned',
+    returned: { reason: 'Name the filter.' },
+    bodySha256: null,
+  })
   expect(returned.signatures.map(({ voided }) => voided)).toEqual([true, true])
 
   await write(maren.client, id, paragraph('Begun by Maren, filter 0.3 nm.'))
@@ -58,7 +80,9 @@ test('two authors, a return, a second round, a seal; every signature given stays
     ['POST', 'returns', { reason: 'late' }],
     ['POST', 'withdrawals', { reason: 'late' }],
   ] as const) {
-    const answer = await maren.client.call(method, `entries/${id}/${path}`.replace(/\/$/, ''), body, { 'if-match': '*' })
+    const answer = await maren.client.call(method, `entries/${id}/${path}`.replace(/\/$/, ''), body, {
+      'if-match': '*',
+    })
     expect(answer.status, `${method} ${path}`).toBe(409)
   }
 })
@@ -70,7 +94,10 @@ test('the same state gives the same bytes; a change in between makes them worthl
   expect((await fetchRecord(id, 'authorship', undefined, maren.calls)).sha256).toBe(first.sha256)
   await write(maren.client, id, paragraph('Two.'))
   const body = { meaning: 'authorship', recordSha256: first.sha256, signature: maren.sign(first.bytes) }
-  expect(await maren.client.call('POST', `entries/${id}/signatures`, body)).toMatchObject({ status: 409, json: { code: 'record-changed' } })
+  expect(await maren.client.call('POST', `entries/${id}/signatures`, body)).toMatchObject({
+    status: 409,
+    json: { code: 'record-changed' },
+  })
   expect((await entryOf(maren.client, id)).state).toBe('draft')
 })
 
@@ -92,7 +119,9 @@ test('an empty entry, and one written long after the work, say what is in the wa
   const id = await newEntry(maren.client, notebook, 'Blocked')
   expect((await entryOf(maren.client, id)).blocks.map(({ code }) => code)).toEqual(['nothing-written'])
   await write(maren.client, id, paragraph('Written late.'))
-  await maren.client.ok('PATCH', `entries/${id}`, { runAt: new Date(Date.now() - 5 * 86_400_000).toISOString() })
+  await maren.client.ok('PATCH', `entries/${id}`, {
+    runAt: new Date(Date.now() - 5 * 86_400_000).toISOString(),
+  })
   expect(await sign(maren, id, 'authorship')).toMatchObject({ status: 409, code: 'signing-blocked' })
   expect((await entryOf(maren.client, id)).blocks.map(({ code }) => code)).toEqual(['late-remark-missing'])
   await maren.client.ok('PATCH', `entries/${id}`, { lateRemark: 'The cryostat log was read later.' })
@@ -102,11 +131,15 @@ test('an empty entry, and one written long after the work, say what is in the wa
 test('a witness who was present names a run and times that overlap it', async () => {
   const id = await newEntry(maren.client, notebook, 'Present')
   const startedAt = new Date(Date.now() - 3_600_000).toISOString()
-  const run = await maren.client.ok<{ id: string }>('POST', `entries/${id}/runs`, { startedAt, durationPs: 60_000_000_000_000 })
+  const run = await maren.client.ok<{ id: string }>('POST', `entries/${id}/runs`, {
+    startedAt,
+    durationPs: 60_000_000_000_000,
+  })
   await write(maren.client, id, paragraph('A run.'))
   await sign(maren, id, 'authorship')
   const at = (minutes: number) => new Date(Date.parse(startedAt) + minutes * 60_000).toISOString()
-  const present = (from: number, to: number) => sign(farid, id, 'witness-present', { runId: run.id, from: at(from), to: at(to) })
+  const present = (from: number, to: number) =>
+    sign(farid, id, 'witness-present', { runId: run.id, from: at(from), to: at(to) })
   expect(await present(5, 9)).toMatchObject({ status: 422 })
   expect((await present(-1, 9)).status).toBe(201)
   const [, witness] = (await entryOf(maren.client, id)).signatures
@@ -134,7 +167,10 @@ test('an addendum is an entry of its own; once sealed, the original points to it
   const addendum = await maren.client.ok<{ id: string }>('POST', `entries/${id}/addenda`, {})
   await write(maren.client, addendum.id, paragraph('A correction.'))
   const signed = await record(maren, addendum.id, 'authorship')
-  expect(signed.entry.amends).toMatchObject({ entryId: id, bodySha256: (await entryOf(maren.client, id)).bodySha256 })
+  expect(signed.entry.amends).toMatchObject({
+    entryId: id,
+    bodySha256: (await entryOf(maren.client, id)).bodySha256,
+  })
   await sign(maren, addendum.id, 'authorship')
   expect((await sign(farid, addendum.id, 'witness-read')).status).toBe(201)
   expect((await entryOf(maren.client, id)).amendedBy).toMatchObject([{ entryId: addendum.id }])

@@ -11,6 +11,7 @@ export async function requireCalculation(
   id: string,
 ): Promise<{ calculation: CalculationRow; entry: EntryRow }> {
   const calculation = await findCalculation(services.db, id)
-  if (calculation === null) throw new Problem('not-found', 'There is no such calculation, or you may not read it.')
+  if (calculation === null)
+    throw new Problem('not-found', 'There is no such calculation, or you may not read it.')
   return { calculation, entry: await requireEntry(services, actor, calculation.entryId, 'read') }
 }

@@ -23,7 +23,9 @@ export interface Computed {
 export type ThreadAnswer = Computed | { problem: { code: ProblemCode; detail: string; errors: FieldError[] } }
 
 export interface ComputePool {
-  compute(task: ThreadTask & { signal: AbortSignal; progress: (done: number, of: number) => void }): Promise<Computed>
+  compute(
+    task: ThreadTask & { signal: AbortSignal; progress: (done: number, of: number) => void },
+  ): Promise<Computed>
   close(): Promise<void>
 }
 
@@ -40,8 +42,12 @@ export function openComputePool(): ComputePool {
       const { port1, port2 } = new MessageChannel()
       port1.on('message', ({ done, of }: { done: number; of: number }) => progress(done, of))
       try {
-        const answer = await pool.run({ ...task, port: port2 } as ThreadTask, { signal, transferList: [port2] })
-        if ('problem' in answer) throw new Problem(answer.problem.code, answer.problem.detail, { errors: answer.problem.errors })
+        const answer = await pool.run({ ...task, port: port2 } as ThreadTask, {
+          signal,
+          transferList: [port2],
+        })
+        if ('problem' in answer)
+          throw new Problem(answer.problem.code, answer.problem.detail, { errors: answer.problem.errors })
         return answer
       } finally {
         port1.close()

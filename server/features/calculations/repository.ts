@@ -43,7 +43,11 @@ export function findCalculation(db: Database, id: string, t?: Transaction): Prom
   return db.row<CalculationRow>(`select ${CALCULATION} from work.calculations where id = :id`, { id }, t)
 }
 
-export function calculationsOfEntry(db: Database, entryId: string, t?: Transaction): Promise<CalculationRow[]> {
+export function calculationsOfEntry(
+  db: Database,
+  entryId: string,
+  t?: Transaction,
+): Promise<CalculationRow[]> {
   return db.rows<CalculationRow>(
     `select ${CALCULATION} from work.calculations where entry_id = :entryId order by label, created_at, id`,
     { entryId },
@@ -86,7 +90,11 @@ export interface NewCalculation {
   createdAt: Date
 }
 
-export async function insertCalculation(db: Database, calculation: NewCalculation, t: Transaction): Promise<void> {
+export async function insertCalculation(
+  db: Database,
+  calculation: NewCalculation,
+  t: Transaction,
+): Promise<void> {
   await db.run(
     `insert into work.calculations (id, entry_id, label, kind, version, engine, status, parameters, inputs, cache_key,
        supersedes, created_by, token_id, created_at)
@@ -111,7 +119,11 @@ export async function beginRun(db: Database, id: string, worker: string, started
   return rows.length === 1
 }
 
-export async function setProgress(db: Database, id: string, progress: NonNullable<Calculation['progress']>): Promise<void> {
+export async function setProgress(
+  db: Database,
+  id: string,
+  progress: NonNullable<Calculation['progress']>,
+): Promise<void> {
   await db.run(`update work.calculations set progress = :progress where id = :id and status = 'running'`, {
     id,
     progress: JSON.stringify(progress),
@@ -166,7 +178,12 @@ export async function cancel(db: Database, id: string, finishedAt: Date, t: Tran
   return rows.length === 1
 }
 
-export async function insertResult(db: Database, sha256: string, bytes: Uint8Array, t: Transaction): Promise<void> {
+export async function insertResult(
+  db: Database,
+  sha256: string,
+  bytes: Uint8Array,
+  t: Transaction,
+): Promise<void> {
   await db.run(
     `insert into record.results (sha256, result) values (:sha256, :result) on conflict (sha256) do nothing`,
     { sha256, result: Buffer.from(bytes) },
@@ -176,7 +193,11 @@ export async function insertResult(db: Database, sha256: string, bytes: Uint8Arr
 
 /** The bytes that the worker wrote. */
 export async function resultBytes(db: Database, sha256: string, t?: Transaction): Promise<Buffer> {
-  const row = await db.row<{ result: Buffer }>(`select result from record.results where sha256 = :sha256`, { sha256 }, t)
+  const row = await db.row<{ result: Buffer }>(
+    `select result from record.results where sha256 = :sha256`,
+    { sha256 },
+    t,
+  )
   if (row === null) throw new Error(`result ${sha256} is missing`)
   return row.result
 }

@@ -23,7 +23,10 @@ export function calculationRoutes(services: Services): Route[] {
   }
 
   async function answerStarted({ id, known }: Started) {
-    return answer(await present(id), { status: known ? 201 : 202, headers: { location: `/api/v1/calculations/${id}` } })
+    return answer(await present(id), {
+      status: known ? 201 : 202,
+      headers: { location: `/api/v1/calculations/${id}` },
+    })
   }
 
   async function read(actor: Actor, id: string): Promise<CalculationRow> {
@@ -52,7 +55,9 @@ export function calculationRoutes(services: Services): Route[] {
       const { calculation } = await requireCalculation(services, actor, params.id)
       return answerStarted(await startSuccessor(services, actor, calculation, body.parameters))
     }),
-    route(endpoints.getCalculation, async ({ actor, params }) => presentCalculation(services, await read(actor, params.id))),
+    route(endpoints.getCalculation, async ({ actor, params }) =>
+      presentCalculation(services, await read(actor, params.id)),
+    ),
     route(endpoints.cancelCalculation, async ({ actor, params }) => {
       const { calculation } = await requireCalculation(services, actor, params.id)
       await cancelCalculation(services, actor, calculation)
@@ -60,19 +65,35 @@ export function calculationRoutes(services: Services): Route[] {
     }),
     route(endpoints.watchCalculation, async (context) => {
       const { calculation } = await requireCalculation(services, context.actor, context.params.id)
-      const mayStillRead = () => requireEntry(services, context.actor, calculation.entryId, 'read').then(() => true, () => false)
+      const mayStillRead = () =>
+        requireEntry(services, context.actor, calculation.entryId, 'read').then(
+          () => true,
+          () => false,
+        )
       await watchCalculation(services, context, mayStillRead)
       return undefined
     }),
-    route(endpoints.getCalculationFigure, async ({ actor, params }) => requireFigure(services, await read(actor, params.id))),
+    route(endpoints.getCalculationFigure, async ({ actor, params }) =>
+      requireFigure(services, await read(actor, params.id)),
+    ),
     route(endpoints.getCalculationCsv, async ({ actor, params, res }) => {
       const calculation = await read(actor, params.id)
-      send(res, 'text/csv; charset=utf-8', `C${calculation.label}.csv`, figureCsv(await requireFigure(services, calculation)))
+      send(
+        res,
+        'text/csv; charset=utf-8',
+        `C${calculation.label}.csv`,
+        figureCsv(await requireFigure(services, calculation)),
+      )
       return undefined
     }),
     route(endpoints.getCalculationSvg, async ({ actor, params, res }) => {
       const calculation = await read(actor, params.id)
-      send(res, 'image/svg+xml', `C${calculation.label}.svg`, renderSvg(await requireFigure(services, calculation)))
+      send(
+        res,
+        'image/svg+xml',
+        `C${calculation.label}.svg`,
+        renderSvg(await requireFigure(services, calculation)),
+      )
       return undefined
     }),
   ]

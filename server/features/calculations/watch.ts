@@ -21,7 +21,9 @@ export async function watchCalculation(
   let telling = Promise.resolve()
   const silence = services.events.listen(changedChannel(id), () => void tell())
   void tell()
-  await new Promise<void>((resolve) => stream.ended.addEventListener('abort', () => resolve(), { once: true }))
+  await new Promise<void>((resolve) =>
+    stream.ended.addEventListener('abort', () => resolve(), { once: true }),
+  )
   silence()
   await telling
 

@@ -11,7 +11,14 @@ export {
   waitingCount,
   type EntryRow,
 } from './repository.ts'
-export { contentOfSave, revisionsOf, writersOf, writtenBetween, type Document, type Revision } from './saves-repository.ts'
+export {
+  contentOfSave,
+  revisionsOf,
+  writersOf,
+  writtenBetween,
+  type Document,
+  type Revision,
+} from './saves-repository.ts'
 export { changeEntry } from './use-cases/change-entry.ts'
 export { createEntry, createEntryIn } from './use-cases/create-entry.ts'
 export { cutRevision } from './use-cases/cut-revision.ts'

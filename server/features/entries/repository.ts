@@ -56,7 +56,12 @@ export function lockEntry(db: Database, id: string, t: Transaction): Promise<Ent
   return db.row<EntryRow>(`select ${ENTRY} ${FROM} where e.id = :id for update of e`, { id }, t)
 }
 
-export function entriesOfNotebook(db: Database, notebookId: string, before: number, limit: number): Promise<EntryRow[]> {
+export function entriesOfNotebook(
+  db: Database,
+  notebookId: string,
+  before: number,
+  limit: number,
+): Promise<EntryRow[]> {
   return db.rows<EntryRow>(
     `select ${ENTRY} ${FROM} where e.notebook_id = :notebookId and e.serial < :before order by e.serial desc limit :limit`,
     { notebookId, before, limit },
@@ -98,8 +103,17 @@ function contributed(entryId: string, personId: string): string {
     or exists (select 1 from work.calculations c where c.entry_id = ${entryId} and c.created_by = ${personId}))`
 }
 
-export async function hasContributed(db: Database, entryId: string, personId: string, t?: Transaction): Promise<boolean> {
-  const row = await db.row<{ yes: boolean }>(`select ${contributed(':entryId', ':personId')} as yes`, { entryId, personId }, t)
+export async function hasContributed(
+  db: Database,
+  entryId: string,
+  personId: string,
+  t?: Transaction,
+): Promise<boolean> {
+  const row = await db.row<{ yes: boolean }>(
+    `select ${contributed(':entryId', ':personId')} as yes`,
+    { entryId, personId },
+    t,
+  )
   return row?.yes ?? false
 }
 
@@ -172,13 +186,27 @@ const COLUMN: Record<keyof EntryChange, string> = {
 }
 
 /** Changes columns of an entry; the caller holds its lock. */
-export async function updateEntry(db: Database, id: string, change: EntryChange, updatedAt: Date, t: Transaction): Promise<void> {
+export async function updateEntry(
+  db: Database,
+  id: string,
+  change: EntryChange,
+  updatedAt: Date,
+  t: Transaction,
+): Promise<void> {
   const names = (Object.keys(change) as (keyof EntryChange)[]).filter((name) => change[name] !== undefined)
   const assignments = [...names.map((name) => `${COLUMN[name]} = :${name}`), 'updated_at = :updatedAt']
-  await db.run(`update work.entries set ${assignments.join(', ')} where id = :id`, { ...change, id, updatedAt }, t)
+  await db.run(
+    `update work.entries set ${assignments.join(', ')} where id = :id`,
+    { ...change, id, updatedAt },
+    t,
+  )
 }
 
 /** Entries that amend this one, sealed ones only when `sealed`. */
 export function addendaOf(db: Database, id: string, t?: Transaction): Promise<EntryRow[]> {
-  return db.rows<EntryRow>(`select ${ENTRY} ${FROM} where e.amends_entry_id = :id order by e.serial`, { id }, t)
+  return db.rows<EntryRow>(
+    `select ${ENTRY} ${FROM} where e.amends_entry_id = :id order by e.serial`,
+    { id },
+    t,
+  )
 }

@@ -12,7 +12,14 @@ import { saveContent } from './use-cases/save-content.ts'
 
 function presentRevision(revision: Revision) {
   const { personId, author, at, cause, contentSha256 } = revision
-  return { revision: revision.revision, authorId: personId, author, time: at.toISOString(), cause, contentSha256 }
+  return {
+    revision: revision.revision,
+    authorId: personId,
+    author,
+    time: at.toISOString(),
+    cause,
+    contentSha256,
+  }
 }
 
 /** The text of an entry and its history. */
@@ -41,8 +48,10 @@ export function contentRoutes(services: Services): Route[] {
     route(endpoints.getRevision, async ({ actor, params }) => {
       await requireEntry(services, actor, params.id, 'read')
       const found = (await revisionsOf(services.db, params.id)).find((r) => r.revision === params.n)
-      const content = found === undefined ? null : await contentOfSave(services.db, params.id, found.saveNumber)
-      if (found === undefined || content === null) throw new Problem('not-found', `The entry has no revision ${params.n}.`)
+      const content =
+        found === undefined ? null : await contentOfSave(services.db, params.id, found.saveNumber)
+      if (found === undefined || content === null)
+        throw new Problem('not-found', `The entry has no revision ${params.n}.`)
       return { ...presentRevision(found), content }
     }),
   ]

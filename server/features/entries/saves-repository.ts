@@ -36,12 +36,26 @@ export async function insertSave(db: Database, save: Save, content: Document, t:
 const SAVE = `entry_id as "entryId", number, person_id as "personId", token_id as "tokenId", saved_at as "savedAt",
   content_sha256 as "contentSha256"`
 
-export function findSave(db: Database, entryId: string, number: number, t?: Transaction): Promise<Save | null> {
-  return db.row<Save>(`select ${SAVE} from record.saves where entry_id = :entryId and number = :number`, { entryId, number }, t)
+export function findSave(
+  db: Database,
+  entryId: string,
+  number: number,
+  t?: Transaction,
+): Promise<Save | null> {
+  return db.row<Save>(
+    `select ${SAVE} from record.saves where entry_id = :entryId and number = :number`,
+    { entryId, number },
+    t,
+  )
 }
 
 /** The document of a save; null when there is no such save. */
-export async function contentOfSave(db: Database, entryId: string, number: number, t?: Transaction): Promise<Document | null> {
+export async function contentOfSave(
+  db: Database,
+  entryId: string,
+  number: number,
+  t?: Transaction,
+): Promise<Document | null> {
   const row = await db.row<{ gzip: Buffer }>(
     `select content_gzip as gzip from record.saves where entry_id = :entryId and number = :number`,
     { entryId, number },
@@ -51,7 +65,11 @@ export async function contentOfSave(db: Database, entryId: string, number: numbe
 }
 
 /** When the text was first and last saved; null when it never was. */
-export function writtenBetween(db: Database, entryId: string, t?: Transaction): Promise<{ first: Date; last: Date } | null> {
+export function writtenBetween(
+  db: Database,
+  entryId: string,
+  t?: Transaction,
+): Promise<{ first: Date; last: Date } | null> {
   return db.row<{ first: Date; last: Date }>(
     `select min(saved_at) as first, max(saved_at) as last from record.saves where entry_id = :entryId having count(*) > 0`,
     { entryId },
@@ -85,7 +103,11 @@ export function revisionsOf(db: Database, entryId: string, t?: Transaction): Pro
 }
 
 /** People who saved the text, with names; also those whose last saves are not yet a revision. */
-export function writersOf(db: Database, entryIds: readonly string[], t?: Transaction): Promise<{ entryId: string; personId: string; name: string }[]> {
+export function writersOf(
+  db: Database,
+  entryIds: readonly string[],
+  t?: Transaction,
+): Promise<{ entryId: string; personId: string; name: string }[]> {
   if (entryIds.length === 0) return Promise.resolve([])
   return db.rows(
     `select distinct s.entry_id as "entryId", s.person_id as "personId", p.name

@@ -15,11 +15,37 @@ interface Face {
 const variable = (name: string, file: string) => `@fontsource-variable/${name}/files/${name}-${file}.woff2`
 const latin = 'U+0000-02FF, U+1E00-1EFF, U+2000-206F, U+20AC, U+2190-21FF, U+2212'
 const faces: readonly Face[] = [
-  { family: 'Source Serif 4 Variable', file: variable('source-serif-4', 'latin-wght-normal'), weight: '200 900', range: latin },
-  { family: 'Source Serif 4 Variable', file: variable('source-serif-4', 'latin-wght-italic'), weight: '200 900', style: 'italic', range: latin },
-  { family: 'Source Serif 4 Variable', file: variable('source-serif-4', 'greek-wght-normal'), weight: '200 900', range: 'U+0370-03FF' },
-  { family: 'Schibsted Grotesk Variable', file: variable('schibsted-grotesk', 'latin-wght-normal'), weight: '400 900', range: latin },
-  { family: 'Spline Sans Mono Variable', file: variable('spline-sans-mono', 'latin-wght-normal'), weight: '300 700', range: latin },
+  {
+    family: 'Source Serif 4 Variable',
+    file: variable('source-serif-4', 'latin-wght-normal'),
+    weight: '200 900',
+    range: latin,
+  },
+  {
+    family: 'Source Serif 4 Variable',
+    file: variable('source-serif-4', 'latin-wght-italic'),
+    weight: '200 900',
+    style: 'italic',
+    range: latin,
+  },
+  {
+    family: 'Source Serif 4 Variable',
+    file: variable('source-serif-4', 'greek-wght-normal'),
+    weight: '200 900',
+    range: 'U+0370-03FF',
+  },
+  {
+    family: 'Schibsted Grotesk Variable',
+    file: variable('schibsted-grotesk', 'latin-wght-normal'),
+    weight: '400 900',
+    range: latin,
+  },
+  {
+    family: 'Spline Sans Mono Variable',
+    file: variable('spline-sans-mono', 'latin-wght-normal'),
+    weight: '300 700',
+    range: latin,
+  },
 ]
 
 let fonts: string | null = null

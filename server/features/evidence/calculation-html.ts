@@ -1,6 +1,7 @@
 import { typographic } from '../../contract/quantity-text.ts'
 import { escapeHtml } from '../../document/index.ts'
 import type { RecordCalculation } from '../../ledger-format/record-body.ts'
+import { labelHtml } from './label-html.ts'
 import type { SheetCalculation, SheetInput } from './sheet-input.ts'
 import { zonedTime } from './words.ts'
 
@@ -14,7 +15,9 @@ export function calculationHtml(input: SheetInput, calculationId: string): strin
     `<p class="small">${escapeHtml(drawn.parameters)}</p>`,
     drawn.svg ? `<div class="plot">${inlineSvg(drawn)}</div>` : '',
     figuresTable(signed),
-    signed.notes.map(({ detail, code }) => `<p class="small">Note: ${escapeHtml(detail ?? code)}</p>`).join(''),
+    signed.notes
+      .map(({ detail, code }) => `<p class="small">Note: ${escapeHtml(detail ?? code)}</p>`)
+      .join(''),
     `<p class="small fig">engine ${escapeHtml(signed.engine)}, ${escapeHtml(signed.kind)} version ${signed.version}, computed ${escapeHtml(zonedTime(signed.finishedAt, input.zone))}, result ${signed.resultSha256.slice(0, 16)}</p>`,
   ].join('\n')
 }
@@ -32,12 +35,15 @@ function figuresTable({ figures }: RecordCalculation): string {
   if (figures.length === 0) return ''
   const rows = figures.map(
     ({ label, value, u, unit }) =>
-      `<tr><th scope="row">${escapeHtml(label)}</th><td class="fig">${escapeHtml(typographic(value, u))}${unit && unit !== '1' ? ` ${escapeHtml(unit)}` : ''}</td></tr>`,
+      `<tr><th scope="row">${labelHtml(label)}</th><td class="fig">${escapeHtml(typographic(value, u))}${unit && unit !== '1' ? ` ${escapeHtml(unit)}` : ''}</td></tr>`,
   )
   return `<table class="figures"><tbody>${rows.join('')}</tbody></table>`
 }
 
 /** The drawing inside the page; the ids in it are made unique, since a sheet may hold several. */
 function inlineSvg({ svg, label }: SheetCalculation): string {
-  return (svg ?? '').replace(/^<\?xml[^>]*\?>\s*/, '').replaceAll('figure-title', `${label}-title`).replaceAll('figure-description', `${label}-description`)
+  return (svg ?? '')
+    .replace(/^<\?xml[^>]*\?>\s*/, '')
+    .replaceAll('figure-title', `${label}-title`)
+    .replaceAll('figure-description', `${label}-description`)
 }

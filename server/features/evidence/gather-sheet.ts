@@ -11,6 +11,7 @@ import { filesOfEntry } from '../files/index.ts'
 import { laboratory } from '../laboratory/index.ts'
 import { peopleById } from '../people/index.ts'
 import { bodyBytes, entrySignatures, sealOf } from '../signatures/index.ts'
+import { parameterWords } from './parameter-words.ts'
 import type { SheetCalculation, SheetInput } from './sheet-input.ts'
 
 const LARGEST_IMAGE = 20_000_000
@@ -58,15 +59,6 @@ async function drawn(services: Services, calculation: RecordCalculation): Promis
   }
 }
 
-/** Parameters as a sentence: the words of the kind's own schema, values as signed. */
-function parameterWords(schema: Record<string, unknown>, parameters: Record<string, unknown>): string {
-  const properties = (schema.properties ?? {}) as Record<string, { title?: string } | undefined>
-  const words = Object.entries(parameters)
-    .filter(([, value]) => value !== null && value !== undefined)
-    .map(([name, value]) => `${properties[name]?.title ?? name} ${typeof value === 'object' ? JSON.stringify(value) : String(value)}`)
-  return words.length > 0 ? `${words.join(', ')}.` : ''
-}
-
 /** Pictures of the text as data URLs: png, jpeg and webp by their first bytes, nothing else (threat B12). */
 async function imagesOf(services: Services, entryId: string, body: RecordBody): Promise<Map<string, string>> {
   const images = new Map<string, string>()
@@ -82,7 +74,10 @@ async function imagesOf(services: Services, entryId: string, body: RecordBody): 
 }
 
 async function namesOf(services: Services, body: RecordBody): Promise<Map<string, string>> {
-  const ids = [...body.files.map(({ uploadedBy }) => uploadedBy), ...body.history.returns.map(({ bySubjectId }) => bySubjectId)]
+  const ids = [
+    ...body.files.map(({ uploadedBy }) => uploadedBy),
+    ...body.history.returns.map(({ bySubjectId }) => bySubjectId),
+  ]
   const people = await peopleById(services.db, ids)
   return new Map([...people].map(([id, { name }]) => [id, name]))
 }

@@ -54,8 +54,16 @@ async function printNow(html: string): Promise<Buffer> {
 
 async function openPage(): Promise<Page> {
   if (browser?.isConnected() && page && !page.isClosed()) return page
-  browser = await chromium.launch({ executablePath: process.env.CHROMIUM ?? '/usr/bin/chromium', args: switches, timeout: PRINT_TIMEOUT_MS })
-  const context = await browser.newContext({ javaScriptEnabled: false, offline: true, acceptDownloads: false })
+  browser = await chromium.launch({
+    executablePath: process.env.CHROMIUM ?? '/usr/bin/chromium',
+    args: switches,
+    timeout: PRINT_TIMEOUT_MS,
+  })
+  const context = await browser.newContext({
+    javaScriptEnabled: false,
+    offline: true,
+    acceptDownloads: false,
+  })
   await context.route('**', (route) => route.abort())
   page = await context.newPage()
   return page

@@ -23,7 +23,8 @@ export function sheetHtml(input: SheetInput): string {
     bodySha256: input.bodySha256,
     demo: body.laboratory.demo,
   })
-  const policy = "default-src 'none'; style-src 'unsafe-inline'; img-src data:; font-src data:; base-uri 'none'; form-action 'none'"
+  const policy =
+    "default-src 'none'; style-src 'unsafe-inline'; img-src data:; font-src data:; base-uri 'none'; form-action 'none'"
   const maths = text.includes('class="maths"') ? mathsCss() : ''
   return `<!doctype html>
 <html lang="en-GB">
@@ -58,10 +59,13 @@ ${sealPart(input)}
 /** Calculations that the text only quotes stand after it, so that every signed result is printed. */
 function unplaced(input: SheetInput): string {
   const placed = new Set<string>()
-  JSON.stringify(input.body.content, (_key, value: { type?: string; attrs?: { calculationId?: string } } | null) => {
-    if (value?.type === 'calculation' && value.attrs?.calculationId) placed.add(value.attrs.calculationId)
-    return value
-  })
+  JSON.stringify(
+    input.body.content,
+    (_key, value: { type?: string; attrs?: { calculationId?: string } } | null) => {
+      if (value?.type === 'calculation' && value.attrs?.calculationId) placed.add(value.attrs.calculationId)
+      return value
+    },
+  )
   const rest = input.body.calculations.filter(({ id }) => !placed.has(id))
   if (rest.length === 0) return ''
   const blocks = rest.map(({ id }) => `<section class="calculation">${calculationHtml(input, id)}</section>`)

@@ -1,3 +1,5 @@
+import { fringeUrl } from './fringe-mark.ts'
+
 /** Style of a sealed sheet on screen and paper (A4): black and greys; look.md section 9. */
 export const sheetCss = `
 html{background:#fff;color:#000;font:9.5pt/1.5 'Source Serif 4 Variable',serif}
@@ -21,6 +23,7 @@ table{border-collapse:collapse;margin:0 0 3mm;font-size:8.6pt}
 td,th{border:1px solid #999;padding:.6mm 1.6mm;text-align:left;vertical-align:top}
 td>p,th>p{margin:0}
 thead{display:table-header-group}
+sup,sub{line-height:0}
 .figures td,.figures th{border:0;border-bottom:1px solid #d8d8d8;font-weight:400;padding:.4mm 4mm .4mm 0}
 .files{width:100%}.files td,.files th{font-size:7pt}.files .digest td{border-top:0}
 tr{break-inside:avoid}
@@ -28,7 +31,12 @@ tr{break-inside:avoid}
 .signature{break-inside:avoid;border-top:2px solid #000;padding-top:1.5mm}
 .signature p{margin:0 0 .6mm}.signature .name{font-size:9.5pt;font-weight:600}
 .signature blockquote{margin:1mm 0;padding-left:2mm;border-left:3px double #888;font-family:'Source Serif 4 Variable',serif;font-size:8.2pt}
-.seal{break-inside:avoid;border-top:3px solid #000;margin-top:5mm;padding-top:1.5mm}
+.seal{break-inside:avoid;margin-top:5mm}
+.seal-line{list-style:none;margin:0 0 2.5mm;padding:0;display:grid;grid-template-columns:repeat(4,1fr)}
+.seal-line li{position:relative;display:flex;flex-direction:column;padding:6.5mm 3mm 0 0}
+.seal-line li:not(:last-child)::before{content:"";position:absolute;left:6mm;right:0;top:2.6mm;border-top:1mm solid #000}
+.seal-line .node{position:absolute;top:0;left:0}
+.seal-line .mark{flex-direction:row;display:flex;gap:2mm;align-items:center;margin-top:1mm}
 blockquote{margin:2mm 0 2mm 4mm}
 pre{font:8pt/1.4 'Spline Sans Mono Variable',monospace;white-space:pre-wrap;border-left:1px solid #999;padding-left:2mm}
 img{max-width:100%}figure{margin:3mm 0;break-inside:avoid}figcaption{font-size:8pt}
@@ -54,7 +62,7 @@ export function pageCss({ laboratory, notebook, number, bodySha256, demo }: Page
 @top-left{content:${quoted(laboratory)};${sans};font-weight:600;border-bottom:1.2px solid #000;vertical-align:bottom;padding-bottom:1.4mm;margin-bottom:4mm}
 @top-center{content:${quoted(notebook)};${sans};border-bottom:1.2px solid #000;vertical-align:bottom;padding-bottom:1.4mm;margin-bottom:4mm}
 @top-right{content:${quoted(number)};${mono};border-bottom:1.2px solid #000;vertical-align:bottom;padding-bottom:1.4mm;margin-bottom:4mm}
-@bottom-left{content:"sheet ${digits}";white-space:pre;${mono};border-top:1px solid #000;vertical-align:top;padding-top:1.4mm;margin-top:4mm}
+@bottom-left{content:"sheet ${digits}";white-space:pre;${mono};border-top:1px solid #000;vertical-align:top;padding:1.4mm 0 0 11mm;margin-top:4mm;background:url(${fringeUrl(bodySha256)}) no-repeat 0 1.6mm/8.4mm 8.4mm;min-height:11mm}
 @bottom-center{content:"${demo ? 'demonstration' : ''}";${sans};border-top:1px solid #000;vertical-align:top;padding-top:1.4mm;margin-top:4mm}
 @bottom-right{content:counter(page) " of " counter(pages);${sans};border-top:1px solid #000;vertical-align:top;padding-top:1.4mm;margin-top:4mm}}`
 }

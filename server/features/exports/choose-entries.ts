@@ -48,8 +48,12 @@ export async function choose(services: Services, chosen: readonly EntryRow[]): P
   }
   const included = new Set(entries.map(({ entry }) => entry.id))
   const leftOut = new Map<string, LeftOutEntry>()
-  const leave = (entry: Pick<EntryRow, 'id' | 'notebookNumber' | 'serial'>, reason: LeftOutEntry['reason']) => {
-    if (!included.has(entry.id) && !leftOut.has(entry.id)) leftOut.set(entry.id, { kind: 'entry', id: entry.id, number: entryNumber(entry), reason })
+  const leave = (
+    entry: Pick<EntryRow, 'id' | 'notebookNumber' | 'serial'>,
+    reason: LeftOutEntry['reason'],
+  ) => {
+    if (!included.has(entry.id) && !leftOut.has(entry.id))
+      leftOut.set(entry.id, { kind: 'entry', id: entry.id, number: entryNumber(entry), reason })
   }
   for (const { entry } of entries) {
     const amended = entry.amendsEntryId === null ? null : await findEntry(services.db, entry.amendsEntryId)
@@ -65,7 +69,10 @@ export async function choose(services: Services, chosen: readonly EntryRow[]): P
 
 async function eventsOfEntry(services: Services, entry: EntryRow): Promise<LedgerEvent[]> {
   const runs = await runsOfEntry(services.db, entry.id)
-  return eventsOf(services, [{ kind: 'entry', id: entry.id }, ...runs.map(({ id }) => ({ kind: 'run', id }) as const)])
+  return eventsOf(services, [
+    { kind: 'entry', id: entry.id },
+    ...runs.map(({ id }) => ({ kind: 'run', id }) as const),
+  ])
 }
 
 async function createdBy(services: Services, entry: EntryRow, treeSize: number): Promise<boolean> {

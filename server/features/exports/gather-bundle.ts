@@ -1,6 +1,11 @@
 import { existsSync, readFileSync } from 'node:fs'
 import { fileURLToPath } from 'node:url'
-import type { BundleInput, BundleScope, EntryInput, SignatureInput } from '../../ledger-format/bundle/index.ts'
+import type {
+  BundleInput,
+  BundleScope,
+  EntryInput,
+  SignatureInput,
+} from '../../ledger-format/bundle/index.ts'
 import { parseCanonical } from '../../ledger-format/canonical-json.ts'
 import type { Rotation } from '../../ledger-format/rotation.ts'
 import type { Services } from '../../platform/services.ts'
@@ -16,7 +21,12 @@ import type { Chosen, ChosenEntry } from './choose-entries.ts'
 const checkerFile = new URL('../../../dist/check.html', import.meta.url)
 
 /** Everything of a bundle but the raw bytes. */
-export async function gatherBundle(services: Services, chosen: Chosen, scope: BundleScope, withoutRaw: boolean): Promise<BundleInput> {
+export async function gatherBundle(
+  services: Services,
+  chosen: Chosen,
+  scope: BundleScope,
+  withoutRaw: boolean,
+): Promise<BundleInput> {
   const home = await laboratory(services)
   const head = await findHead(services, chosen.treeSize)
   const given = await anchors(services)
@@ -34,7 +44,9 @@ export async function gatherBundle(services: Services, chosen: Chosen, scope: Bu
     headTimeStamp: head.timeStamp,
     tree: await merkleTree(services),
     anchors: given,
-    rotations: keys.flatMap(({ rotation }) => (rotation ? [parseCanonical(rotation) as unknown as Rotation] : [])),
+    rotations: keys.flatMap(({ rotation }) =>
+      rotation ? [parseCanonical(rotation) as unknown as Rotation] : [],
+    ),
     ledgerKeys: keys.map(({ publicKey }) => publicKey),
     pki: { caPem: home.caCertificate, crlPem: head.crl, tsaChainPem: await timeStampChain(services) },
     keys: await keyInputs(services),
@@ -45,7 +57,11 @@ export async function gatherBundle(services: Services, chosen: Chosen, scope: Bu
   }
 }
 
-async function entryInput(services: Services, { entry, events }: ChosenEntry, withoutRaw: boolean): Promise<EntryInput> {
+async function entryInput(
+  services: Services,
+  { entry, events }: ChosenEntry,
+  withoutRaw: boolean,
+): Promise<EntryInput> {
   const { db, storage } = services
   const signatures = await signaturesOf(db, [entry.id])
   const rendered: EntryInput['rendered'] = []
@@ -55,10 +71,23 @@ async function entryInput(services: Services, { entry, events }: ChosenEntry, wi
   return {
     entryId: entry.id,
     number: entryNumber(entry),
-    signatures: await signatureInputs(services, signatures.filter(({ voidedAt }) => voidedAt === null)),
-    voided: await signatureInputs(services, signatures.filter(({ voidedAt }) => voidedAt !== null)),
+    signatures: await signatureInputs(
+      services,
+      signatures.filter(({ voidedAt }) => voidedAt === null),
+    ),
+    voided: await signatureInputs(
+      services,
+      signatures.filter(({ voidedAt }) => voidedAt !== null),
+    ),
     rendered,
-    files: files.map(({ id, name, size, sha256, sha512 }) => ({ id, name, size, sha256, sha512, leftOut: withoutRaw })),
+    files: files.map(({ id, name, size, sha256, sha512 }) => ({
+      id,
+      name,
+      size,
+      sha256,
+      sha512,
+      leftOut: withoutRaw,
+    })),
     events,
   }
 }
@@ -79,12 +108,17 @@ async function signatureInputs(services: Services, rows: SignatureRow[]): Promis
 
 /** Certificates of every time-stamp authority ever used, each once, the newest authority's first. */
 async function timeStampChain(services: Services): Promise<string> {
-  const rows = await services.db.rows<{ chain: string }>('select chain from record.tsa_roots order by since desc')
-  const blocks = rows.flatMap(({ chain }) => chain.match(/-----BEGIN CERTIFICATE-----[^-]+-----END CERTIFICATE-----/g) ?? [])
+  const rows = await services.db.rows<{ chain: string }>(
+    'select chain from record.tsa_roots order by since desc',
+  )
+  const blocks = rows.flatMap(
+    ({ chain }) => chain.match(/-----BEGIN CERTIFICATE-----[^-]+-----END CERTIFICATE-----/g) ?? [],
+  )
   return `${[...new Set(blocks.map((block) => block.replace(/\s+$/gm, '')))].join('\n')}\n`
 }
 
 function checkerHtml(): Buffer {
-  if (!existsSync(fileURLToPath(checkerFile))) throw new Error('dist/check.html is missing: run `npm run build` first.')
+  if (!existsSync(fileURLToPath(checkerFile)))
+    throw new Error('dist/check.html is missing: run `npm run build` first.')
   return readFileSync(checkerFile)
 }

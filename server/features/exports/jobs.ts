@@ -5,5 +5,9 @@ import { buildExport } from './use-cases/build-export.ts'
 
 /** The job that builds bundles; two at once, since one may wait for its renditions. */
 export function exportJobs(services: Services): Job[] {
-  return [job('build-export', z.object({ exportId: z.uuid() }), ({ exportId }) => buildExport(services, exportId), { concurrency: 2 })]
+  return [
+    job('build-export', z.object({ exportId: z.uuid() }), ({ exportId }) => buildExport(services, exportId), {
+      concurrency: 2,
+    }),
+  ]
 }

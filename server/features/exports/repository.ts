@@ -28,14 +28,20 @@ export function findExport(db: Database, id: string, t?: Transaction): Promise<E
 }
 
 export function exportsOf(db: Database, personId: string): Promise<ExportRow[]> {
-  return db.rows<ExportRow>(`select ${EXPORT} from work.exports where person_id = :personId order by created_at desc limit 200`, {
-    personId,
-  })
+  return db.rows<ExportRow>(
+    `select ${EXPORT} from work.exports where person_id = :personId order by created_at desc limit 200`,
+    {
+      personId,
+    },
+  )
 }
 
 export async function insertExport(
   db: Database,
-  row: Pick<ExportRow, 'id' | 'personId' | 'notebookId' | 'entryIds' | 'withoutRaw' | 'createdAt' | 'expiresAt'>,
+  row: Pick<
+    ExportRow,
+    'id' | 'personId' | 'notebookId' | 'entryIds' | 'withoutRaw' | 'createdAt' | 'expiresAt'
+  >,
   t: Transaction,
 ): Promise<void> {
   await db.run(
@@ -46,7 +52,12 @@ export async function insertExport(
   )
 }
 
-export async function setStatus(db: Database, id: string, status: ExportRow['status'], error: ProblemBody | null = null): Promise<void> {
+export async function setStatus(
+  db: Database,
+  id: string,
+  status: ExportRow['status'],
+  error: ProblemBody | null = null,
+): Promise<void> {
   await db.run('update work.exports set status = :status, error = :error where id = :id', {
     id,
     status,
@@ -57,7 +68,14 @@ export async function setStatus(db: Database, id: string, status: ExportRow['sta
 export async function finishExport(
   db: Database,
   id: string,
-  done: { name: string; entryIds: string[]; objectKey: string; objectVersion: string | null; size: number; sha256: string },
+  done: {
+    name: string
+    entryIds: string[]
+    objectKey: string
+    objectVersion: string | null
+    size: number
+    sha256: string
+  },
   t: Transaction,
 ): Promise<void> {
   await db.run(

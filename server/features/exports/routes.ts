@@ -22,7 +22,9 @@ export function exportRoutes(services: Services): Route[] {
       const started = await present(services, await requireOwn(services, actor, id))
       return answer(started, { status: 202, headers: { location: `/api/v1/exports/${id}` } })
     }),
-    route(endpoints.getExport, async ({ actor, params }) => present(services, await requireOwn(services, actor, params.id))),
+    route(endpoints.getExport, async ({ actor, params }) =>
+      present(services, await requireOwn(services, actor, params.id)),
+    ),
     route(endpoints.getBundle, async ({ actor, params, res }) => {
       const row = await requireOwn(services, actor, params.id)
       await requireRights(services, actor, row)
@@ -45,8 +47,13 @@ export function exportRoutes(services: Services): Route[] {
 /** An export is its maker's alone; to everybody else, and after its time, it does not exist. */
 async function requireOwn(services: Services, actor: Actor, id: string): Promise<ExportRow> {
   const row = await findExport(services.db, id)
-  if (!row || row.personId !== actor.personId) throw new Problem('not-found', 'There is no such export, or it is not yours.')
-  if (row.expiresAt <= services.clock.now()) throw new Problem('not-found', 'This export has expired. Start it again; the same sealed state gives the same bundle.')
+  if (!row || row.personId !== actor.personId)
+    throw new Problem('not-found', 'There is no such export, or it is not yours.')
+  if (row.expiresAt <= services.clock.now())
+    throw new Problem(
+      'not-found',
+      'This export has expired. Start it again; the same sealed state gives the same bundle.',
+    )
   return row
 }
 

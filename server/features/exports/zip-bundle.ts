@@ -9,7 +9,11 @@ const IN_MEMORY_BYTES = 8_000_000
  * The bundle as a zip stream: stored, not compressed, in the bundle's order, with one date, so that the same bundle gives the
  * same bytes. Each raw file is opened when its turn comes; memory stays flat whatever their size.
  */
-export function zipBundle(bundle: Bundle, date: Date, openRaw: (fileId: string) => Promise<Readable>): Readable {
+export function zipBundle(
+  bundle: Bundle,
+  date: Date,
+  openRaw: (fileId: string) => Promise<Readable>,
+): Readable {
   const zip = new ZipArchive({ store: true })
   // Errors of parts are warnings to the library; a bundle with a part missing must not come into being.
   zip.on('warning', (error: Error) => zip.destroy(error))
@@ -17,7 +21,12 @@ export function zipBundle(bundle: Bundle, date: Date, openRaw: (fileId: string) 
   return zip
 }
 
-async function packAll(zip: ZipArchive, { files }: Bundle, date: Date, openRaw: (fileId: string) => Promise<Readable>): Promise<void> {
+async function packAll(
+  zip: ZipArchive,
+  { files }: Bundle,
+  date: Date,
+  openRaw: (fileId: string) => Promise<Readable>,
+): Promise<void> {
   for (const file of files) {
     const source = 'bytes' in file ? Buffer.from(file.bytes) : await rawSource(file, openRaw)
     await packed(zip, source, { name: file.path, date, mode: 0o644 })
@@ -25,7 +34,10 @@ async function packAll(zip: ZipArchive, { files }: Bundle, date: Date, openRaw: 
   await zip.finalize()
 }
 
-async function rawSource(file: { raw: string; size: string }, openRaw: (fileId: string) => Promise<Readable>): Promise<Buffer | Readable> {
+async function rawSource(
+  file: { raw: string; size: string },
+  openRaw: (fileId: string) => Promise<Readable>,
+): Promise<Buffer | Readable> {
   const stream = await openRaw(file.raw)
   if (Number(file.size) > IN_MEMORY_BYTES) return stream
   const parts: Buffer[] = []
@@ -34,7 +46,11 @@ async function rawSource(file: { raw: string; size: string }, openRaw: (fileId: 
 }
 
 /** Resolves when the entry is written: the next raw stream is not opened before. */
-function packed(zip: ZipArchive, source: Buffer | Readable, entry: { name: string; date: Date; mode: number }): Promise<void> {
+function packed(
+  zip: ZipArchive,
+  source: Buffer | Readable,
+  entry: { name: string; date: Date; mode: number },
+): Promise<void> {
   return new Promise((resolve, reject) => {
     if (source instanceof Readable) source.once('error', reject)
     zip.once('error', reject)

@@ -21,7 +21,10 @@ export function readDeclared(header: (name: string) => string | undefined): Decl
 /** Refuses an upload that is empty, cut short or changed on the way; the caller removes what arrived. */
 export function requireAsDeclared(received: Received, declared: Declared): void {
   if (received.size === 0)
-    throw new Problem('upload-refused', `${received.name} is empty: it has no bytes. Nothing was kept; check the file on the acquisition computer.`)
+    throw new Problem(
+      'upload-refused',
+      `${received.name} is empty: it has no bytes. Nothing was kept; check the file on the acquisition computer.`,
+    )
   if (declared.size !== null && declared.size !== received.size)
     throw new Problem(
       'upload-refused',

@@ -27,8 +27,16 @@ export function presentReading(file: FileRow): Reading {
 }
 
 /** Files as the caller sees them, with a word where the same bytes are here already. */
-export async function presentFiles(services: Services, actor: Actor, files: readonly FileRow[]): Promise<RawFile[]> {
-  const twins = await filesWithSameBytes(services.db, [...new Set(files.map((file) => file.sha256))], actor.personId)
+export async function presentFiles(
+  services: Services,
+  actor: Actor,
+  files: readonly FileRow[],
+): Promise<RawFile[]> {
+  const twins = await filesWithSameBytes(
+    services.db,
+    [...new Set(files.map((file) => file.sha256))],
+    actor.personId,
+  )
   return files.map((file) => ({
     id: file.id,
     entryId: file.entryId,

@@ -41,7 +41,10 @@ export default async function read(task: ReadingTask): Promise<StoredReading> {
 
 async function findWay(task: ReadingTask): Promise<Way | { unreadable: string }> {
   if (task.choice !== null) return { ...task.choice, version: formatVersion(task.choice.format), doubt: null }
-  const head = await store.getBytes(task.objectKey, task.objectVersion ?? undefined, { offset: 0, length: HEAD_BYTES })
+  const head = await store.getBytes(task.objectKey, task.objectVersion ?? undefined, {
+    offset: 0,
+    length: HEAD_BYTES,
+  })
   const found = detectReading(head, task.name)
   if ('unreadable' in found) return found
   const { format, version, options, doubt } = found
@@ -50,7 +53,8 @@ async function findWay(task: ReadingTask): Promise<Way | { unreadable: string }>
 
 async function parse(task: ReadingTask, way: Way): Promise<Reading> {
   const parser = createParser(way.format, way.version, way.options)
-  for await (const chunk of await store.get(task.objectKey, task.objectVersion ?? undefined)) parser.push(chunk as Uint8Array)
+  for await (const chunk of await store.get(task.objectKey, task.objectVersion ?? undefined))
+    parser.push(chunk as Uint8Array)
   return parser.finish()
 }
 
@@ -98,5 +102,7 @@ function summarise(reading: Reading): ReadingSummary {
 
 /** Picoseconds as the interface gives them: a number below 2^53, else digits. */
 function plain(ps: bigint): number | string {
-  return ps > BigInt(Number.MAX_SAFE_INTEGER) || ps < BigInt(Number.MIN_SAFE_INTEGER) ? String(ps) : Number(ps)
+  return ps > BigInt(Number.MAX_SAFE_INTEGER) || ps < BigInt(Number.MIN_SAFE_INTEGER)
+    ? String(ps)
+    : Number(ps)
 }

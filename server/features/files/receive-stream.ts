@@ -19,18 +19,28 @@ export interface Received {
  * Streams the one multipart field `file` into the store under `raw/<fileId>`; memory stays flat whatever the size.
  * Refuses what is too large or has another form, and leaves nothing behind when the upload breaks off.
  */
-export async function receiveStream(storage: ObjectStore, maxBytes: number, req: Request, res: Response): Promise<Received> {
+export async function receiveStream(
+  storage: ObjectStore,
+  maxBytes: number,
+  req: Request,
+  res: Response,
+): Promise<Received> {
   const upload = multer({
     storage: storeEngine(storage),
     defParamCharset: 'utf8',
     limits: { fileSize: maxBytes, files: 1, fields: 8, fieldSize: 4096, parts: 10, headerPairs: 50 },
   }).single('file')
   await new Promise<void>((resolve, reject) => {
-    upload(req, res, (error: unknown) => (error === undefined || error === null ? resolve() : reject(asProblem(error, maxBytes))))
+    upload(req, res, (error: unknown) =>
+      error === undefined || error === null ? resolve() : reject(asProblem(error, maxBytes)),
+    )
   })
   const received = (req as Request & { file?: Received & Express.Multer.File }).file
   if (received === undefined)
-    throw new Problem('upload-refused', 'No file came with the request. Send it as multipart/form-data in the field `file`.')
+    throw new Problem(
+      'upload-refused',
+      'No file came with the request. Send it as multipart/form-data in the field `file`.',
+    )
   return received
 }
 
@@ -84,12 +94,21 @@ export function cleanName(name: string): string {
 function asProblem(error: unknown, maxBytes: number): unknown {
   const code = (error as { code?: string }).code
   if (code === 'LIMIT_FILE_SIZE')
-    return new Problem('too-large', `The file is larger than ${maxBytes} bytes, the limit of this laboratory. Nothing was kept.`)
+    return new Problem(
+      'too-large',
+      `The file is larger than ${maxBytes} bytes, the limit of this laboratory. Nothing was kept.`,
+    )
   if (code === 'LIMIT_UNEXPECTED_FILE' || code === 'LIMIT_FILE_COUNT')
     return new Problem('upload-refused', 'Send one file at a time in the field `file`. Nothing was kept.')
   if (code?.startsWith('LIMIT_'))
-    return new Problem('upload-refused', 'The upload has more parts than an upload here needs. Nothing was kept.')
+    return new Problem(
+      'upload-refused',
+      'The upload has more parts than an upload here needs. Nothing was kept.',
+    )
   if (/unexpected end of form|malformed part|boundary not found/i.test(String((error as Error).message)))
-    return new Problem('upload-refused', 'The upload broke off before its end. Nothing was kept; send the file again.')
+    return new Problem(
+      'upload-refused',
+      'The upload broke off before its end. Nothing was kept; send the file again.',
+    )
   return error
 }

@@ -60,7 +60,11 @@ export function filesOfEntry(db: Database, entryId: string, t?: Transaction): Pr
 
 export function filesOfRuns(db: Database, runIds: readonly string[], t?: Transaction): Promise<FileRow[]> {
   if (runIds.length === 0) return Promise.resolve([])
-  return db.rows<FileRow>(`select ${FILE} ${FROM} where f.run_id in (:runIds) order by f.uploaded_at, f.id`, { runIds }, t)
+  return db.rows<FileRow>(
+    `select ${FILE} ${FROM} where f.run_id in (:runIds) order by f.uploaded_at, f.id`,
+    { runIds },
+    t,
+  )
 }
 
 /** Files with the same bytes in notebooks of this person; nothing tells of files elsewhere. */
@@ -105,7 +109,12 @@ export async function insertFile(db: Database, file: NewFile, t: Transaction): P
   )
 }
 
-export async function setFileState(db: Database, id: string, state: FileRow['state'], t?: Transaction): Promise<void> {
+export async function setFileState(
+  db: Database,
+  id: string,
+  state: FileRow['state'],
+  t?: Transaction,
+): Promise<void> {
   await db.run(`update work.files set state = :state where id = :id`, { id, state }, t)
 }
 

@@ -14,11 +14,17 @@ const SHOWN_TYPES: Record<string, string> = {
 }
 
 /** Sends the bytes as uploaded, whole or one range of them, in a form that no browser runs at our origin (threat B12). */
-export async function sendContent(services: Services, file: FileRow, req: Request, res: Response): Promise<void> {
+export async function sendContent(
+  services: Services,
+  file: FileRow,
+  req: Request,
+  res: Response,
+): Promise<void> {
   const size = Number(file.size)
   const range = parseRange(req.get('range'), size)
   res.set({
-    'content-type': SHOWN_TYPES[file.name.split('.').at(-1)?.toLowerCase() ?? ''] ?? 'application/octet-stream',
+    'content-type':
+      SHOWN_TYPES[file.name.split('.').at(-1)?.toLowerCase() ?? ''] ?? 'application/octet-stream',
     'content-disposition': disposition(file.name),
     'content-security-policy': "sandbox; default-src 'none'",
     'x-content-type-options': 'nosniff',
@@ -27,7 +33,13 @@ export async function sendContent(services: Services, file: FileRow, req: Reques
     etag: `"${file.sha256}"`,
   })
   if (range === null) res.set('content-length', file.size)
-  else res.status(206).set({ 'content-range': `bytes ${range.first}-${range.last}/${size}`, 'content-length': String(range.last - range.first + 1) })
+  else
+    res
+      .status(206)
+      .set({
+        'content-range': `bytes ${range.first}-${range.last}/${size}`,
+        'content-length': String(range.last - range.first + 1),
+      })
   const bytes = await services.storage.get(
     file.objectKey,
     file.objectVersion ?? undefined,
@@ -43,7 +55,10 @@ export function parseRange(header: string | undefined, size: number): { first: n
   const first = match[1] === '' ? Math.max(0, size - Number(match[2])) : Number(match[1])
   const last = match[1] === '' || match[2] === '' ? size - 1 : Math.min(Number(match[2]), size - 1)
   if (first >= size || first > last)
-    throw new Problem('range-not-satisfiable', `The file has ${size} bytes; the range asked for lies outside.`)
+    throw new Problem(
+      'range-not-satisfiable',
+      `The file has ${size} bytes; the range asked for lies outside.`,
+    )
   return { first, last }
 }
 

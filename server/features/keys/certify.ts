@@ -26,7 +26,12 @@ export async function certify(
       t,
     )
     const payload = { enrolmentSha256: old.enrolmentSha256, reason: 'superseded' }
-    await appendEvent(services, t, { actor: systemActor, action: 'key.revoked', subject: subject(old.enrolmentId), payload })
+    await appendEvent(services, t, {
+      actor: systemActor,
+      action: 'key.revoked',
+      subject: subject(old.enrolmentId),
+      payload,
+    })
   }
   const certificate = await issueCertificate(
     await certificateAuthority(services, t),

@@ -19,18 +19,31 @@ export async function keyInputs(services: Pick<Services, 'db'>, t?: Transaction)
     {},
     t,
   )
-  const events = await eventsOf(services, rows.map(({ id }) => ({ kind: 'key', id })), t)
+  const events = await eventsOf(
+    services,
+    rows.map(({ id }) => ({ kind: 'key', id })),
+    t,
+  )
   return rows.map((row) => ({
     enrolment: row.document,
     enrolmentSignature: row.signature,
     endorsement:
-      row.endorsement && row.endorsementSignature ? { document: row.endorsement, signature: row.endorsementSignature } : null,
+      row.endorsement && row.endorsementSignature
+        ? { document: row.endorsement, signature: row.endorsementSignature }
+        : null,
     events: events.filter(({ subject }) => subject.id === row.id),
   }))
 }
 
 /** SHA-256 of the first manager's enrolment; null before it. */
-export async function rootEnrolmentSha256(services: Pick<Services, 'db'>, t?: Transaction): Promise<string | null> {
-  const row = await services.db.row<{ sha256: string }>('select sha256 from record.enrolments where root', {}, t)
+export async function rootEnrolmentSha256(
+  services: Pick<Services, 'db'>,
+  t?: Transaction,
+): Promise<string | null> {
+  const row = await services.db.row<{ sha256: string }>(
+    'select sha256 from record.enrolments where root',
+    {},
+    t,
+  )
   return row?.sha256 ?? null
 }

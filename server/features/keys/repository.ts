@@ -70,7 +70,11 @@ export interface PersonToSign {
 
 /** An active person, the row locked until the transaction ends: whatever concerns their keys comes one after another. */
 export function lockPerson(db: Database, id: string, t: Transaction): Promise<PersonToSign | null> {
-  return db.row<PersonToSign>(`select id, name, email, roles from work.people where id = :id and active for no key update`, { id }, t)
+  return db.row<PersonToSign>(
+    `select id, name, email, roles from work.people where id = :id and active for no key update`,
+    { id },
+    t,
+  )
 }
 
 /** Mail addresses of active managers. */
@@ -121,7 +125,17 @@ export async function takePending(
 
 export async function insertEnrolment(
   db: Database,
-  row: Pick<KeyRow, 'enrolmentId' | 'personId' | 'enrolmentSha256' | 'document' | 'signature' | 'publicKey' | 'root' | 'enrolledAt'>,
+  row: Pick<
+    KeyRow,
+    | 'enrolmentId'
+    | 'personId'
+    | 'enrolmentSha256'
+    | 'document'
+    | 'signature'
+    | 'publicKey'
+    | 'root'
+    | 'enrolledAt'
+  >,
   t: Transaction,
 ): Promise<void> {
   await db.run(
@@ -134,7 +148,14 @@ export async function insertEnrolment(
 
 export async function insertSigningKey(
   db: Database,
-  row: { enrolmentId: string; personId: string; kdf: Kdf; wrappedKey: Buffer; iv: Buffer; proofDigest: Buffer },
+  row: {
+    enrolmentId: string
+    personId: string
+    kdf: Kdf
+    wrappedKey: Buffer
+    iv: Buffer
+    proofDigest: Buffer
+  },
   t: Transaction,
 ): Promise<void> {
   await db.run(
@@ -147,7 +168,13 @@ export async function insertSigningKey(
 
 /** What opens a key, with the row locked: parallel guesses are counted one after another. */
 export function lockSigningKey(db: Database, enrolmentId: string, t: Transaction) {
-  return db.row<{ wrappedKey: Buffer; iv: Buffer; proofDigest: Buffer; failures: number; lockedUntil: Date | null }>(
+  return db.row<{
+    wrappedKey: Buffer
+    iv: Buffer
+    proofDigest: Buffer
+    failures: number
+    lockedUntil: Date | null
+  }>(
     `select wrapped_key as "wrappedKey", iv, proof_digest as "proofDigest", failures, locked_until as "lockedUntil"
      from work.signing_keys where enrolment_id = :enrolmentId for update`,
     { enrolmentId },

@@ -15,7 +15,9 @@ const bytes = (base64: string) => Buffer.from(base64, 'base64')
 /** Enrolment, unlocking and endorsement of signing keys. */
 export function keyRoutes(services: Services): Route[] {
   return [
-    route(endpoints.getSigningKey, async ({ actor }) => answer(await presentKey(services, actor.personId), noStore)),
+    route(endpoints.getSigningKey, async ({ actor }) =>
+      answer(await presentKey(services, actor.personId), noStore),
+    ),
     route(endpoints.prepareEnrolment, async ({ actor, body }) => {
       const prepared = await prepareEnrolment(services, actor.personId, bytes(body.publicKey))
       return answer(prepared, { status: 201, ...noStore })
@@ -51,7 +53,10 @@ export function keyRoutes(services: Services): Route[] {
     ),
     route(endpoints.putEndorsement, async ({ actor, params, body }) => {
       const { endorsementId } = params
-      await endorseKey(services, actor.personId, params.id, { endorsementId, signature: bytes(body.signature) })
+      await endorseKey(services, actor.personId, params.id, {
+        endorsementId,
+        signature: bytes(body.signature),
+      })
       return { status: (await presentKey(services, params.id)).status }
     }),
   ]
@@ -61,7 +66,15 @@ async function presentKey(services: Services, personId: string): Promise<Signing
   const now = services.clock.now()
   const key = currentKey(await keysOf(services.db, [personId]), now)
   if (!key)
-    return { status: 'none', publicKey: null, certificate: null, kdf: null, enrolmentSha256: null, lockedUntil: null, expiresAt: null }
+    return {
+      status: 'none',
+      publicKey: null,
+      certificate: null,
+      kdf: null,
+      enrolmentSha256: null,
+      lockedUntil: null,
+      expiresAt: null,
+    }
   const status = keyStatus(key, now)
   return {
     status,

@@ -3,12 +3,18 @@ import type { Services } from '../../platform/services.ts'
 import { currentKey, keysOf, keyStatus, type KeyRow, type KeyStatus } from './repository.ts'
 
 /** State of the signing key of each person; a person without a key has `none`. */
-export async function signingKeyStatuses(services: Pick<Services, 'db' | 'clock'>, personIds: readonly string[]): Promise<Map<string, KeyStatus>> {
+export async function signingKeyStatuses(
+  services: Pick<Services, 'db' | 'clock'>,
+  personIds: readonly string[],
+): Promise<Map<string, KeyStatus>> {
   const now = services.clock.now()
   const keys = await keysOf(services.db, personIds)
   return new Map(
     personIds.map((id) => {
-      const key = currentKey(keys.filter(({ personId }) => personId === id), now)
+      const key = currentKey(
+        keys.filter(({ personId }) => personId === id),
+        now,
+      )
       return [id, key ? keyStatus(key, now) : 'none']
     }),
   )
@@ -26,5 +32,7 @@ export async function keyInForce(
   const now = services.clock.now()
   const key = currentKey(await keysOf(services.db, [personId], t), now)
   const status = key ? keyStatus(key, now) : 'none'
-  return key && (status === 'active' || status === 'locked') ? { key: key as CertifiedKey } : { key: null, status }
+  return key && (status === 'active' || status === 'locked')
+    ? { key: key as CertifiedKey }
+    : { key: null, status }
 }

@@ -39,7 +39,10 @@ export async function createAuthority(
       await x509.SubjectKeyIdentifierExtension.create(keys.publicKey),
     ],
   })
-  return { certificate: describe(certificate), privateKey: Buffer.from(await webcrypto.subtle.exportKey('pkcs8', keys.privateKey)) }
+  return {
+    certificate: describe(certificate),
+    privateKey: Buffer.from(await webcrypto.subtle.exportKey('pkcs8', keys.privateKey)),
+  }
 }
 
 /** The authority opened for signing. */
@@ -59,7 +62,9 @@ export async function issueCertificate(
   person: { name: string; subjectId: string; publicKey: Uint8Array },
   now: Date,
 ): Promise<IssuedCertificate> {
-  const publicKey = await webcrypto.subtle.importKey('raw', Buffer.from(person.publicKey), algorithm, true, ['verify'])
+  const publicKey = await webcrypto.subtle.importKey('raw', Buffer.from(person.publicKey), algorithm, true, [
+    'verify',
+  ])
   const certificate = await x509.X509CertificateGenerator.create({
     serialNumber: newSerial(),
     subject: named(person.name, person.subjectId),
@@ -70,7 +75,10 @@ export async function issueCertificate(
     signingAlgorithm: algorithm,
     extensions: [
       new x509.BasicConstraintsExtension(false, undefined, true),
-      new x509.KeyUsagesExtension(x509.KeyUsageFlags.digitalSignature | x509.KeyUsageFlags.nonRepudiation, true),
+      new x509.KeyUsagesExtension(
+        x509.KeyUsageFlags.digitalSignature | x509.KeyUsageFlags.nonRepudiation,
+        true,
+      ),
       await x509.AuthorityKeyIdentifierExtension.create(authority.certificate.publicKey),
     ],
   })
@@ -116,12 +124,15 @@ function describe(certificate: x509.X509Certificate): IssuedCertificate {
 
 /** PEM in lines of 64, under the label that OpenSSL knows. */
 export function pemOf(label: string, der: ArrayBuffer | Uint8Array): string {
-  const text = Buffer.from(der as Uint8Array).toString('base64').replace(/.{64}(?=.)/g, '$&\n')
+  const text = Buffer.from(der as Uint8Array)
+    .toString('base64')
+    .replace(/.{64}(?=.)/g, '$&\n')
   return `-----BEGIN ${label}-----\n${text}\n-----END ${label}-----\n`
 }
 
 // UTF8String whatever the letters: a name is compared byte for byte by the checkers.
-const named = (name: string, id: string) => new x509.Name([{ CN: [{ utf8String: name }] }, { [uid]: [{ utf8String: id }] }])
+const named = (name: string, id: string) =>
+  new x509.Name([{ CN: [{ utf8String: name }] }, { [uid]: [{ utf8String: id }] }])
 const wholeSecond = (time: Date) => new Date(Math.floor(time.getTime() / 1000) * 1000)
 // First byte below 0x80: a serial number is positive.
 const newSerial = () => Buffer.concat([Buffer.of(0x4a), randomBytes(15)]).toString('hex')

@@ -6,7 +6,7 @@ import { makeHead } from './heads.ts'
 import { registerTimeStampRoots, stampAllMissing, stampJobs } from './stamps.ts'
 
 const DAY_S = 86_400
-const HOUR_S = 3600
+const HOUR_MS = 3_600_000
 
 /**
  * The jobs of the laboratory: stamps, and once an hour a look at whether the day's head was made and every stamp has come.
@@ -16,7 +16,7 @@ export function laboratoryJobs(services: Services): Job[] {
   return [
     ...stampJobs(services),
     job('check-heads', z.object({}), async () => {
-      await scheduleHeadChecks(services, HOUR_S)
+      await scheduleNext(services)
       await registerTimeStampRoots(services)
       await makeDailyHead(services)
       await stampAllMissing(services)
@@ -24,10 +24,16 @@ export function laboratoryJobs(services: Services): Job[] {
   ]
 }
 
-/** Starts the hourly look; at most one waits at any time. */
-export async function scheduleHeadChecks(services: Services, afterS = 0): Promise<void> {
-  if (!(await findLaboratory(services))) return
-  await services.queue.send('check-heads', {}, { startAfter: afterS, singletonKey: 'hourly', singletonSeconds: HOUR_S / 2 })
+/** Starts the hourly look. */
+export async function scheduleHeadChecks(services: Services): Promise<void> {
+  if (await findLaboratory(services)) await services.queue.send('check-heads', {})
+}
+
+/** The next look at the full hour; several processes that ask for it get one. */
+async function scheduleNext(services: Services): Promise<void> {
+  const startAfter = new Date((Math.floor(Date.now() / HOUR_MS) + 1) * HOUR_MS)
+  const singletonKey = startAfter.toISOString()
+  await services.queue.send('check-heads', {}, { startAfter, singletonKey, singletonSeconds: DAY_S })
 }
 
 async function makeDailyHead(services: Services): Promise<void> {

@@ -18,7 +18,10 @@ export interface Laboratory {
 const known = new WeakMap<object, Laboratory>()
 
 /** The one laboratory of this database, read once per process; null before it is opened. */
-export async function findLaboratory(services: Pick<Services, 'db'>, t?: Transaction): Promise<Laboratory | null> {
+export async function findLaboratory(
+  services: Pick<Services, 'db'>,
+  t?: Transaction,
+): Promise<Laboratory | null> {
   const cached = known.get(services.db)
   if (cached) return cached
   const row = await services.db.row<Omit<Laboratory, 'caSha256'>>(

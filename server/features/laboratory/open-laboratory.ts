@@ -17,7 +17,8 @@ export async function openLaboratory(
   services: Pick<Services, 'db' | 'clock' | 'config'>,
   given: { name: string; demo: boolean },
 ): Promise<Laboratory> {
-  if (await findLaboratory(services)) throw new Error('This database holds a laboratory already; nothing was changed.')
+  if (await findLaboratory(services))
+    throw new Error('This database holds a laboratory already; nothing was changed.')
   const id = randomUUID()
   const now = services.clock.now()
   const authority = await createAuthority({ id, name: given.name }, now)
@@ -27,7 +28,9 @@ export async function openLaboratory(
   const chain = readFileSync(services.config.timeStamps.chainFile, 'utf8')
   const [tsaRootSha256, ...furtherRoots] = rootDigests(chain)
   if (!tsaRootSha256 || furtherRoots.length > 0)
-    throw new Error(`TSA_CHAIN_FILE must hold exactly one root; ${services.config.timeStamps.chainFile} holds another number.`)
+    throw new Error(
+      `TSA_CHAIN_FILE must hold exactly one root; ${services.config.timeStamps.chainFile} holds another number.`,
+    )
 
   const stored: Parameters<typeof storeKey>[1][] = []
   try {
@@ -42,12 +45,19 @@ export async function openLaboratory(
          values (:id, :name, :demo, :zone, :certificate, :now)`,
         { id, ...given, zone: services.config.laboratory.zone, certificate: authority.certificate.pem, now },
       )
-      await run(`insert into record.ledger_keys (sha256, position, public_key, since) values (:keySha256, 1, :publicKey, :now)`, {
-        keySha256,
-        publicKey: Buffer.from(publicKey),
+      await run(
+        `insert into record.ledger_keys (sha256, position, public_key, since) values (:keySha256, 1, :publicKey, :now)`,
+        {
+          keySha256,
+          publicKey: Buffer.from(publicKey),
+          now,
+        },
+      )
+      await run(`insert into record.tsa_roots (sha256, chain, since) values (:tsaRootSha256, :chain, :now)`, {
+        tsaRootSha256,
+        chain,
         now,
       })
-      await run(`insert into record.tsa_roots (sha256, chain, since) values (:tsaRootSha256, :chain, :now)`, { tsaRootSha256, chain, now })
       const payload = {
         laboratory: id,
         demo: given.demo,
@@ -55,7 +65,12 @@ export async function openLaboratory(
         ledgerKeySha256: keySha256,
         tsaRootSha256,
       }
-      await appendEvent(services, t, { actor: systemActor, action: 'laboratory.opened', subject: { kind: 'laboratory', id }, payload })
+      await appendEvent(services, t, {
+        actor: systemActor,
+        action: 'laboratory.opened',
+        subject: { kind: 'laboratory', id },
+        payload,
+      })
     })
   } catch (error) {
     for (const name of stored) removeKey(services.config, name)

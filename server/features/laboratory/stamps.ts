@@ -17,16 +17,28 @@ const CLOCK_ALARM_MS = 60_000
 export const signatureDigest = (signature: Uint8Array) => createHash('sha256').update(signature).digest('hex')
 
 /** Stamps a signature unless it has a stamp; throws while the authority cannot be reached or answers wrongly. */
-export async function stamp(services: Needs, signature: Uint8Array, timeoutMs = JOB_TIMEOUT_MS): Promise<void> {
+export async function stamp(
+  services: Needs,
+  signature: Uint8Array,
+  timeoutMs = JOB_TIMEOUT_MS,
+): Promise<void> {
   const signatureSha256 = signatureDigest(signature)
   const { url, chainFile, independent } = services.config.timeStamps
-  const found = await services.db.row('select 1 as one from record.time_stamps where signature_sha256 = :signatureSha256', { signatureSha256 })
+  const found = await services.db.row(
+    'select 1 as one from record.time_stamps where signature_sha256 = :signatureSha256',
+    { signatureSha256 },
+  )
   if (found) return
   const transport = services.timeStamps ?? httpTransport(url, timeoutMs)
-  const { response, genTime, authority } = await requestTimeStamp(signature, transport, readFileSync(chainFile, 'utf8'))
+  const { response, genTime, authority } = await requestTimeStamp(
+    signature,
+    transport,
+    readFileSync(chainFile, 'utf8'),
+  )
   const now = services.clock.now()
   const apart = Math.abs(genTime.getTime() - now.getTime())
-  if (apart > CLOCK_ALARM_MS) services.log.error({ apartMs: apart }, 'the time-stamp authority and this server disagree about the time')
+  if (apart > CLOCK_ALARM_MS)
+    services.log.error({ apartMs: apart }, 'the time-stamp authority and this server disagree about the time')
   await services.db.run(
     `insert into record.time_stamps (signature_sha256, token, gen_time, authority, independent, stamped_at)
      values (:signatureSha256, :token, :genTime, :authority, :independent, :now) on conflict do nothing`,
@@ -63,7 +75,12 @@ export async function registerTimeStampRoots(services: Needs): Promise<void> {
       )
       if (added === 0) return
       const payload = { tsaRootSha256: sha256 }
-      await appendEvent(services, t, { actor: systemActor, action: 'ledger.tsa-added', subject: { kind: 'laboratory', id }, payload })
+      await appendEvent(services, t, {
+        actor: systemActor,
+        action: 'ledger.tsa-added',
+        subject: { kind: 'laboratory', id },
+        payload,
+      })
     })
   }
 }
@@ -72,11 +89,17 @@ export async function registerTimeStampRoots(services: Needs): Promise<void> {
 export function stampJobs(services: Needs): Job[] {
   return [
     job('stamp-signature', z.object({ signatureId: z.uuid() }), async ({ signatureId }) => {
-      const row = await services.db.row<{ signature: Buffer }>('select signature from record.signatures where id = :signatureId', { signatureId })
+      const row = await services.db.row<{ signature: Buffer }>(
+        'select signature from record.signatures where id = :signatureId',
+        { signatureId },
+      )
       if (row) await stamp(services, row.signature)
     }),
     job('stamp-head', z.object({ treeSize: z.int() }), async ({ treeSize }) => {
-      const row = await services.db.row<{ signature: Buffer }>('select signature from record.heads where tree_size = :treeSize', { treeSize })
+      const row = await services.db.row<{ signature: Buffer }>(
+        'select signature from record.heads where tree_size = :treeSize',
+        { treeSize },
+      )
       if (row) await stamp(services, row.signature)
     }),
   ]

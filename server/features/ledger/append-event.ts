@@ -104,7 +104,11 @@ function lastOfSubject(services: Pick<Services, 'db'>, t: Transaction, { kind, i
 }
 
 /** A restored ledger goes on in a new epoch (rulings 32); every event keeps that of the event before. */
-async function currentEpoch(services: Pick<Services, 'db'>, t: Transaction, state: LedgerState): Promise<number> {
+async function currentEpoch(
+  services: Pick<Services, 'db'>,
+  t: Transaction,
+  state: LedgerState,
+): Promise<number> {
   const last = await services.db.row<{ epoch: string }>(
     `select convert_from(canonical, 'UTF8')::jsonb ->> 'epoch' as epoch from record.events where sequence = :last`,
     { last: state.tree_size },

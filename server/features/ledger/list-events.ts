@@ -39,7 +39,11 @@ const ofOwnNotebooks = `(
  * Events newest first, with the names that the events themselves do not hold. Auditors and managers see all of them, others
  * those of notebooks they may read and of themselves.
  */
-export async function listEvents(services: Pick<Services, 'db'>, reader: Reader, wanted: Wanted): Promise<NamedEvent[]> {
+export async function listEvents(
+  services: Pick<Services, 'db'>,
+  reader: Reader,
+  wanted: Wanted,
+): Promise<NamedEvent[]> {
   const seesAll = reader.roles.some((role) => role === 'auditor' || role === 'manager')
   if (reader.roles.length === 0) return []
   const rows = await services.db.rows<Row>(
@@ -69,5 +73,8 @@ export async function listEvents(services: Pick<Services, 'db'>, reader: Reader,
       seesAll,
     },
   )
-  return rows.map(({ canonical, ...rest }) => ({ ...(parseCanonical(canonical) as unknown as LedgerEventView), ...rest }))
+  return rows.map(({ canonical, ...rest }) => ({
+    ...(parseCanonical(canonical) as unknown as LedgerEventView),
+    ...rest,
+  }))
 }

@@ -8,7 +8,11 @@ import type { Services } from '../../platform/services.ts'
 type Needs = Pick<Services, 'db'>
 
 /** All events of the given subjects, by sequence. */
-export async function eventsOf(services: Needs, subjects: readonly Subject[], t?: Transaction): Promise<LedgerEvent[]> {
+export async function eventsOf(
+  services: Needs,
+  subjects: readonly Subject[],
+  t?: Transaction,
+): Promise<LedgerEvent[]> {
   if (subjects.length === 0) return []
   const rows = await services.db.rows<{ canonical: Buffer }>(
     `select canonical from record.events where (subject_kind, subject_id) in
@@ -35,7 +39,10 @@ export async function chainEnd(
 }
 
 /** The newest event: sequence and leaf hash, which tells nothing of what it is. */
-export async function newestEvent(services: Needs, t?: Transaction): Promise<{ sequence: number; leafHash: string }> {
+export async function newestEvent(
+  services: Needs,
+  t?: Transaction,
+): Promise<{ sequence: number; leafHash: string }> {
   const row = await services.db.row<{ sequence: string; leafHash: string }>(
     `select sequence, leaf_hash as "leafHash" from record.events order by sequence desc limit 1`,
     {},

@@ -8,7 +8,8 @@ import { listEvents } from './list-events.ts'
 import { merkleTree } from './read-events.ts'
 import { verifyLedger } from './verify-ledger.ts'
 
-const noHead = 'There is no such signed head. The first is made when the first manager has enrolled a key and an entry is sealed.'
+const noHead =
+  'There is no such signed head. The first is made when the first manager has enrolled a key and an entry is sealed.'
 
 /** Events, heads and proofs of the ledger, and its full check. */
 export function ledgerRoutes(services: Services): Route[] {
@@ -16,7 +17,8 @@ export function ledgerRoutes(services: Services): Route[] {
     route(endpoints.listEvents, async ({ actor, query }) => {
       const { limit, action, subject } = query
       const before = query.cursor === undefined ? Number.MAX_SAFE_INTEGER : Number(query.cursor)
-      if (!Number.isSafeInteger(before)) throw new Problem('invalid-values', 'The cursor is not one of this list.')
+      if (!Number.isSafeInteger(before))
+        throw new Problem('invalid-values', 'The cursor is not one of this list.')
       const items = await listEvents(services, actor, { limit: limit + 1, before, action, subject })
       const page = items.slice(0, limit)
       return { items: page, nextCursor: items.length > limit ? String(page.at(-1)?.sequence) : null }
@@ -32,7 +34,11 @@ export function ledgerRoutes(services: Services): Route[] {
     }),
     route(endpoints.getAnchors, async () => {
       const found = await anchors(services)
-      if (!found) throw new Problem('not-found', 'The laboratory has no anchors until its first manager has enrolled a key.')
+      if (!found)
+        throw new Problem(
+          'not-found',
+          'The laboratory has no anchors until its first manager has enrolled a key.',
+        )
       return found
     }),
     route(endpoints.getConsistency, async ({ query: { from, to } }) => {
@@ -47,7 +53,8 @@ export function ledgerRoutes(services: Services): Route[] {
       const tree = await merkleTree(services)
       const newest = (await findHead(services))?.head.treeSize ?? tree.size
       const treeSize = query.treeSize ?? (newest >= seq ? newest : tree.size)
-      if (seq > treeSize || treeSize > tree.size) throw new Problem('not-found', `The tree of ${treeSize} events has no event ${seq}.`)
+      if (seq > treeSize || treeSize > tree.size)
+        throw new Problem('not-found', `The tree of ${treeSize} events has no event ${seq}.`)
       return {
         sequence: seq,
         leafHash: toHex(tree.leaf(seq - 1)),

@@ -7,7 +7,8 @@ import { findMembership } from './repository.ts'
 
 const REFUSALS: Record<NotebookRight, string> = {
   read: 'You may not read this notebook.',
-  write: 'You may read this notebook but not write in it. Its keeper can give you the role of experimentalist or supervisor.',
+  write:
+    'You may read this notebook but not write in it. Its keeper can give you the role of experimentalist or supervisor.',
   keep: 'Only the keeper of the notebook may do this.',
   witness: 'Only a supervisor of this notebook may do this.',
   export: 'Your role in this notebook does not include exporting.',
@@ -26,7 +27,8 @@ export async function requireNotebook(
 ): Promise<Set<NotebookRight>> {
   const membership = await findMembership(services.db, notebookId, actor.personId, t)
   const rights = notebookRights(actor.roles, membership)
-  if (!rights.has('read')) throw new Problem('not-found', 'There is no such notebook, or you may not read it.')
+  if (!rights.has('read'))
+    throw new Problem('not-found', 'There is no such notebook, or you may not read it.')
   if (!rights.has(right)) throw new Problem('not-allowed', REFUSALS[right])
   return rights
 }

@@ -28,7 +28,12 @@ export function notebookNumber(number: number): string {
 }
 
 /** Notebooks in which the person is a member, by number, after the cursor. */
-export function notebooksOf(db: Database, personId: string, after: number, limit: number): Promise<NotebookRow[]> {
+export function notebooksOf(
+  db: Database,
+  personId: string,
+  after: number,
+  limit: number,
+): Promise<NotebookRow[]> {
   return db.rows<NotebookRow>(
     `select ${NOTEBOOK} from work.notebooks n join work.members m on m.notebook_id = n.id
      where m.person_id = :personId and n.number > :after order by n.number limit :limit`,
@@ -40,7 +45,11 @@ export function findNotebook(db: Database, id: string, t?: Transaction): Promise
   return db.row<NotebookRow>(`select ${NOTEBOOK} from work.notebooks n where n.id = :id`, { id }, t)
 }
 
-export function membersOf(db: Database, notebookIds: readonly string[], t?: Transaction): Promise<MemberRow[]> {
+export function membersOf(
+  db: Database,
+  notebookIds: readonly string[],
+  t?: Transaction,
+): Promise<MemberRow[]> {
   if (notebookIds.length === 0) return Promise.resolve([])
   return db.rows<MemberRow>(
     `select m.notebook_id as "notebookId", m.person_id as "personId", p.login, p.name, m.role, m.keeper
@@ -51,7 +60,12 @@ export function membersOf(db: Database, notebookIds: readonly string[], t?: Tran
   )
 }
 
-export function findMembership(db: Database, notebookId: string, personId: string, t?: Transaction): Promise<Membership | null> {
+export function findMembership(
+  db: Database,
+  notebookId: string,
+  personId: string,
+  t?: Transaction,
+): Promise<Membership | null> {
   return db.row<Membership>(
     `select role, keeper from work.members where notebook_id = :notebookId and person_id = :personId`,
     { notebookId, personId },
@@ -89,6 +103,15 @@ export async function upsertMember(
   )
 }
 
-export async function deleteMember(db: Database, notebookId: string, personId: string, t: Transaction): Promise<void> {
-  await db.run(`delete from work.members where notebook_id = :notebookId and person_id = :personId`, { notebookId, personId }, t)
+export async function deleteMember(
+  db: Database,
+  notebookId: string,
+  personId: string,
+  t: Transaction,
+): Promise<void> {
+  await db.run(
+    `delete from work.members where notebook_id = :notebookId and person_id = :personId`,
+    { notebookId, personId },
+    t,
+  )
 }

@@ -6,15 +6,28 @@ import { answer, route, type Route } from '../../platform/http/route.ts'
 import type { Services } from '../../platform/services.ts'
 import { actorOf, appendEvent } from '../ledger/index.ts'
 import { requireNotebook } from './access.ts'
-import { findNotebook, membersOf, notebookNumber, notebooksOf, setTitle, type NotebookRow } from './repository.ts'
+import {
+  findNotebook,
+  membersOf,
+  notebookNumber,
+  notebooksOf,
+  setTitle,
+  type NotebookRow,
+} from './repository.ts'
 import { createNotebook } from './use-cases/create-notebook.ts'
 import { removeMember, setMember } from './use-cases/set-member.ts'
 
 async function present(services: Services, actor: Actor, rows: NotebookRow[]): Promise<Notebook[]> {
-  const members = await membersOf(services.db, rows.map((row) => row.id))
+  const members = await membersOf(
+    services.db,
+    rows.map((row) => row.id),
+  )
   return rows.map((row) => {
     const here = members.filter((member) => member.notebookId === row.id)
-    const rights = notebookRights(actor.roles, here.find((member) => member.personId === actor.personId) ?? null)
+    const rights = notebookRights(
+      actor.roles,
+      here.find((member) => member.personId === actor.personId) ?? null,
+    )
     return {
       id: row.id,
       number: notebookNumber(row.number),
@@ -22,7 +35,13 @@ async function present(services: Services, actor: Actor, rows: NotebookRow[]): P
       witnessesRequired: row.witnessesRequired,
       createdAt: row.createdAt.toISOString(),
       entries: row.entries,
-      members: here.map(({ personId, login, name, role, keeper }) => ({ personId, login, name, role, keeper })),
+      members: here.map(({ personId, login, name, role, keeper }) => ({
+        personId,
+        login,
+        name,
+        role,
+        keeper,
+      })),
       allowed: (['write', 'keep', 'witness', 'export'] as const).filter((right) => rights.has(right)),
     }
   })
@@ -40,12 +59,17 @@ export function notebookRoutes(services: Services): Route[] {
     route(endpoints.listNotebooks, async ({ actor, query }) => {
       const rows = await notebooksOf(services.db, actor.personId, Number(query.cursor ?? 0), query.limit + 1)
       const page = rows.slice(0, query.limit)
-      const items = (await present(services, actor, page)).filter((n) => n.members.some((m) => m.personId === actor.personId && actor.roles.includes(m.role)))
+      const items = (await present(services, actor, page)).filter((n) =>
+        n.members.some((m) => m.personId === actor.personId && actor.roles.includes(m.role)),
+      )
       return { items, nextCursor: rows.length > query.limit ? String(page.at(-1)?.number) : null }
     }),
     route(endpoints.createNotebook, async ({ actor, body }) => {
       const id = await createNotebook(services, actor, body.title)
-      return answer(await one(services, actor, id), { status: 201, headers: { location: `/api/v1/notebooks/${id}` } })
+      return answer(await one(services, actor, id), {
+        status: 201,
+        headers: { location: `/api/v1/notebooks/${id}` },
+      })
     }),
     route(endpoints.getNotebook, ({ actor, params }) => one(services, actor, params.id)),
     route(endpoints.changeNotebook, async ({ actor, params, body }) => {

@@ -23,9 +23,17 @@ export function findPerson(db: Database, id: string, t?: Transaction): Promise<P
 }
 
 /** People by id; unknown ids are absent from the map. */
-export async function peopleById(db: Database, ids: readonly string[], t?: Transaction): Promise<Map<string, PersonRow>> {
+export async function peopleById(
+  db: Database,
+  ids: readonly string[],
+  t?: Transaction,
+): Promise<Map<string, PersonRow>> {
   if (ids.length === 0) return new Map()
-  const rows = await db.rows<PersonRow>(`select ${COLUMNS} from work.people where id in (:ids)`, { ids: [...new Set(ids)] }, t)
+  const rows = await db.rows<PersonRow>(
+    `select ${COLUMNS} from work.people where id in (:ids)`,
+    { ids: [...new Set(ids)] },
+    t,
+  )
   return new Map(rows.map((person) => [person.id, person]))
 }
 

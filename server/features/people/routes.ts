@@ -35,7 +35,16 @@ export function peopleRoutes(services: Services, { keyStatuses, waitingCount }: 
   }
 
   async function me(actor: Actor): Promise<Person> {
-    const [person] = await present([{ id: actor.personId, login: actor.login, name: actor.name, email: null, roles: actor.roles, active: true }])
+    const [person] = await present([
+      {
+        id: actor.personId,
+        login: actor.login,
+        name: actor.name,
+        email: null,
+        roles: actor.roles,
+        active: true,
+      },
+    ])
     return person as Person
   }
 
@@ -51,7 +60,10 @@ export function peopleRoutes(services: Services, { keyStatuses, waitingCount }: 
     route(endpoints.getSession, async ({ actor, req }) => {
       const person = await me(actor)
       const { id, name, demo, zone } = await laboratory(services)
-      const ends = sessionEnds(req) ?? { endsAt: new Date(services.clock.now().getTime() + DAY_MS), idleEndsAt: new Date(services.clock.now().getTime() + DAY_MS) }
+      const ends = sessionEnds(req) ?? {
+        endsAt: new Date(services.clock.now().getTime() + DAY_MS),
+        idleEndsAt: new Date(services.clock.now().getTime() + DAY_MS),
+      }
       return {
         person,
         roles: actor.roles,
@@ -73,8 +85,14 @@ export function peopleRoutes(services: Services, { keyStatuses, waitingCount }: 
       await endSession(req, res, services.config)
       return undefined
     }),
-    route(endpoints.listPeople, async () => ({ items: await present(await listPeople(services.db)), nextCursor: null })),
-    route(endpoints.listTokens, async ({ actor }) => ({ items: await tokensOf(services.db, actor.personId), nextCursor: null })),
+    route(endpoints.listPeople, async () => ({
+      items: await present(await listPeople(services.db)),
+      nextCursor: null,
+    })),
+    route(endpoints.listTokens, async ({ actor }) => ({
+      items: await tokensOf(services.db, actor.personId),
+      nextCursor: null,
+    })),
     route(endpoints.createToken, async ({ actor, body }) => {
       const secret = `hs_${randomBytes(32).toString('base64url')}`
       const now = services.clock.now()
@@ -86,7 +104,11 @@ export function peopleRoutes(services: Services, { keyStatuses, waitingCount }: 
         expiresAt: new Date(now.getTime() + body.days * DAY_MS),
       }
       await services.db.transaction(async (t) => {
-        await insertToken(services.db, { ...token, personId: actor.personId, secretSha256: tokenDigest(secret) }, t)
+        await insertToken(
+          services.db,
+          { ...token, personId: actor.personId, secretSha256: tokenDigest(secret) },
+          t,
+        )
         await appendEvent(services, t, {
           actor: actorOf(actor),
           action: 'token.created',
@@ -95,7 +117,13 @@ export function peopleRoutes(services: Services, { keyStatuses, waitingCount }: 
         })
       })
       return answer(
-        { ...token, createdAt: token.createdAt.toISOString(), expiresAt: token.expiresAt.toISOString(), lastUsedAt: null, secret },
+        {
+          ...token,
+          createdAt: token.createdAt.toISOString(),
+          expiresAt: token.expiresAt.toISOString(),
+          lastUsedAt: null,
+          secret,
+        },
         { status: 201 },
       )
     }),

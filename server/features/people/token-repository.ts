@@ -34,7 +34,15 @@ export async function tokensOf(db: Database, personId: string): Promise<TokenVie
 
 export async function insertToken(
   db: Database,
-  token: { id: string; personId: string; name: string; scopes: Scope[]; secretSha256: string; createdAt: Date; expiresAt: Date },
+  token: {
+    id: string
+    personId: string
+    name: string
+    scopes: Scope[]
+    secretSha256: string
+    createdAt: Date
+    expiresAt: Date
+  },
   t: Transaction,
 ): Promise<void> {
   await db.run(
@@ -46,7 +54,13 @@ export async function insertToken(
 }
 
 /** Ends a token at once; false when the person has no such token. */
-export async function endToken(db: Database, id: string, personId: string, revokedAt: Date, t: Transaction): Promise<boolean> {
+export async function endToken(
+  db: Database,
+  id: string,
+  personId: string,
+  revokedAt: Date,
+  t: Transaction,
+): Promise<boolean> {
   const rows = await db.rows(
     `update work.tokens set revoked_at = :revokedAt where id = :id and person_id = :personId and revoked_at is null returning id`,
     { id, personId, revokedAt },

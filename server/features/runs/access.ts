@@ -16,14 +16,20 @@ export async function requireRun(services: Services, actor: Actor, id: string): 
 }
 
 /** A run that the caller may change: unfiled, or filed in an entry that is being written. Locks the entry, then the run. */
-export async function requireWritableRun(services: Services, actor: Actor, id: string, t: Transaction): Promise<RunRow> {
+export async function requireWritableRun(
+  services: Services,
+  actor: Actor,
+  id: string,
+  t: Transaction,
+): Promise<RunRow> {
   const seen = await findRun(services.db, id, t)
   if (seen === null) throw new Problem('not-found', UNKNOWN)
   await requireNotebook(services, actor, seen.notebookId, 'read', t)
   if (seen.entryId !== null) await requireWritableEntry(services, actor, seen.entryId, t)
   await requireNotebook(services, actor, seen.notebookId, 'write', t)
   const run = await lockRun(services.db, id, t)
-  if (run === null || run.entryId !== seen.entryId) throw new Problem('wrong-state', 'The run was filed just now; look again.')
+  if (run === null || run.entryId !== seen.entryId)
+    throw new Problem('wrong-state', 'The run was filed just now; look again.')
   return run
 }
 

@@ -13,7 +13,14 @@ export function presentPicoseconds(ps: string | null): number | string | null {
 }
 
 export async function presentRuns(services: Services, actor: Actor, runs: readonly RunRow[]): Promise<Run[]> {
-  const files = await presentFiles(services, actor, await filesOfRuns(services.db, runs.map((run) => run.id)))
+  const files = await presentFiles(
+    services,
+    actor,
+    await filesOfRuns(
+      services.db,
+      runs.map((run) => run.id),
+    ),
+  )
   const entryIds = [...new Set(runs.map((run) => run.entryId).filter((id) => id !== null))]
   const entries = await Promise.all(entryIds.map((id) => findEntry(services.db, id)))
   return runs.map((run) => {

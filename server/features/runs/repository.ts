@@ -36,10 +36,19 @@ export function lockRun(db: Database, id: string, t: Transaction): Promise<RunRo
 }
 
 export function runsOfEntry(db: Database, entryId: string, t?: Transaction): Promise<RunRow[]> {
-  return db.rows<RunRow>(`select ${RUN} from work.runs where entry_id = :entryId order by number`, { entryId }, t)
+  return db.rows<RunRow>(
+    `select ${RUN} from work.runs where entry_id = :entryId order by number`,
+    { entryId },
+    t,
+  )
 }
 
-export function runsOfNotebook(db: Database, notebookId: string, before: number, limit: number): Promise<RunRow[]> {
+export function runsOfNotebook(
+  db: Database,
+  notebookId: string,
+  before: number,
+  limit: number,
+): Promise<RunRow[]> {
   return db.rows<RunRow>(
     `select ${RUN} from work.runs where notebook_id = :notebookId and number < :before order by number desc limit :limit`,
     { notebookId, before, limit },

@@ -29,7 +29,12 @@ export function runRoutes(services: Services): Route[] {
   return [
     route(endpoints.listRuns, async ({ actor, params, query }) => {
       await requireNotebook(services, actor, params.id, 'read')
-      const rows = await runsOfNotebook(services.db, params.id, Number(query.cursor ?? 2 ** 31 - 1), query.limit + 1)
+      const rows = await runsOfNotebook(
+        services.db,
+        params.id,
+        Number(query.cursor ?? 2 ** 31 - 1),
+        query.limit + 1,
+      )
       const page = rows.slice(0, query.limit)
       return {
         items: await presentRuns(services, actor, page),
@@ -40,7 +45,10 @@ export function runRoutes(services: Services): Route[] {
       answer(await one(actor, await createRun(services, actor, params.id, body)), { status: 201 }),
     ),
     route(endpoints.createRunInEntry, async ({ actor, params, body }) => {
-      if (!('runId' in body)) return answer(await one(actor, await createRunInEntry(services, actor, params.id, body)), { status: 201 })
+      if (!('runId' in body))
+        return answer(await one(actor, await createRunInEntry(services, actor, params.id, body)), {
+          status: 201,
+        })
       await fileRun(services, actor, params.id, body.runId)
       return answer(await one(actor, body.runId), { status: 201 })
     }),
@@ -63,7 +71,10 @@ export function runRoutes(services: Services): Route[] {
           return { kind: 'entry' as const, id: entry.id }
         },
       }
-      return answer(await shownFile(actor, await receiveFile(services, actor, target, { req, res, header })), { status: 201 })
+      return answer(
+        await shownFile(actor, await receiveFile(services, actor, target, { req, res, header })),
+        { status: 201 },
+      )
     }),
     route(endpoints.uploadToRun, async ({ actor, params, req, res, header }) => {
       await services.db.transaction((t) => requireWritableRun(services, actor, params.id, t))
@@ -73,9 +84,18 @@ export function runRoutes(services: Services): Route[] {
         claim: async (t: Parameters<typeof requireWritableRun>[3]) =>
           runSubject(await requireWritableRun(services, actor, params.id, t)),
       }
-      return answer(await shownFile(actor, await receiveFile(services, actor, target, { req, res, header })), { status: 201 })
+      return answer(
+        await shownFile(actor, await receiveFile(services, actor, target, { req, res, header })),
+        { status: 201 },
+      )
     }),
-    route(endpoints.listDetectors, async () => ({ items: await listApparatus(services.db, 'detector'), nextCursor: null })),
-    route(endpoints.listSources, async () => ({ items: await listApparatus(services.db, 'source'), nextCursor: null })),
+    route(endpoints.listDetectors, async () => ({
+      items: await listApparatus(services.db, 'detector'),
+      nextCursor: null,
+    })),
+    route(endpoints.listSources, async () => ({
+      items: await listApparatus(services.db, 'source'),
+      nextCursor: null,
+    })),
   ]
 }

@@ -3,16 +3,35 @@ import { entryActions, notebookRights } from '../../contract/policy.ts'
 import type { Actor } from '../../platform/http/actor.ts'
 import type { Services } from '../../platform/services.ts'
 import { calculationsOfEntry, inputFiles, presentSummary } from '../calculations/index.ts'
-import { addendaOf, entryNumber, findEntry, hasContributed, writersOf, type EntryRow } from '../entries/index.ts'
+import {
+  addendaOf,
+  entryNumber,
+  findEntry,
+  hasContributed,
+  writersOf,
+  type EntryRow,
+} from '../entries/index.ts'
 import { filesOfEntry, presentFiles } from '../files/index.ts'
 import { findMembership } from '../notebooks/index.ts'
 import { presentRuns, runsOfEntry } from '../runs/index.ts'
-import { entrySignatures, lastReturn, sealOf, signingBlocks, type PlacedSignature } from '../signatures/index.ts'
+import {
+  entrySignatures,
+  lastReturn,
+  sealOf,
+  signingBlocks,
+  type PlacedSignature,
+} from '../signatures/index.ts'
 
 /** Entries as lists show them. */
-export async function presentSummaries(services: Services, entries: readonly EntryRow[]): Promise<EntrySummary[]> {
+export async function presentSummaries(
+  services: Services,
+  entries: readonly EntryRow[],
+): Promise<EntrySummary[]> {
   const ids = entries.map((entry) => entry.id)
-  const [writers, signatures] = await Promise.all([writersOf(services.db, ids), entrySignatures(services, ids)])
+  const [writers, signatures] = await Promise.all([
+    writersOf(services.db, ids),
+    entrySignatures(services, ids),
+  ])
   return entries.map((entry) => ({
     id: entry.id,
     notebookId: entry.notebookId,
@@ -63,7 +82,10 @@ export async function presentEntry(services: Services, actor: Actor, entry: Entr
     files: await presentFiles(services, actor, files),
     calculations: calculations.map((calculation) => presentSummary(calculation, inputs)),
     signatures: signatures.map(({ entryId: _, ...signature }) => signature),
-    witnesses: { required: entry.witnessesRequired, given: new Set(witnessed.map((s) => s.signer.personId)).size },
+    witnesses: {
+      required: entry.witnessesRequired,
+      given: new Set(witnessed.map((s) => s.signer.personId)).size,
+    },
     returned: entry.phase === 'returned' ? await lastReturn(services, entry.id) : null,
     amends:
       original === null || entry.amendsBodySha256 === null
@@ -76,7 +98,12 @@ export async function presentEntry(services: Services, actor: Actor, entry: Entr
   }
 }
 
-async function allowedTo(services: Services, actor: Actor, entry: EntryRow, signatures: readonly PlacedSignature[]): Promise<Entry['allowed']> {
+async function allowedTo(
+  services: Services,
+  actor: Actor,
+  entry: EntryRow,
+  signatures: readonly PlacedSignature[],
+): Promise<Entry['allowed']> {
   const membership = await findMembership(services.db, entry.notebookId, actor.personId)
   const own = signatures.filter((s) => !s.voided && s.signer.personId === actor.personId)
   const writers = await writersOf(services.db, [entry.id])

@@ -27,11 +27,20 @@ export async function blocksOf(services: Services, gathered: Gathered, t?: Trans
   ]
 }
 
-const block = (code: string, detail: string, pointer: string | null = null): Block => ({ code, detail, pointer })
+const block = (code: string, detail: string, pointer: string | null = null): Block => ({
+  code,
+  detail,
+  pointer,
+})
 
 function writingBlocks({ entry, document }: Gathered): Block[] {
-  const empty = plainText(document).trim() === '' && calculationsIn(document).length === 0 && filesIn(document).length === 0
-  return entry.saveNumber === 0 || empty ? [block('nothing-written', 'Nothing has been written in this entry.')] : []
+  const empty =
+    plainText(document).trim() === '' &&
+    calculationsIn(document).length === 0 &&
+    filesIn(document).length === 0
+  return entry.saveNumber === 0 || empty
+    ? [block('nothing-written', 'Nothing has been written in this entry.')]
+    : []
 }
 
 /** Writing more than a day away from the work asks for a remark that says why. */
@@ -53,12 +62,32 @@ async function lateBlocks(services: Services, { entry }: Gathered, t?: Transacti
 function fileBlocks({ id, name, state, readingStatus, readingBy }: Gathered['files'][number]): Block[] {
   const at = `/files/${id}`
   const blocks: Block[] = []
-  if (state === 'stored') blocks.push(block('file-not-verified', `${name} is still being compared with the store's copy. Wait for it to end.`, at))
+  if (state === 'stored')
+    blocks.push(
+      block(
+        'file-not-verified',
+        `${name} is still being compared with the store's copy. Wait for it to end.`,
+        at,
+      ),
+    )
   if (state === 'mismatch' || state === 'missing')
-    blocks.push(block('file-damaged', `The store no longer holds ${name} as it was uploaded. Tell the manager; the entry cannot be signed like this.`, at))
-  if (readingStatus === 'pending') blocks.push(block('file-being-read', `${name} is still being read. Wait for it to end.`, at))
+    blocks.push(
+      block(
+        'file-damaged',
+        `The store no longer holds ${name} as it was uploaded. Tell the manager; the entry cannot be signed like this.`,
+        at,
+      ),
+    )
+  if (readingStatus === 'pending')
+    blocks.push(block('file-being-read', `${name} is still being read. Wait for it to end.`, at))
   if (readingStatus === 'unreadable' && readingBy !== null)
-    blocks.push(block('reading-does-not-fit', `${name} cannot be read in the way that was chosen. Choose another way to read it.`, at))
+    blocks.push(
+      block(
+        'reading-does-not-fit',
+        `${name} cannot be read in the way that was chosen. Choose another way to read it.`,
+        at,
+      ),
+    )
   return blocks
 }
 
@@ -72,18 +101,35 @@ const unfinished: Partial<Record<CalculationRow['status'], [code: string, words:
 function calculationBlocks(gathered: Gathered): Block[] {
   const { used, unknown, inputs, homes, entry } = gathered
   const blocks = unknown.map((id) =>
-    block('calculation-unknown', 'The text names a calculation that this entry does not have. Take it out of the text.', `/calculations/${id}`),
+    block(
+      'calculation-unknown',
+      'The text names a calculation that this entry does not have. Take it out of the text.',
+      `/calculations/${id}`,
+    ),
   )
   for (const calculation of used) {
     const at = `/calculations/${calculation.id}`
     const label = `C${calculation.label}`
     const state = unfinished[calculation.status]
     if (state) blocks.push(block(state[0], `${label} ${state[1]}.`, at))
-    if (isStale(calculation, inputs)) blocks.push(block('calculation-stale', `${label} was computed from another reading of its file. Compute it again.`, at))
+    if (isStale(calculation, inputs))
+      blocks.push(
+        block(
+          'calculation-stale',
+          `${label} was computed from another reading of its file. Compute it again.`,
+          at,
+        ),
+      )
     for (const { fileId } of calculation.inputs) {
       const homeId = inputs.get(fileId)?.homeEntryId ?? null
       if (homeId !== entry.id && homes.get(homeId ?? '')?.state !== 'sealed')
-        blocks.push(block('source-not-sealed', `${label} takes a file of an entry that is not sealed. That entry must be sealed first.`, at))
+        blocks.push(
+          block(
+            'source-not-sealed',
+            `${label} takes a file of an entry that is not sealed. That entry must be sealed first.`,
+            at,
+          ),
+        )
     }
   }
   return [...blocks, ...doubleLabels(used)]
@@ -93,7 +139,10 @@ function calculationBlocks(gathered: Gathered): Block[] {
 function doubleLabels(used: readonly CalculationRow[]): Block[] {
   const labels = used.map(({ label }) => label)
   return [...new Set(labels.filter((label, at) => labels.indexOf(label) !== at))].map((label) =>
-    block('label-twice', `The text uses two calculations named C${label}. Keep the newer one, in the block and in the quoted results.`),
+    block(
+      'label-twice',
+      `The text uses two calculations named C${label}. Keep the newer one, in the block and in the quoted results.`,
+    ),
   )
 }
 
@@ -101,5 +150,11 @@ async function quoteBlocks(services: Services, gathered: Gathered, t?: Transacti
   const quotes = await quotesWithValues(services, gathered, t)
   return quotes
     .filter(({ shown, finished }) => finished && shown === null)
-    .map(({ pointer, label }) => block('quote-without-value', `A quoted result names ${pointer} of ${label}, which has no value. Choose another figure.`, pointer))
+    .map(({ pointer, label }) =>
+      block(
+        'quote-without-value',
+        `A quoted result names ${pointer} of ${label}, which has no value. Choose another figure.`,
+        pointer,
+      ),
+    )
 }

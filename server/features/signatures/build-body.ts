@@ -18,13 +18,21 @@ import { exceptionsOf, returnsOf, signaturesOf } from './repository.ts'
  * Builds what every signer of an entry signs alike, from the rows as they are in this transaction. To be called only when
  * nothing blocks signing.
  */
-export async function buildEntryBody(services: Pick<Services, 'db'>, gathered: Gathered, t: Transaction): Promise<BuiltBody> {
+export async function buildEntryBody(
+  services: Pick<Services, 'db'>,
+  gathered: Gathered,
+  t: Transaction,
+): Promise<BuiltBody> {
   const { entry } = gathered
   const home = await laboratory(services, t)
   const quotes = await quotesWithValues(services, gathered, t)
   return buildBody({
     laboratory: { id: home.id, name: home.name, demo: home.demo },
-    notebook: { id: entry.notebookId, number: notebookNumber(entry.notebookNumber), title: entry.notebookTitle },
+    notebook: {
+      id: entry.notebookId,
+      number: notebookNumber(entry.notebookNumber),
+      title: entry.notebookTitle,
+    },
     entry: await entryPart(services, entry, t),
     authors: await authorsOf(services, entry, t),
     contributors: await contributorsOf(services, gathered, t),
@@ -32,12 +40,21 @@ export async function buildEntryBody(services: Pick<Services, 'db'>, gathered: G
     runs: gathered.runs.map(runPart),
     files: gathered.files.map(filePart),
     calculations: gathered.used.map((calculation) => calculationPart(calculation, gathered)),
-    quotes: quotes.map(({ nodeId, calculationId, pointer, shown }) => ({ nodeId, calculationId, pointer, shown: shown ?? '' })),
+    quotes: quotes.map(({ nodeId, calculationId, pointer, shown }) => ({
+      nodeId,
+      calculationId,
+      pointer,
+      shown: shown ?? '',
+    })),
     history: await historyOf(services, entry.id, t),
   })
 }
 
-async function entryPart(services: Pick<Services, 'db'>, entry: EntryRow, t: Transaction): Promise<RecordBody['entry']> {
+async function entryPart(
+  services: Pick<Services, 'db'>,
+  entry: EntryRow,
+  t: Transaction,
+): Promise<RecordBody['entry']> {
   const written = await writtenBetween(services.db, entry.id, t)
   const amended = entry.amendsEntryId === null ? null : await findEntry(services.db, entry.amendsEntryId, t)
   return {
@@ -60,10 +77,19 @@ async function entryPart(services: Pick<Services, 'db'>, entry: EntryRow, t: Tra
 }
 
 /** Whoever wrote a revision, by token or not. */
-async function authorsOf(services: Pick<Services, 'db'>, entry: EntryRow, t: Transaction): Promise<RecordBody['authors']> {
+async function authorsOf(
+  services: Pick<Services, 'db'>,
+  entry: EntryRow,
+  t: Transaction,
+): Promise<RecordBody['authors']> {
   const authors = new Map<string, RecordBody['authors'][number]>()
   for (const { personId, author, revision } of await revisionsOf(services.db, entry.id, t)) {
-    const known = authors.get(personId) ?? { subjectId: personId, name: author, revisions: [], exception: null }
+    const known = authors.get(personId) ?? {
+      subjectId: personId,
+      name: author,
+      revisions: [],
+      exception: null,
+    }
     known.revisions.push(revision)
     authors.set(personId, known)
   }
@@ -81,7 +107,12 @@ function runPart(run: RunRow): RecordBody['runs'][number] {
     experiment: run.experiment,
     startedAt: run.startedAt.toISOString(),
     durationPs: run.durationPs,
-    conditions: run.conditions.map(({ name, value, u, unit }) => ({ name, value, u, unit: unit === '' ? null : unit })),
+    conditions: run.conditions.map(({ name, value, u, unit }) => ({
+      name,
+      value,
+      u,
+      unit: unit === '' ? null : unit,
+    })),
     apparatus: run.apparatus.map((piece) => ({ ...piece })),
     cautions: run.cautions.map((caution) => ({ ...caution })),
   }
@@ -101,14 +132,24 @@ function filePart(file: FileRow): RecordFile {
   }
 }
 
-function readingPart({ readingStatus, readingFormat, readingVersion, readingOptions }: FileRow): RecordFile['reading'] {
+function readingPart({
+  readingStatus,
+  readingFormat,
+  readingVersion,
+  readingOptions,
+}: FileRow): RecordFile['reading'] {
   if (readingStatus !== 'ready' || readingFormat === null || readingVersion === null) return null
-  const reading = { format: readingFormat, version: readingVersion, options: (readingOptions ?? {}) as RecordBody['content'] }
+  const reading = {
+    format: readingFormat,
+    version: readingVersion,
+    options: (readingOptions ?? {}) as RecordBody['content'],
+  }
   return { ...reading, sha256: readingSha256(reading) }
 }
 
 function calculationPart(calculation: CalculationRow, { entry, inputs, homes }: Gathered): RecordCalculation {
-  if (calculation.resultSha256 === null || calculation.finishedAt === null) throw new Error(`C${calculation.label} has no result.`)
+  if (calculation.resultSha256 === null || calculation.finishedAt === null)
+    throw new Error(`C${calculation.label} has no result.`)
   return {
     id: calculation.id,
     label: `C${calculation.label}`,
@@ -128,16 +169,34 @@ function calculationPart(calculation: CalculationRow, { entry, inputs, homes }: 
     }),
     resultSha256: calculation.resultSha256,
     finishedAt: calculation.finishedAt.toISOString(),
-    figures: calculation.figures.map(({ pointer, label, value, u, unit }) => ({ pointer, label, value, u, unit })),
-    notes: calculation.notes.map(({ code, detail }) => ({ code, detail: detail === '' ? null : detail, answer: null })),
+    figures: calculation.figures.map(({ pointer, label, value, u, unit }) => ({
+      pointer,
+      label,
+      value,
+      u,
+      unit,
+    })),
+    notes: calculation.notes.map(({ code, detail }) => ({
+      code,
+      detail: detail === '' ? null : detail,
+      answer: null,
+    })),
   }
 }
 
-async function historyOf(services: Pick<Services, 'db'>, entryId: string, t: Transaction): Promise<RecordBody['history']> {
+async function historyOf(
+  services: Pick<Services, 'db'>,
+  entryId: string,
+  t: Transaction,
+): Promise<RecordBody['history']> {
   const returns = await returnsOf(services.db, entryId, t)
   const voided = (await signaturesOf(services.db, [entryId], t)).filter(({ voidedAt }) => voidedAt !== null)
   return {
-    returns: returns.map(({ byPerson, reason, at }) => ({ bySubjectId: byPerson, reason, time: at.toISOString() })),
+    returns: returns.map(({ byPerson, reason, at }) => ({
+      bySubjectId: byPerson,
+      reason,
+      time: at.toISOString(),
+    })),
     voided: voided.map(({ recordSha256, signatureSha256, voidedAt }) => ({
       recordSha256,
       signatureSha256,

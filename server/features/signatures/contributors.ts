@@ -10,7 +10,11 @@ type Act = RecordBody['contributors'][number]['acts'][number]
  * Whoever supplied a run, file, reading or calculation, also one that the text does not use: such a person never
  * witnesses. Readings come from the ledger, since an earlier choice of somebody else counts too.
  */
-export async function contributorsOf(services: Pick<Services, 'db'>, gathered: Gathered, t: Transaction): Promise<RecordBody['contributors']> {
+export async function contributorsOf(
+  services: Pick<Services, 'db'>,
+  gathered: Gathered,
+  t: Transaction,
+): Promise<RecordBody['contributors']> {
   const acts = new Map<string, Set<Act>>()
   const note = (personId: string | null, act: Act) => {
     if (personId) acts.set(personId, (acts.get(personId) ?? new Set()).add(act))
@@ -21,7 +25,11 @@ export async function contributorsOf(services: Pick<Services, 'db'>, gathered: G
   for (const { actorId } of await readingChoices(services, gathered, t)) note(actorId, 'reading')
   for (const { createdBy } of gathered.calculations) note(createdBy, 'calculation')
   const people = await peopleById(services.db, [...acts.keys()], t)
-  return [...acts].map(([subjectId, done]) => ({ subjectId, name: people.get(subjectId)?.name ?? subjectId, acts: [...done] }))
+  return [...acts].map(([subjectId, done]) => ({
+    subjectId,
+    name: people.get(subjectId)?.name ?? subjectId,
+    acts: [...done],
+  }))
 }
 
 function readingChoices(services: Pick<Services, 'db'>, { entry, runs }: Gathered, t: Transaction) {

@@ -25,7 +25,11 @@ export interface Gathered {
 }
 
 /** Reads all of it in the caller's transaction. */
-export async function gather(services: Pick<Services, 'db'>, entry: EntryRow, t?: Transaction): Promise<Gathered> {
+export async function gather(
+  services: Pick<Services, 'db'>,
+  entry: EntryRow,
+  t?: Transaction,
+): Promise<Gathered> {
   const { db } = services
   const content = await contentOfSave(db, entry.id, entry.saveNumber, t)
   const document = (content ?? emptyDocument()) as NormalDocument
@@ -48,7 +52,11 @@ export async function gather(services: Pick<Services, 'db'>, entry: EntryRow, t?
   }
 }
 
-async function inputsOf(db: Database, used: CalculationRow[], t?: Transaction): Promise<Map<string, FileRow>> {
+async function inputsOf(
+  db: Database,
+  used: CalculationRow[],
+  t?: Transaction,
+): Promise<Map<string, FileRow>> {
   const found = new Map<string, FileRow>()
   for (const id of new Set(used.flatMap(({ inputs }) => inputs.map(({ fileId }) => fileId)))) {
     const file = await findFile(db, id, t)
@@ -57,7 +65,12 @@ async function inputsOf(db: Database, used: CalculationRow[], t?: Transaction): 
   return found
 }
 
-async function homesOf(db: Database, inputs: Map<string, FileRow>, entry: EntryRow, t?: Transaction): Promise<Map<string, EntryRow>> {
+async function homesOf(
+  db: Database,
+  inputs: Map<string, FileRow>,
+  entry: EntryRow,
+  t?: Transaction,
+): Promise<Map<string, EntryRow>> {
   const homes = new Map<string, EntryRow>()
   for (const { homeEntryId } of inputs.values()) {
     if (homeEntryId === null || homeEntryId === entry.id || homes.has(homeEntryId)) continue

@@ -19,7 +19,13 @@ export async function tellWitnesses(services: Services, entry: EntryRow, t: Tran
 }
 
 /** Tells the authors that their entry came back, with the reason. */
-export async function tellAuthors(services: Services, entry: EntryRow, reason: string, byPerson: string, t: Transaction): Promise<void> {
+export async function tellAuthors(
+  services: Services,
+  entry: EntryRow,
+  reason: string,
+  byPerson: string,
+  t: Transaction,
+): Promise<void> {
   const authors = await services.db.rows<{ email: string }>(
     `select distinct p.email from record.revisions r join work.people p on p.id = r.person_id
      where r.entry_id = :entryId and p.active and p.email is not null and p.id <> :byPerson`,

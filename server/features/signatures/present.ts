@@ -16,7 +16,11 @@ interface StampRow {
 }
 
 /** Signatures of entries as they are shown, voided ones among them, in the order in which they were given. */
-export async function entrySignatures(services: Pick<Services, 'db' | 'config'>, entryIds: readonly string[], t?: Transaction): Promise<PlacedSignature[]> {
+export async function entrySignatures(
+  services: Pick<Services, 'db' | 'config'>,
+  entryIds: readonly string[],
+  t?: Transaction,
+): Promise<PlacedSignature[]> {
   const rows = await signaturesOf(services.db, entryIds, t)
   const stamps = await stampsOf(services, rows, t)
   return rows.map((row) => {
@@ -36,7 +40,11 @@ export async function entrySignatures(services: Pick<Services, 'db' | 'config'>,
   })
 }
 
-async function stampsOf(services: Pick<Services, 'db'>, rows: readonly SignatureRow[], t?: Transaction): Promise<Map<string, StampRow>> {
+async function stampsOf(
+  services: Pick<Services, 'db'>,
+  rows: readonly SignatureRow[],
+  t?: Transaction,
+): Promise<Map<string, StampRow>> {
   if (rows.length === 0) return new Map()
   const stamps = await services.db.rows<StampRow>(
     `select signature_sha256 as "signatureSha256", gen_time as "genTime", authority, independent
@@ -47,19 +55,35 @@ async function stampsOf(services: Pick<Services, 'db'>, rows: readonly Signature
   return new Map(stamps.map((row) => [row.signatureSha256, row]))
 }
 
-function presentStamp({ config }: Pick<Services, 'config'>, row: StampRow | undefined): EntrySignature['timeStamp'] {
-  if (!row) return { status: 'pending', time: null, authority: null, independent: config.timeStamps.independent }
-  return { status: 'stamped', time: row.genTime.toISOString(), authority: row.authority, independent: row.independent }
+function presentStamp(
+  { config }: Pick<Services, 'config'>,
+  row: StampRow | undefined,
+): EntrySignature['timeStamp'] {
+  if (!row)
+    return { status: 'pending', time: null, authority: null, independent: config.timeStamps.independent }
+  return {
+    status: 'stamped',
+    time: row.genTime.toISOString(),
+    authority: row.authority,
+    independent: row.independent,
+  }
 }
 
 /** The last return of an entry; null when it never came back. */
-export async function lastReturn(services: Pick<Services, 'db'>, entryId: string): Promise<Entry['returned']> {
+export async function lastReturn(
+  services: Pick<Services, 'db'>,
+  entryId: string,
+): Promise<Entry['returned']> {
   const last = (await returnsOf(services.db, entryId)).filter(({ kind }) => kind === 'returned').at(-1)
   return last ? { reason: last.reason, by: last.byName, at: last.at.toISOString() } : null
 }
 
 /** Where the seal of an entry stands in the ledger; null before it. */
-export async function sealOf(services: Pick<Services, 'db'>, entryId: string, t?: Transaction): Promise<Entry['seal']> {
+export async function sealOf(
+  services: Pick<Services, 'db'>,
+  entryId: string,
+  t?: Transaction,
+): Promise<Entry['seal']> {
   const row = await services.db.row<{ sequence: string; digest: string; at: Date }>(
     `select sequence, digest, at from record.events
      where subject_kind = 'entry' and subject_id = :entryId and action = 'entry.sealed'`,

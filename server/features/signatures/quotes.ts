@@ -18,13 +18,18 @@ export interface QuoteWithValue {
 }
 
 /** Quoted results of the text in document order, each with the text that a reader sees. */
-export async function quotesWithValues(services: Pick<Services, 'db'>, gathered: Pick<Gathered, 'document' | 'used'>, t?: Transaction): Promise<QuoteWithValue[]> {
+export async function quotesWithValues(
+  services: Pick<Services, 'db'>,
+  gathered: Pick<Gathered, 'document' | 'used'>,
+  t?: Transaction,
+): Promise<QuoteWithValue[]> {
   const results = new Map<string, unknown>()
   const quotes: QuoteWithValue[] = []
   for (const quote of quotesIn(gathered.document)) {
     const calculation = gathered.used.find(({ id }) => id === quote.calculationId)
     const sha256 = calculation?.status === 'done' ? calculation.resultSha256 : null
-    if (sha256 && !results.has(sha256)) results.set(sha256, JSON.parse((await resultBytes(services.db, sha256, t)).toString('utf8')))
+    if (sha256 && !results.has(sha256))
+      results.set(sha256, JSON.parse((await resultBytes(services.db, sha256, t)).toString('utf8')))
     const figure = sha256 ? figureAt(results.get(sha256), quote.pointer) : null
     quotes.push({
       ...quote,

@@ -25,7 +25,11 @@ const SIGNATURE = `s.id, s.entry_id as "entryId", s.person_id as "personId", s.m
 const FROM = `from record.signatures s left join record.voidings v on v.record_sha256 = s.record_sha256`
 
 /** All signatures of entries, living and voided, in the order of their events. */
-export function signaturesOf(db: Database, entryIds: readonly string[], t?: Transaction): Promise<SignatureRow[]> {
+export function signaturesOf(
+  db: Database,
+  entryIds: readonly string[],
+  t?: Transaction,
+): Promise<SignatureRow[]> {
   if (entryIds.length === 0) return Promise.resolve([])
   return db.rows<SignatureRow>(
     `select ${SIGNATURE} ${FROM} where s.entry_id in (:entryIds) order by s.event_sequence`,
@@ -34,11 +38,19 @@ export function signaturesOf(db: Database, entryIds: readonly string[], t?: Tran
   )
 }
 
-export async function livingSignatures(db: Database, entryId: string, t?: Transaction): Promise<SignatureRow[]> {
+export async function livingSignatures(
+  db: Database,
+  entryId: string,
+  t?: Transaction,
+): Promise<SignatureRow[]> {
   return (await signaturesOf(db, [entryId], t)).filter(({ voidedAt }) => voidedAt === null)
 }
 
-export async function insertSignature(db: Database, row: Omit<SignatureRow, 'voidedAt' | 'eventSequence'> & { eventSequence: number }, t: Transaction): Promise<void> {
+export async function insertSignature(
+  db: Database,
+  row: Omit<SignatureRow, 'voidedAt' | 'eventSequence'> & { eventSequence: number },
+  t: Transaction,
+): Promise<void> {
   await db.run(
     `insert into record.signatures (id, entry_id, person_id, meaning, record_sha256, record, body_sha256, signature,
        signature_sha256, certificate_sha256, signed_at, event_sequence)
@@ -80,7 +92,11 @@ export function findPrepared(
 }
 
 /** The bytes of a digest, as prepared for this person, entry and meaning and nobody else. */
-export function preparedByDigest(db: Database, wanted: PreparedFor & { recordSha256: string }, t: Transaction): Promise<PreparedRow | null> {
+export function preparedByDigest(
+  db: Database,
+  wanted: PreparedFor & { recordSha256: string },
+  t: Transaction,
+): Promise<PreparedRow | null> {
   return db.row<PreparedRow>(
     `select ${PREPARED} from work.prepared_records
      where sha256 = :recordSha256 and entry_id = :entryId and person_id = :personId and meaning = :meaning`,
@@ -94,7 +110,11 @@ export async function keepPrepared(
   row: PreparedFor & PreparedRow & { stateKey: string; createdAt: Date },
   t: Transaction,
 ): Promise<void> {
-  await db.run('delete from work.prepared_records where entry_id = :entryId and expires_at <= :createdAt', { ...row }, t)
+  await db.run(
+    'delete from work.prepared_records where entry_id = :entryId and expires_at <= :createdAt',
+    { ...row },
+    t,
+  )
   await db.run(
     `insert into work.prepared_records (sha256, entry_id, person_id, meaning, state_key, record, body_sha256, created_at, expires_at)
      values (:sha256, :entryId, :personId, :meaning, :stateKey, :record, :bodySha256, :createdAt, :expiresAt)`,
@@ -104,8 +124,17 @@ export async function keepPrepared(
 }
 
 /** A prepared record is used once. */
-export async function dropPrepared(db: Database, entryId: string, personId: string, t: Transaction): Promise<void> {
-  await db.run('delete from work.prepared_records where entry_id = :entryId and person_id = :personId', { entryId, personId }, t)
+export async function dropPrepared(
+  db: Database,
+  entryId: string,
+  personId: string,
+  t: Transaction,
+): Promise<void> {
+  await db.run(
+    'delete from work.prepared_records where entry_id = :entryId and person_id = :personId',
+    { entryId, personId },
+    t,
+  )
 }
 
 /** Keeps the bytes of a body; the same body again is the same row. */
@@ -122,7 +151,11 @@ export async function keepBody(
 }
 
 export async function bodyBytes(db: Database, sha256: string, t?: Transaction): Promise<Buffer> {
-  const row = await db.row<{ body: Buffer }>('select body from record.bodies where sha256 = :sha256', { sha256 }, t)
+  const row = await db.row<{ body: Buffer }>(
+    'select body from record.bodies where sha256 = :sha256',
+    { sha256 },
+    t,
+  )
   if (!row) throw new Error(`The body ${sha256} is missing.`)
   return row.body
 }

@@ -32,8 +32,12 @@ export function signatureRoutes(services: Services): Route[] {
       if (!given) throw new Error('The signature just given is not there.')
       return answer(given, { status: 201 })
     }),
-    route(endpoints.returnEntry, ({ actor, params, body }) => returnEntry(services, actor, params.id, body.reason)),
-    route(endpoints.withdrawEntry, ({ actor, params, body }) => withdrawEntry(services, actor, params.id, body.reason)),
+    route(endpoints.returnEntry, ({ actor, params, body }) =>
+      returnEntry(services, actor, params.id, body.reason),
+    ),
+    route(endpoints.withdrawEntry, ({ actor, params, body }) =>
+      withdrawEntry(services, actor, params.id, body.reason),
+    ),
     route(endpoints.createAddendum, async ({ actor, params, body }) => {
       const made = await createAddendum(services, actor, params.id, body.title)
       return answer(made, { status: 201, headers: { location: `/api/v1/entries/${made.id}` } })

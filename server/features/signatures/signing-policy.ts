@@ -20,6 +20,9 @@ export async function requireSigner(services: Services, personId: string, t: Tra
   if (found.key === null) throw new Problem('key-not-active', inactiveSentence(found.status))
   const enrolment = parseCanonical(found.key.document) as unknown as Enrolment
   if (enrolment.policyVersion !== policyVersion)
-    throw new Problem('key-not-active', 'Your key was enrolled under an earlier signing policy. Enrol a new key to sign under the present one.')
+    throw new Problem(
+      'key-not-active',
+      'Your key was enrolled under an earlier signing policy. Enrol a new key to sign under the present one.',
+    )
   return { key: found.key, enrolment }
 }

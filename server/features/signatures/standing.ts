@@ -19,12 +19,19 @@ export interface Standing {
 }
 
 /** Locks person, then entry, and reads rights afresh. Who may not read the entry is told that there is none. */
-export async function standingOf(services: Pick<Services, 'db'>, personId: string, entryId: string, t: Transaction): Promise<Standing> {
+export async function standingOf(
+  services: Pick<Services, 'db'>,
+  personId: string,
+  entryId: string,
+  t: Transaction,
+): Promise<Standing> {
   const { db } = services
   const person = await lockPerson(db, personId, t)
   const entry = person && (await lockEntry(db, entryId, t))
-  const rights = entry && notebookRights(person.roles, await findMembership(db, entry.notebookId, personId, t))
-  if (!person || !entry || !rights?.has('read')) throw new Problem('not-found', 'There is no such entry, or you may not read it.')
+  const rights =
+    entry && notebookRights(person.roles, await findMembership(db, entry.notebookId, personId, t))
+  if (!person || !entry || !rights?.has('read'))
+    throw new Problem('not-found', 'There is no such entry, or you may not read it.')
   const living = await livingSignatures(db, entryId, t)
   const own = living.filter((signature) => signature.personId === personId)
   const writers = await writersOf(db, [entryId], t)
@@ -50,10 +57,15 @@ export function requireSigning({ entry, allowed }: Standing, meaning: Meaning): 
   if (entry.state === 'sealed' || entry.state === 'withdrawn')
     throw new Problem('wrong-state', `The entry is ${entry.state}; it takes no more signatures.`)
   if (meaning === 'authorship') {
-    if (entry.phase === 'with-witness') throw new Problem('wrong-state', 'All authors have signed; the entry is with its witness.')
-    throw new Problem('not-allowed', 'Only who wrote in this entry, may write here and has not signed yet signs as its author.')
+    if (entry.phase === 'with-witness')
+      throw new Problem('wrong-state', 'All authors have signed; the entry is with its witness.')
+    throw new Problem(
+      'not-allowed',
+      'Only who wrote in this entry, may write here and has not signed yet signs as its author.',
+    )
   }
-  if (entry.phase !== 'with-witness') throw new Problem('wrong-state', 'The entry is witnessed after all its authors have signed.')
+  if (entry.phase !== 'with-witness')
+    throw new Problem('wrong-state', 'The entry is witnessed after all its authors have signed.')
   throw new Problem(
     'not-allowed',
     'A witness is a supervisor of this notebook who wrote and supplied nothing of the entry and has not witnessed it yet.',
@@ -61,7 +73,11 @@ export function requireSigning({ entry, allowed }: Standing, meaning: Meaning): 
 }
 
 /** Refuses an act that is not open to this person now. */
-export function requireAction({ entry, allowed, mayWrite }: Standing, action: EntryAction, sentence: string): void {
+export function requireAction(
+  { entry, allowed, mayWrite }: Standing,
+  action: EntryAction,
+  sentence: string,
+): void {
   if (allowed.has(action)) return
   const states: Partial<Record<EntryAction, readonly string[]>> = {
     return: ['with-witness'],
@@ -69,6 +85,12 @@ export function requireAction({ entry, allowed, mayWrite }: Standing, action: En
     withdraw: ['writing', 'returned'],
     addendum: ['sealed'],
   }
-  if (!states[action]?.includes(entry.phase)) throw new Problem('wrong-state', `${sentence} The entry is ${entry.phase}.`)
-  throw new Problem('not-allowed', mayWrite ? 'This is for others to do in this entry.' : 'Your role in this notebook does not include this.')
+  if (!states[action]?.includes(entry.phase))
+    throw new Problem('wrong-state', `${sentence} The entry is ${entry.phase}.`)
+  throw new Problem(
+    'not-allowed',
+    mayWrite
+      ? 'This is for others to do in this entry.'
+      : 'Your role in this notebook does not include this.',
+  )
 }

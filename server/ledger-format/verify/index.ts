@@ -144,14 +144,19 @@ function ownDigests(c: Case): OwnDigests {
   return { laboratory, caSha256, ledgerKeysSha256, rootEnrolmentSha256, tsaRootsSha256 }
 }
 
-/** Says who stamped, and plainly when that is the laboratory itself: its own authority's certificate carries its name. */
+/** How the names of the authority that the product itself brings begin (server/fakes). */
+const builtInAuthority = 'Local time-stamp'
+
+/** Says who stamped, and plainly when that is the laboratory itself: then the certificate has its name, or the built-in one. */
 function timeStampSentence(c: Case): string {
   const roots = c.tsaChain.filter(isSelfIssued)
   const names = roots.map((root) =>
     [...root.subjectValues(oid.commonName), ...root.subjectValues(oid.organization)].join(', '),
   )
   const laboratory = [...c.entries.values()][0]?.record?.laboratory.name
-  const own = laboratory !== undefined && names.some((name) => name.includes(laboratory))
+  const isOwn = (name: string) =>
+    name.startsWith(builtInAuthority) || (laboratory !== undefined && name.includes(laboratory))
+  const own = names.some(isOwn)
   return own
     ? `Time stamps: by the laboratory’s own authority (${names.join('; ')}). They prove nothing to outsiders.`
     : `Time stamps: by ${names.join('; ')}. If the laboratory runs that authority itself, its stamps prove nothing to outsiders.`

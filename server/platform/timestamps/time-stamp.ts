@@ -61,7 +61,10 @@ function buildRequest(imprint: Uint8Array, nonce: Uint8Array): Uint8Array {
   const request = new pkijs.TimeStampReq({
     version: 1,
     messageImprint: new pkijs.MessageImprint({
-      hashAlgorithm: new pkijs.AlgorithmIdentifier({ algorithmId: oids.sha256, algorithmParams: new asn1js.Null() }),
+      hashAlgorithm: new pkijs.AlgorithmIdentifier({
+        algorithmId: oids.sha256,
+        algorithmParams: new asn1js.Null(),
+      }),
       hashedMessage: new asn1js.OctetString({ valueHex: ownBuffer(imprint) }),
     }),
     nonce: new asn1js.Integer({ valueHex: ownBuffer(nonce) }),
@@ -83,8 +86,10 @@ export async function checkResponse(
   if (!parsed.timeStampToken) throw new Error('The answer of the time-stamp authority holds no token.')
   const signedData = new pkijs.SignedData({ schema: parsed.timeStampToken.content })
   const info = readInfo(signedData)
-  if (!same(info.messageImprint.hashedMessage.valueBlock.valueHexView, sha256(data))) throw new Error('The time stamp is over something else.')
-  if (nonce && !(info.nonce && same(info.nonce.valueBlock.valueHexView, nonce))) throw new Error('The time stamp answers another request.')
+  if (!same(info.messageImprint.hashedMessage.valueBlock.valueHexView, sha256(data)))
+    throw new Error('The time stamp is over something else.')
+  if (nonce && !(info.nonce && same(info.nonce.valueBlock.valueHexView, nonce)))
+    throw new Error('The time stamp answers another request.')
   const authority = await checkSigner(signedData, data, certificatesIn(chainPem), info.genTime)
   return { response, genTime: info.genTime, authority }
 }
@@ -93,7 +98,8 @@ function readInfo(signedData: pkijs.SignedData): pkijs.TSTInfo {
   const { eContent } = signedData.encapContentInfo
   if (!eContent) throw new Error('The time stamp has no content.')
   const info = pkijs.TSTInfo.fromBER(eContent.getValue())
-  if (info.messageImprint.hashAlgorithm.algorithmId !== oids.sha256) throw new Error('The time stamp is not over SHA-256.')
+  if (info.messageImprint.hashAlgorithm.algorithmId !== oids.sha256)
+    throw new Error('The time stamp is not over SHA-256.')
   return info
 }
 
@@ -123,12 +129,17 @@ async function checkSigner(
       message: error.message,
     }))
   if (!result.signatureVerified || !result.signerCertificateVerified || !result.signerCertificate)
-    throw new Error(`The time stamp does not verify against the authority's certificates: ${result.message ?? 'unknown reason'}`)
-  const usage = result.signerCertificate.extensions?.find((extension) => extension.extnID === oids.extendedKeyUsage)
+    throw new Error(
+      `The time stamp does not verify against the authority's certificates: ${result.message ?? 'unknown reason'}`,
+    )
+  const usage = result.signerCertificate.extensions?.find(
+    (extension) => extension.extnID === oids.extendedKeyUsage,
+  )
   const purposes = (usage?.parsedValue as pkijs.ExtKeyUsage | undefined)?.keyPurposes
   if (!usage?.critical || purposes?.length !== 1 || purposes[0] !== oids.timeStamping)
     throw new Error('The signer of the time stamp is not certified for time stamps alone.')
-  if (!namesCertificate(signedData, result.signerCertificate)) throw new Error('The time stamp does not name the certificate of its signer.')
+  if (!namesCertificate(signedData, result.signerCertificate))
+    throw new Error('The time stamp does not name the certificate of its signer.')
   const name = result.signerCertificate.subject.typesAndValues.find((item) => item.type === oids.commonName)
   return String(name?.value.valueBlock.value ?? 'unnamed authority')
 }

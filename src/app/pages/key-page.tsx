@@ -1,7 +1,7 @@
 import { useSuspenseQuery } from '@tanstack/react-query'
 import { useState } from 'react'
 import { sessionQuery } from '../../features/sign-in/queries.ts'
-import { EnrolForm, KeyStanding, signingKeyQuery, WhatAPageCannotPrevent } from '../../features/signatures/index.ts'
+import { EnrolForm, KeyStanding, signingKeyQuery, WaitingSuccessor, WhatAPageCannotPrevent } from '../../features/signatures/index.ts'
 import { Button } from '../../ui/button.tsx'
 import { Ground, PageHead } from '../../ui/ground.tsx'
 import { Columns, Section, Sheet } from '../../ui/sheet.tsx'
@@ -31,6 +31,11 @@ export function Component() {
           }
         >
           <KeyStanding signingKey={key} />
+          {key.enrolmentSha256 && (
+            <div className="mt-4">
+              <WaitingSuccessor myId={session.person.id} currentSha256={key.enrolmentSha256} />
+            </div>
+          )}
           {enrolling ? (
             <Section title={needed ? 'Enrol a key' : 'Enrol a new key'}>
               <EnrolForm
@@ -38,13 +43,14 @@ export function Component() {
                 me={session.person}
                 laboratory={session.laboratory}
                 replaces={key.enrolmentSha256 !== null}
+                onEnrolled={() => setAgain(false)}
               />
             </Section>
           ) : (
             <Section title="A new key">
               <p className="mb-2.5 max-w-[64ch]">
-                Passphrase forgotten, or become known? Enrol a new key and have it endorsed. The old one stays valid for
-                what it has signed and cannot sign any more.
+                Passphrase forgotten, or become known? Enrol a new key and have it endorsed. The old one signs until
+                then, and stays valid for what it has signed.
               </p>
               <Button onClick={() => setAgain(true)}>Enrol a new key</Button>
             </Section>

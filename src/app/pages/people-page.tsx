@@ -21,7 +21,7 @@ export function Component() {
   const waiting = people.items.filter((person) => person.signingKey === 'awaiting-endorsement')
   const act = (person: Person) => {
     if (person.id === session.person.id) return <TextLink to={paths.keys}>My signing key</TextLink>
-    if (person.signingKey !== 'awaiting-endorsement' || !person.active || !mayEndorse) return null
+    if (person.signingKey === 'none' || !person.active || !mayEndorse) return null
     return <EndorseAct person={person} me={session.person} laboratory={session.laboratory} />
   }
   return (
@@ -44,12 +44,12 @@ function KeysMargin({ waiting, mayEndorse }: { waiting: Person[]; mayEndorse: bo
           A key signs only after a manager or a supervisor, never its owner, has checked who the person is, compared the
           digits of the key and signed that. Both signatures are in every bundle.
         </p>
-        <p className="mt-2">
-          {waiting.length === 0
-            ? 'No key waits now.'
-            : `${waiting.map((person) => person.name).join(', ')} ${waiting.length === 1 ? 'waits' : 'wait'} for it.`}
-          {waiting.length > 0 && !mayEndorse && ' You cannot endorse; ask a manager or a supervisor.'}
-        </p>
+        {waiting.length > 0 && (
+          <p className="mt-2">
+            {waiting.map((person) => person.name).join(', ')} {waiting.length === 1 ? 'waits' : 'wait'} for it.
+            {!mayEndorse && ' You cannot endorse; ask a manager or a supervisor.'}
+          </p>
+        )}
       </Section>
       <Section title="Roles">
         <Facts

@@ -22,9 +22,9 @@ export function useSheetParts(entry: Entry, editable: boolean, asks: Asks = noth
   const sealed = entry.state === 'sealed'
   const parts = useMemo<EditorParts>(
     () => ({
-      calculation: (calculationId, placeActs) => (
+      calculation: (calculationId, placeActs, onSuccessor) => (
         <div id={calculationId} tabIndex={-1}>
-          <CalculationBlock {...{ calculationId, editable, sealed, placeActs }} />
+          <CalculationBlock {...{ calculationId, editable, sealed, placeActs, onSuccessor }} />
         </div>
       ),
       quote: (calculationId, pointer) => <QuotedFigure calculationId={calculationId} pointer={pointer} />,
@@ -44,7 +44,9 @@ export function useSheetParts(entry: Entry, editable: boolean, asks: Asks = noth
 }
 
 function figuresOf(entry: Entry): QuotableFigure[] {
-  return entry.calculations.flatMap(({ id, label, figures }) =>
+  // Of a label the newest calculation is offered: it took the place of those before.
+  const newest = new Map(entry.calculations.map((calculation) => [calculation.label, calculation]))
+  return [...newest.values()].flatMap(({ id, label, figures }) =>
     figures.map((figure) => ({
       calculationId: id,
       pointer: figure.pointer,

@@ -1,7 +1,7 @@
 import { NodeViewWrapper, type ReactNodeViewProps } from '@tiptap/react'
 import { TextButton } from '../../ui/button.tsx'
 import { useEditorParts } from '../editor-parts.ts'
-import { moveBlock } from '../place.ts'
+import { moveBlock, succeedCalculation } from '../place.ts'
 
 /** The place of a calculation block in the text, with the acts on that place. */
 export function CalculationView({ node, editor, getPos, deleteNode }: ReactNodeViewProps) {
@@ -29,7 +29,7 @@ export function CalculationView({ node, editor, getPos, deleteNode }: ReactNodeV
   )
   return (
     <NodeViewWrapper className="hs-block-place" contentEditable={false} data-node-id={node.attrs.id}>
-      {parts.calculation(id, acts)}
+      {parts.calculation(id, acts, (successorId) => editor.view.dispatch(succeedCalculation(editor.state, id, successorId)))}
     </NodeViewWrapper>
   )
 }

@@ -45,7 +45,9 @@ function MathsView({ node, editor, selected, display, getPos, updateAttributes, 
 function LatexField({ latex, display, onClose }: { latex: string; display: boolean; onClose: (latex: string) => void }) {
   const [text, setText] = useState(latex)
   const field = useRef<HTMLTextAreaElement>(null)
-  useEffect(() => field.current?.focus(), [])
+  useEffect(() => {
+    field.current?.focus()
+  }, [])
 
   function onKeyDown(event: KeyboardEvent) {
     if (event.key === 'Enter' && !event.shiftKey) {

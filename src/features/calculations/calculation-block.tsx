@@ -6,7 +6,7 @@ import { Block, BlockLine, BlockPart, type BlockState } from '../../ui/block.tsx
 import { Icon } from '../../ui/icon.tsx'
 import { Message } from '../../ui/message.tsx'
 import { BlockFoot } from './block-foot.tsx'
-import { CalculationFigure } from './calculation-figure.tsx'
+import { CalculationFigure, FigureLegend } from './calculation-figure.tsx'
 import { FailureMessage } from './failure-message.tsx'
 import type { JsonSchema } from './json-schema.ts'
 import { KeyResults } from './key-results.tsx'
@@ -23,23 +23,25 @@ interface CalculationBlockProps {
   sealed: boolean
   /** Acts on the block's place in the text: move, remove. */
   placeActs?: ReactNode
+  /** Other parameters make another calculation, which takes the place of this one in the text. */
+  onSuccessor: (successorId: string) => void
 }
 
 /** A calculation in the text: how it stands, what goes in, the curve, the figures, and where they come from. */
-export function CalculationBlock({ calculationId, editable, sealed, placeActs }: CalculationBlockProps) {
+export function CalculationBlock({ calculationId, ...rest }: CalculationBlockProps) {
   const { data: calculation, error } = useQuery(calculationQuery(calculationId))
-  if (calculation) return <Loaded {...{ calculation, editable, sealed, placeActs }} />
-  if (error) return <Missing error={error} placeActs={placeActs} />
+  if (calculation) return <Loaded calculation={calculation} {...rest} />
+  if (error) return <Missing error={error} placeActs={rest.placeActs} />
   return <Block state="queued" number="" title="Opening the calculation" label="Calculation" />
 }
 
-function Loaded(props: { calculation: Calculation; editable: boolean; sealed: boolean; placeActs?: ReactNode }) {
-  const { calculation, editable, sealed, placeActs } = props
+function Loaded(props: { calculation: Calculation } & Omit<CalculationBlockProps, 'calculationId'>) {
+  const { calculation, editable, sealed, placeActs, onSuccessor } = props
   const { id, entryId, label, status, progress } = calculation
   const goingOn = isGoingOn(status)
   useWatchCalculation(id, entryId, goingOn)
   const { data: kinds } = useQuery(kindsQuery)
-  const recompute = useRecompute(id)
+  const recompute = useRecompute(id, onSuccessor)
   const kind = kinds?.items.find((each) => each.kind === calculation.kind)
   const title = kind?.title ?? calculation.kind
   const state = stateOf(calculation, sealed)
@@ -56,6 +58,7 @@ function Loaded(props: { calculation: Calculation; editable: boolean; sealed: bo
     >
       <BlockLine>
         <Inputs calculation={calculation} />
+        <FigureLegend calculation={calculation} />
       </BlockLine>
       {kind && (
         <ParameterRow

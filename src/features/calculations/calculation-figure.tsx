@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query'
 import type { Calculation } from '../../../server/contract/calculations.ts'
 import { ApiProblem, sentenceOf } from '../../lib/api-problem.ts'
+import { RoleKey } from '../../plots/channel-key.tsx'
 import { FigurePlot } from '../../plots/figure-plot.tsx'
 import { BlockPart } from '../../ui/block.tsx'
 import { Message } from '../../ui/message.tsx'
@@ -24,3 +25,18 @@ export function CalculationFigure({ calculation }: { calculation: Calculation })
     </BlockPart>
   )
 }
+
+/** The marked line samples of a figure with several channels, to stand in the line of inputs. */
+export function FigureLegend({ calculation }: { calculation: Calculation }) {
+  const { data: figure } = useQuery(figureQuery(calculation.id, calculation.resultSha256))
+  const series = figure?.panels.flatMap((panel) => panel.series) ?? []
+  const channels = series.filter(({ role }, at) => isChannel(role) && series.findIndex((each) => each.role === role) === at)
+  if (channels.length < 2) return null
+  return channels.map(({ role, label }) => (
+    <RoleKey key={role} role={role}>
+      {label}
+    </RoleKey>
+  ))
+}
+
+const isChannel = (role: string) => role.startsWith('channel-')

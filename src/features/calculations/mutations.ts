@@ -30,12 +30,15 @@ export function useStartCalculations(entryId: string) {
   })
 }
 
-/** Computes a block again, with other parameters or the same. */
-export function useRecompute(id: string) {
+/** Computes a block again, with other parameters or the same: the answer is a calculation that takes its place. */
+export function useRecompute(id: string, onSuccessor: (successorId: string) => void) {
   const client = useQueryClient()
   return useMutation({
     mutationFn: (parameters: Record<string, unknown>) => call('recompute', { params: { id }, body: { parameters } }),
-    onSuccess: (calculation) => keep(client, calculation),
+    onSuccess: (calculation) => {
+      keep(client, calculation)
+      onSuccessor(calculation.id)
+    },
   })
 }
 

@@ -69,7 +69,7 @@ function LeafField({ leaf, disabled, error, onCommit, onRemove }: LeafFieldProps
         <ParameterChoice
           {...common}
           value={text}
-          choices={leaf.choices.map((value) => ({ value, label: value.replaceAll('-', ' ') }))}
+          choices={leaf.choices.map((value) => ({ value, label: inWords(value) }))}
         />
       )}
       {leaf.form === 'yes-no' && (
@@ -92,6 +92,11 @@ function LeafField({ leaf, disabled, error, onCommit, onRemove }: LeafFieldProps
       )}
     </span>
   )
+}
+
+/** A name of the interface as words: offPeak and off-peak become "off peak". */
+function inWords(name: string): string {
+  return name.replace(/([a-z])([A-Z])/g, (_, before: string, after: string) => `${before} ${after.toLowerCase()}`).replaceAll('-', ' ')
 }
 
 function refusalOf(leaf: ParameterLeaf, typed: string): string | null {

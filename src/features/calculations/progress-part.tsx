@@ -12,7 +12,8 @@ export function ProgressPart({ calculation, editable }: { calculation: Calculati
   const { id, label, status, progress } = calculation
   const stop = useStop(id)
   const waiting = status === 'queued'
-  const left = progress?.leftS === null || progress?.leftS === undefined ? '' : `about ${waitText(progress.leftS)} left. `
+  const seconds = progress?.leftS ?? 0
+  const left = seconds < 1 ? '' : `about ${waitText(seconds)} left. `
   return (
     <BlockPart>
       <Progress

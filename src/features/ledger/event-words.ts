@@ -22,7 +22,7 @@ const words: Record<string, string> = {
   'entry.returned': 'Returned',
   'entry.withdrawn': 'Withdrawn',
   'entry.author-excepted': 'Author excepted',
-  'entry.rendered': 'Printed for the record',
+  'entry.rendered': 'Printed',
   'entry.amended': 'Amended',
   'entry.exported': 'Exported',
   'notebook.exported': 'Exported',

@@ -12,3 +12,10 @@ export function stampWords(stamp: EntrySignature['timeStamp']): string {
   if (stamp.status === 'pending') return 'not yet time-stamped'
   return stamp.independent ? `time stamp by ${stamp.authority}` : 'time stamp by the laboratory’s own authority'
 }
+
+/** The same as a sentence, for the result of signing. */
+export function stampSentence(stamp: EntrySignature['timeStamp']): string {
+  return stamp.status === 'pending'
+    ? 'Its time stamp is still to come and joins by itself.'
+    : `It carries a ${stampWords(stamp)}.`
+}

@@ -60,3 +60,12 @@ export function useEndorseKey(endorser: Owner, laboratory: Laboratory) {
     onSuccess: () => Promise.all([client.invalidateQueries({ queryKey: queryKeys.people }), client.invalidateQueries({ queryKey: ['ledger', 'events'] })]),
   })
 }
+
+/** Says why writing and work lie more than a day apart; the record holds it. */
+export function useLateRemark(entryId: string) {
+  const client = useQueryClient()
+  return useMutation({
+    mutationFn: (lateRemark: string) => call('changeEntry', { params: { id: entryId }, body: { lateRemark } }),
+    onSuccess: (entry) => client.setQueryData(queryKeys.entry(entryId), entry),
+  })
+}

@@ -9,7 +9,10 @@ export function presenceTrouble(run: Run, from: string | null, to: string | null
   return overlaps({ from, to }, { startedAt: run.startedAt, durationPs }) ? null : `The times do not overlap ${run.number}.`
 }
 
-/** When a run ended, UTC. */
-export function endOfRun(run: Run): string {
-  return new Date(Date.parse(run.startedAt) + Number(run.durationPs ?? 0) / 1e9).toISOString()
+/** When a run began and ended, UTC, widened to whole seconds, in which presence is written. */
+export function spanOfRun(run: Run): { from: string; to: string } {
+  const begin = Date.parse(run.startedAt)
+  const end = begin + Number(run.durationPs ?? 0) / 1e9
+  const seconds = (ms: number) => new Date(ms * 1000).toISOString()
+  return { from: seconds(Math.floor(begin / 1000)), to: seconds(Math.ceil(end / 1000)) }
 }

@@ -19,6 +19,7 @@ export function checksOf(entry: Entry, calculations: readonly Calculation[]): Ch
 
 function signatureChecks(entry: Entry): Check[] {
   const signed = entry.signatures.filter((each) => each.meaning === 'authorship' && !each.voided)
+  if (signed.length === 0) return [{ state: 'note', what: 'No author’s signature stands' }]
   const stamped = signed.filter((each) => each.timeStamp.status === 'stamped')
   const check: Check[] = [
     {

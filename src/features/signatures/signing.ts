@@ -68,12 +68,12 @@ export async function signRecord(
 }
 
 /**
- * Fetches the wrapped key against the proof and opens it for `use`, which gets a function that signs bytes (base64); then
+ * Fetches the wrapped key against the proof and opens it for `work`, which gets a function that signs bytes (base64); then
  * key and derived bytes are overwritten. @throws {ApiProblem} wrong-passphrase, signing-locked, key-not-active
  */
 export async function withSigningKey<T>(
   passphrase: string,
-  use: (sign: (bytes: Uint8Array) => string) => Promise<T>,
+  work: (sign: (bytes: Uint8Array) => string) => Promise<T>,
   onProgress?: OnProgress,
   calls = ownCalls,
 ): Promise<T> {
@@ -85,7 +85,7 @@ export async function withSigningKey<T>(
     const { wrappedKey, iv } = await calls.call('unlockSigningKey', { body: { proof: toBase64(proof) } })
     const seed = await unwrapKey({ wrappedKey, iv }, wrappingKey)
     secrets.push(seed)
-    return await use((bytes) => toBase64(signMessage(seed, bytes)))
+    return await work((bytes) => toBase64(signMessage(seed, bytes)))
   } finally {
     for (const secret of secrets) secret.fill(0)
   }
@@ -109,7 +109,14 @@ export async function deriveKeys(
   onProgress?: OnProgress,
 ): Promise<{ wrappingKey: Uint8Array; proof: Uint8Array }> {
   const bytes = utf8ToBytes(passphrase.normalize('NFKC'))
-  const derived = await scryptAsync(bytes, fromBase64(salt), { N: n, r, p, dkLen: 64, onProgress, maxmem: 2 ** 31 })
+  const derived = await scryptAsync(bytes, fromBase64(salt), {
+    N: n,
+    r,
+    p,
+    dkLen: 64,
+    onProgress,
+    maxmem: 2 ** 31,
+  })
   bytes.fill(0)
   return { wrappingKey: derived.subarray(0, 32), proof: derived.subarray(32) }
 }
@@ -118,22 +125,35 @@ export async function deriveKeys(
 const pkcs8Prefix = fromHex('302e020100300506032b657004220420')
 
 /** The private key as PKCS#8 under AES-256-GCM, the tag at its end: 64 bytes. */
-export async function wrapKey(seed: Uint8Array, wrappingKey: Uint8Array): Promise<{ wrappedKey: string; iv: string }> {
+export async function wrapKey(
+  seed: Uint8Array,
+  wrappingKey: Uint8Array,
+): Promise<{ wrappedKey: string; iv: string }> {
   const pkcs8 = new Uint8Array(48)
   pkcs8.set(pkcs8Prefix)
   pkcs8.set(seed, pkcs8Prefix.length)
   const iv = new Uint8Array(randomBytes(12))
-  const sealed = await crypto.subtle.encrypt({ name: 'AES-GCM', iv }, await aesKey(wrappingKey, 'encrypt'), pkcs8)
+  const sealed = await crypto.subtle.encrypt(
+    { name: 'AES-GCM', iv },
+    await aesKey(wrappingKey, 'encrypt'),
+    pkcs8,
+  )
   pkcs8.fill(0)
   return { wrappedKey: toBase64(new Uint8Array(sealed)), iv: toBase64(iv) }
 }
 
-async function unwrapKey({ wrappedKey, iv }: { wrappedKey: string; iv: string }, wrappingKey: Uint8Array): Promise<Uint8Array> {
+async function unwrapKey(
+  { wrappedKey, iv }: { wrappedKey: string; iv: string },
+  wrappingKey: Uint8Array,
+): Promise<Uint8Array> {
   const algorithm = { name: 'AES-GCM', iv: new Uint8Array(fromBase64(iv)) }
   const key = await aesKey(wrappingKey, 'decrypt')
-  const pkcs8 = new Uint8Array(await crypto.subtle.decrypt(algorithm, key, new Uint8Array(fromBase64(wrappedKey))))
+  const pkcs8 = new Uint8Array(
+    await crypto.subtle.decrypt(algorithm, key, new Uint8Array(fromBase64(wrappedKey))),
+  )
   const seed = pkcs8.slice(pkcs8Prefix.length)
-  if (pkcs8.length !== 48 || pkcs8Prefix.some((byte, at) => byte !== pkcs8[at])) throw new Error('The stored key is not an Ed25519 key.')
+  if (pkcs8.length !== 48 || pkcs8Prefix.some((byte, at) => byte !== pkcs8[at]))
+    throw new Error('The stored key is not an Ed25519 key.')
   pkcs8.fill(0)
   return seed
 }

@@ -7,7 +7,11 @@ import { announce, cancelChannel } from '../announce.ts'
 import { cancel, type CalculationRow } from '../repository.ts'
 
 /** Stops a calculation that waits or runs; one that is over stays as it is. */
-export async function cancelCalculation(services: Services, actor: Actor, calculation: CalculationRow): Promise<void> {
+export async function cancelCalculation(
+  services: Services,
+  actor: Actor,
+  calculation: CalculationRow,
+): Promise<void> {
   await services.db.transaction(async (t) => {
     await requireWritableEntry(services, actor, calculation.entryId, t)
     const stopped = await cancel(services.db, calculation.id, services.clock.now(), t)

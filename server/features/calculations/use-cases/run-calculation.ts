@@ -57,18 +57,32 @@ export async function runCalculation(services: Services, pool: ComputePool, id: 
 
 async function mayRun(services: Services, calculation: CalculationRow): Promise<boolean> {
   if (calculation.status !== 'queued' && calculation.status !== 'running') return false
-  const state = await services.db.row<{ state: string }>('select state from work.entries where id = :id', { id: calculation.entryId })
+  const state = await services.db.row<{ state: string }>('select state from work.entries where id = :id', {
+    id: calculation.entryId,
+  })
   return state?.state === 'draft' || state?.state === 'submitted'
 }
 
-async function readInputs(services: Services, calculation: CalculationRow): Promise<{ inputs: FileInput[]; columnsKeys: string[] }> {
-  const files = await Promise.all(calculation.inputs.map((input) => waitForReading(services, input.fileId, READING_WAIT_MS)))
+async function readInputs(
+  services: Services,
+  calculation: CalculationRow,
+): Promise<{ inputs: FileInput[]; columnsKeys: string[] }> {
+  const files = await Promise.all(
+    calculation.inputs.map((input) => waitForReading(services, input.fileId, READING_WAIT_MS)),
+  )
   const columnsKeys = files.map((file) => {
     if (file.readingStatus === 'ready' && file.columnsKey !== null) return file.columnsKey
-    throw new Problem('unreadable-file', `${file.name} cannot be read: ${file.readingDetail ?? 'its reading did not end.'} The file is safe; say how to read it and compute again.`)
+    throw new Problem(
+      'unreadable-file',
+      `${file.name} cannot be read: ${file.readingDetail ?? 'its reading did not end.'} The file is safe; say how to read it and compute again.`,
+    )
   })
   return {
-    inputs: files.map((file) => ({ fileId: file.id, sha256: file.sha256, readingSha256: file.readingSha256 })),
+    inputs: files.map((file) => ({
+      fileId: file.id,
+      sha256: file.sha256,
+      readingSha256: file.readingSha256,
+    })),
     columnsKeys,
   }
 }
@@ -114,11 +128,18 @@ async function keep(
 async function keepFailure(services: Services, id: string, error: unknown): Promise<void> {
   if (error instanceof Problem) return fail(services.db, id, problemBody(error), services.clock.now())
   services.log.error({ err: error, calculation: id }, 'a calculation failed')
-  const problem = new Problem('internal', 'The calculation failed for a reason of the program, not of your data. The inputs are safe; compute again, and tell the laboratory manager if it fails again.')
+  const problem = new Problem(
+    'internal',
+    'The calculation failed for a reason of the program, not of your data. The inputs are safe; compute again, and tell the laboratory manager if it fails again.',
+  )
   return fail(services.db, id, problemBody(problem), services.clock.now())
 }
 
-function throttledProgress(services: Services, id: string, startedAt: Date): (done: number, of: number) => void {
+function throttledProgress(
+  services: Services,
+  id: string,
+  startedAt: Date,
+): (done: number, of: number) => void {
   let last = 0
   return (done, of) => {
     const now = Date.now()

@@ -37,7 +37,12 @@ export interface Started {
 }
 
 /** Starts a calculation, or answers at once when the same was computed before. */
-export async function startCalculation(services: Services, actor: Actor, entryId: string, start: CalculationStart): Promise<Started> {
+export async function startCalculation(
+  services: Services,
+  actor: Actor,
+  entryId: string,
+  start: CalculationStart,
+): Promise<Started> {
   requireOpen(await requireEntry(services, actor, entryId, 'write'))
   const definition = kindDefinition(start.kind)
   const parameters = parseParameters(definition, start.parameters)
@@ -58,7 +63,12 @@ export async function startSuccessor(
   requireOpen(await requireEntry(services, actor, previous.entryId, 'write'))
   const definition = kindDefinition(previous.kind)
   const parameters = parseParameters(definition, changed)
-  const inputs = await resolveInputs(services, actor, definition, previous.inputs.map(({ fileId }) => ({ fileId })))
+  const inputs = await resolveInputs(
+    services,
+    actor,
+    definition,
+    previous.inputs.map(({ fileId }) => ({ fileId })),
+  )
   return add(services, actor, previous.entryId, definition, parameters, inputs, previous)
 }
 
@@ -70,10 +80,14 @@ async function resolveInputs(
 ): Promise<FileInput[]> {
   const { min, max } = definition.inputs
   if (given.length < min || given.length > max)
-    throw invalid('/inputs', `${definition.title} takes ${min === max ? min : `${min} to ${max}`} input${max === 1 ? '' : 's'}, not ${given.length}.`)
+    throw invalid(
+      '/inputs',
+      `${definition.title} takes ${min === max ? min : `${min} to ${max}`} input${max === 1 ? '' : 's'}, not ${given.length}.`,
+    )
   return Promise.all(
     given.map(async (input, index) => {
-      if (!('fileId' in input)) throw invalid(`/inputs/${index}`, `${definition.title} takes files, not other calculations.`)
+      if (!('fileId' in input))
+        throw invalid(`/inputs/${index}`, `${definition.title} takes files, not other calculations.`)
       await requireFile(services, actor, input.fileId)
       const file = await waitForReading(services, input.fileId, READING_WAIT_MS)
       requireUsable(file, definition, index)
@@ -84,12 +98,19 @@ async function resolveInputs(
 
 function requireUsable(file: FileRow, definition: KindDefinition, index: number): void {
   if (file.readingStatus === 'unreadable')
-    throw new Problem('unreadable-file', `${file.name} cannot be read: ${file.readingDetail ?? 'its form is not known.'} The file is safe; say how to read it and compute again.`, {
-      errors: [{ pointer: `/inputs/${index}/fileId`, detail: 'cannot be read' }],
-    })
+    throw new Problem(
+      'unreadable-file',
+      `${file.name} cannot be read: ${file.readingDetail ?? 'its form is not known.'} The file is safe; say how to read it and compute again.`,
+      {
+        errors: [{ pointer: `/inputs/${index}/fileId`, detail: 'cannot be read' }],
+      },
+    )
   const kind = file.readingSummary?.kind
   if (kind && !(definition.inputs.accepts as string[]).includes(kind))
-    throw invalid(`/inputs/${index}/fileId`, `${file.name} holds a ${kind === 'tags' ? 'tag record' : kind}; ${definition.title} takes ${definition.inputs.accepts.join(' or ')}.`)
+    throw invalid(
+      `/inputs/${index}/fileId`,
+      `${file.name} holds a ${kind === 'tags' ? 'tag record' : kind}; ${definition.title} takes ${definition.inputs.accepts.join(' or ')}.`,
+    )
 }
 
 async function add(
@@ -127,15 +148,23 @@ async function add(
       t,
     )
     const known = key === null ? null : await findKnown(services.db, key, t)
-    if (known === null) await services.queue.send('calculate', { calculationId: id }, { transaction: t, retryLimit: 3 })
+    if (known === null)
+      await services.queue.send('calculate', { calculationId: id }, { transaction: t, retryLimit: 3 })
     else await finishWithKnown(services, actor, id, known, t)
     return { id, known: known !== null }
   })
 }
 
-async function finishWithKnown(services: Services, actor: Actor, id: string, known: CalculationRow, t: Transaction): Promise<void> {
+async function finishWithKnown(
+  services: Services,
+  actor: Actor,
+  id: string,
+  known: CalculationRow,
+  t: Transaction,
+): Promise<void> {
   const calculation = await findCalculation(services.db, id, t)
-  if (calculation === null || known.resultSha256 === null || known.cacheKey === null) throw new Error('a known result is incomplete')
+  if (calculation === null || known.resultSha256 === null || known.cacheKey === null)
+    throw new Error('a known result is incomplete')
   const now = services.clock.now()
   await finish(
     services.db,

@@ -15,7 +15,12 @@ export interface EntryDetails {
 }
 
 /** Title, experiment, time of the run, remark on late writing and the important flag: all of it enters the signed body. */
-export async function changeEntry(services: Services, actor: Actor, entryId: string, details: EntryDetails): Promise<void> {
+export async function changeEntry(
+  services: Services,
+  actor: Actor,
+  entryId: string,
+  details: EntryDetails,
+): Promise<void> {
   await services.db.transaction(async (t) => {
     await requireWritableEntry(services, actor, entryId, t)
     const { runAt, ...rest } = details
@@ -25,7 +30,9 @@ export async function changeEntry(services: Services, actor: Actor, entryId: str
       entryId,
       {
         ...rest,
-        ...(time === undefined ? {} : { runAt: time, workDate: dateInZone(time, services.config.laboratory.zone) }),
+        ...(time === undefined
+          ? {}
+          : { runAt: time, workDate: dateInZone(time, services.config.laboratory.zone) }),
       },
       services.clock.now(),
       t,

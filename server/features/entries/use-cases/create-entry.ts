@@ -18,7 +18,12 @@ export interface EntryStart {
 }
 
 /** A new entry with the next number of its notebook; numbers have no gaps because the notebook's row is locked. */
-export async function createEntry(services: Services, actor: Actor, notebookId: string, start: EntryStart): Promise<string> {
+export async function createEntry(
+  services: Services,
+  actor: Actor,
+  notebookId: string,
+  start: EntryStart,
+): Promise<string> {
   return services.db.transaction((t) => createEntryIn(services, actor, notebookId, start, t))
 }
 

@@ -4,13 +4,19 @@ import { appendEvent } from '../../ledger/index.ts'
 import { findSave, insertRevision, revisionsOf } from '../saves-repository.ts'
 import { updateEntry, type EntryRow } from '../repository.ts'
 
-export type RevisionCause = 'typing' | 'pause' | 'author-change' | 'leaving' | 'calculation' | 'restore' | 'signature'
+export type RevisionCause =
+  'typing' | 'pause' | 'author-change' | 'leaving' | 'calculation' | 'restore' | 'signature'
 
 /**
  * Makes a revision of the newest save, in its writer's name, if there are saves since the last revision. Answers the
  * entry as it is afterwards. The caller holds the entry's lock.
  */
-export async function cutRevision(services: Services, t: Transaction, entry: EntryRow, cause: RevisionCause): Promise<EntryRow> {
+export async function cutRevision(
+  services: Services,
+  t: Transaction,
+  entry: EntryRow,
+  cause: RevisionCause,
+): Promise<EntryRow> {
   const revisions = await revisionsOf(services.db, entry.id, t)
   if (entry.saveNumber === (revisions.at(-1)?.saveNumber ?? 0)) return entry
   const save = await findSave(services.db, entry.id, entry.saveNumber, t)

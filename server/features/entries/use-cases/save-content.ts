@@ -49,7 +49,13 @@ export async function saveContent(
       contentSha256: contentSha256(document),
     }
     await insertSave(services.db, save, document, t)
-    await updateEntry(services.db, entryId, { saveNumber: save.number, contentSha256: save.contentSha256 }, save.savedAt, t)
+    await updateEntry(
+      services.db,
+      entryId,
+      { saveNumber: save.number, contentSha256: save.contentSha256 },
+      save.savedAt,
+      t,
+    )
     return {
       revision: entry.revision,
       save: save.number,
@@ -61,7 +67,10 @@ export async function saveContent(
 
 function requireCurrent(entry: EntryRow, ifMatch: string | undefined): void {
   if (ifMatch === undefined)
-    throw new Problem('missing-precondition', 'Send If-Match with the ETag of the text you changed, so that nobody is overwritten.')
+    throw new Problem(
+      'missing-precondition',
+      'Send If-Match with the ETag of the text you changed, so that nobody is overwritten.',
+    )
   const current = contentTag(entry.saveNumber, entry.contentSha256)
   if (!tagMatches(ifMatch, current))
     throw new Problem(
@@ -96,6 +105,7 @@ async function cutBefore(
   if (now - last.savedAt.getTime() > PAUSE_MS) return cutRevision(services, t, entry, 'pause')
   const revisedSave = (await revisionsOf(services.db, entry.id, t)).at(-1)?.saveNumber ?? 0
   const first = await findSave(services.db, entry.id, revisedSave + 1, t)
-  if (first !== null && now - first.savedAt.getTime() > TYPING_MS) return cutRevision(services, t, entry, 'typing')
+  if (first !== null && now - first.savedAt.getTime() > TYPING_MS)
+    return cutRevision(services, t, entry, 'typing')
   return entry
 }

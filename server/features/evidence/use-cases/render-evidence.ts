@@ -34,7 +34,10 @@ export async function renderEvidence(services: Services, entryId: string): Promi
   if ((await renditionsOf(services.db, entryId)).length > 0) return
   const input = await gatherSheet(services, entry)
   const signatures = await signaturesOf(services.db, [entryId])
-  const files = await evidenceFiles(input, signatures.filter(({ voidedAt }) => voidedAt === null))
+  const files = await evidenceFiles(
+    input,
+    signatures.filter(({ voidedAt }) => voidedAt === null),
+  )
   const stored = await store(services, entryId, files)
   await services.db.transaction(async (t) => {
     await lockLedger(services, t)
@@ -88,10 +91,17 @@ async function store(services: Services, entryId: string, files: EvidenceFile[])
 }
 
 /** Where the chains end that a bundle of this entry must show in full: of its keys, and of the entry it amends. */
-async function chainsOf(services: Services, entry: EntryRow, signatures: SignatureRow[], t: Transaction): Promise<Chains> {
+async function chainsOf(
+  services: Services,
+  entry: EntryRow,
+  signatures: SignatureRow[],
+  t: Transaction,
+): Promise<Chains> {
   const root = await rootEnrolmentSha256(services, t)
   if (root === null) throw new Error('The laboratory has no root enrolment.')
-  const signers = signatures.map(({ record }) => (parseJson(record) as unknown as SignedRecord).signing.signer.enrolmentSha256)
+  const signers = signatures.map(
+    ({ record }) => (parseJson(record) as unknown as SignedRecord).signing.signer.enrolmentSha256,
+  )
   const keys = reachedKeys(signers, await keyInputs(services, t), root)
   const subjects = [
     ...keys.map(({ enrolment }) => ({ kind: 'key', id: enrolment.id }) as const),

@@ -31,8 +31,14 @@ export async function buildExport(services: Services, exportId: string): Promise
     await build(services, row)
   } catch (error) {
     services.log.error({ err: error, export: exportId }, 'an export failed')
-    const sentence = 'The bundle could not be made. The entries are safe; start the export again, and if it stays, tell whoever runs this server.'
-    await setStatus(services.db, row.id, 'failed', problemBody(error instanceof Problem ? error : new Problem('internal', sentence)))
+    const sentence =
+      'The bundle could not be made. The entries are safe; start the export again, and if it stays, tell whoever runs this server.'
+    await setStatus(
+      services.db,
+      row.id,
+      'failed',
+      problemBody(error instanceof Problem ? error : new Problem('internal', sentence)),
+    )
   }
 }
 
@@ -47,7 +53,11 @@ async function build(services: Services, row: ExportRow): Promise<void> {
   const stamped = await stampsHaveCome(services, chosen)
   if (!stamped && services.clock.now().getTime() - row.createdAt.getTime() < STAMP_WAIT_MS) {
     await setStatus(services.db, row.id, 'waiting-for-time-stamp')
-    await services.queue.send('build-export', { exportId: row.id }, { startAfter: STAMP_RETRY_S, retryLimit: 2 })
+    await services.queue.send(
+      'build-export',
+      { exportId: row.id },
+      { startAfter: STAMP_RETRY_S, retryLimit: 2 },
+    )
     return
   }
   const input = await gatherBundle(services, chosen, await scopeOf(row, entries), row.withoutRaw)
@@ -70,10 +80,14 @@ async function waitForEvidence(services: Services, entryId: string): Promise<voi
 
 /** Tries what is missing at once; true when every signature and the head have their stamp. */
 async function stampsHaveCome(services: Services, chosen: Chosen): Promise<boolean> {
-  const signatures = await signaturesOf(services.db, chosen.entries.map(({ entry }) => entry.id))
+  const signatures = await signaturesOf(
+    services.db,
+    chosen.entries.map(({ entry }) => entry.id),
+  )
   const head = await findHead(services, chosen.treeSize)
   try {
-    for (const { signature } of [...signatures, ...(head ? [head] : [])]) await stamp(services, signature, STAMP_TIMEOUT_MS)
+    for (const { signature } of [...signatures, ...(head ? [head] : [])])
+      await stamp(services, signature, STAMP_TIMEOUT_MS)
     return true
   } catch (error) {
     services.log.warn({ err: error }, 'an export waits for time stamps')

@@ -13,9 +13,15 @@ const ALL = 2 ** 31 - 1
 
 /** Queues a bundle of chosen entries, or of a notebook; at least one of them must be sealed. Answers the export's id. */
 export async function startExport(services: Services, actor: Actor, request: ExportRequest): Promise<string> {
-  const entries = 'notebookId' in request ? await notebookEntries(services, actor, request.notebookId) : await chosenEntries(services, actor, request.entryIds)
+  const entries =
+    'notebookId' in request
+      ? await notebookEntries(services, actor, request.notebookId)
+      : await chosenEntries(services, actor, request.entryIds)
   if (!entries.some(({ state }) => state === 'sealed'))
-    throw new Problem('wrong-state', 'Only sealed entries are exported, and none of these is sealed yet. Nothing was started.')
+    throw new Problem(
+      'wrong-state',
+      'Only sealed entries are exported, and none of these is sealed yet. Nothing was started.',
+    )
   const id = randomUUID()
   const createdAt = services.clock.now()
   await services.db.transaction(async (t) => {
@@ -42,7 +48,11 @@ async function notebookEntries(services: Services, actor: Actor, notebookId: str
   return entriesOfNotebook(services.db, notebookId, ALL, ALL)
 }
 
-async function chosenEntries(services: Services, actor: Actor, entryIds: readonly string[]): Promise<EntryRow[]> {
+async function chosenEntries(
+  services: Services,
+  actor: Actor,
+  entryIds: readonly string[],
+): Promise<EntryRow[]> {
   const entries: EntryRow[] = []
   for (const id of new Set(entryIds)) entries.push(await requireEntry(services, actor, id, 'export'))
   return entries

@@ -6,7 +6,8 @@ import type { ReadingPool } from '../reading-pool.ts'
 export async function readFile(services: Services, pool: ReadingPool, fileId: string): Promise<void> {
   const file = await findFile(services.db, fileId)
   if (file === null || file.readingStatus !== 'pending') return
-  const choice = file.readingFormat === null ? null : { format: file.readingFormat, options: file.readingOptions ?? {} }
+  const choice =
+    file.readingFormat === null ? null : { format: file.readingFormat, options: file.readingOptions ?? {} }
   const found = await pool.read({
     fileId,
     name: file.name,

@@ -42,7 +42,13 @@ export async function storeFile(
   const objectKey = `raw/${fileId}`
   const stored = await services.storage.putBytes(objectKey, file.bytes)
   const { versionId, size, sha256, sha512 } = stored
-  return keepFile(services, actor, target, { fileId, name: file.name, objectKey, objectVersion: versionId, size, sha256, sha512 }, () => undefined)
+  return keepFile(
+    services,
+    actor,
+    target,
+    { fileId, name: file.name, objectKey, objectVersion: versionId, size, sha256, sha512 },
+    () => undefined,
+  )
 }
 
 /** Compares with a re-read of the store and records the file; what cannot be kept is removed from the store again. */
@@ -108,12 +114,20 @@ async function recordFile(
 
 async function requireSameInStore(services: Services, received: Received): Promise<void> {
   if ((await digestInStore(services, received.objectKey, received.objectVersion)) === received.sha256) return
-  throw new Problem('service-unavailable', 'The object store gave back other bytes than it was given. Nothing was kept; tell the laboratory manager.')
+  throw new Problem(
+    'service-unavailable',
+    'The object store gave back other bytes than it was given. Nothing was kept; tell the laboratory manager.',
+  )
 }
 
 /** SHA-256 of the store's own copy, read again from beginning to end. */
-export async function digestInStore(services: Services, key: string, version: string | null): Promise<string> {
+export async function digestInStore(
+  services: Services,
+  key: string,
+  version: string | null,
+): Promise<string> {
   const hash = createHash('sha256')
-  for await (const chunk of await services.storage.get(key, version ?? undefined)) hash.update(chunk as Buffer)
+  for await (const chunk of await services.storage.get(key, version ?? undefined))
+    hash.update(chunk as Buffer)
   return hash.digest('hex')
 }

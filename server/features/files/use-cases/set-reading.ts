@@ -27,12 +27,18 @@ export async function setReading(
     await services.queue.send('read-file', { fileId }, { transaction: t })
   })
   const file = await waitForReading(services, fileId, WAIT_MS)
-  if (file.readingStatus === 'unreadable') throw new Problem('unreadable-file', file.readingDetail ?? 'The file cannot be read in this way.')
+  if (file.readingStatus === 'unreadable')
+    throw new Problem('unreadable-file', file.readingDetail ?? 'The file cannot be read in this way.')
   if (file.readingStatus === 'ready') await recordReading(services, actor, file)
   return file
 }
 
-async function requireReadableFile(services: Services, actor: Actor, fileId: string, t: Transaction): Promise<void> {
+async function requireReadableFile(
+  services: Services,
+  actor: Actor,
+  fileId: string,
+  t: Transaction,
+): Promise<void> {
   const file = await findFile(services.db, fileId, t)
   if (file === null) throw new Problem('not-found', 'There is no such file, or you may not read it.')
   await requireNotebook(services, actor, file.notebookId, 'write', t)
@@ -44,7 +50,10 @@ async function recordReading(services: Services, actor: Actor, file: FileRow): P
     appendEvent(services, t, {
       actor: actorOf(actor),
       action: 'reading.set',
-      subject: file.homeEntryId === null ? { kind: 'run', id: file.runId as string } : { kind: 'entry', id: file.homeEntryId },
+      subject:
+        file.homeEntryId === null
+          ? { kind: 'run', id: file.runId as string }
+          : { kind: 'entry', id: file.homeEntryId },
       payload: { fileId: file.id, readingSha256: file.readingSha256 },
     }),
   )

@@ -7,7 +7,10 @@ import { digestInStore } from './receive-file.ts'
 export async function verifyFile(services: Services, fileId: string): Promise<void> {
   const file = await findFile(services.db, fileId)
   if (file === null) return
-  const state = (await digestInStore(services, file.objectKey, file.objectVersion)) === file.sha256 ? 'verified' : 'mismatch'
+  const state =
+    (await digestInStore(services, file.objectKey, file.objectVersion)) === file.sha256
+      ? 'verified'
+      : 'mismatch'
   await services.db.transaction(async (t) => {
     await setFileState(services.db, fileId, state, t)
     if (state === 'verified') return
@@ -15,7 +18,10 @@ export async function verifyFile(services: Services, fileId: string): Promise<vo
     await appendEvent(services, t, {
       actor: { kind: 'system', id: null, onBehalfOf: null },
       action: 'file.mismatch',
-      subject: file.homeEntryId === null ? { kind: 'run', id: file.runId as string } : { kind: 'entry', id: file.homeEntryId },
+      subject:
+        file.homeEntryId === null
+          ? { kind: 'run', id: file.runId as string }
+          : { kind: 'entry', id: file.homeEntryId },
       payload: { fileId },
     })
   })

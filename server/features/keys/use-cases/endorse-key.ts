@@ -12,7 +12,15 @@ import { laboratory } from '../../laboratory/index.ts'
 import { appendEvent } from '../../ledger/index.ts'
 import { certify } from '../certify.ts'
 import { documentMinutes, minutesAfter } from '../policy.ts'
-import { currentKey, keepPending, keysOf, keyStatus, lockPerson, takePending, type KeyRow } from '../repository.ts'
+import {
+  currentKey,
+  keepPending,
+  keysOf,
+  keyStatus,
+  lockPerson,
+  takePending,
+  type KeyRow,
+} from '../repository.ts'
 import { inactiveSentence } from './unlock-key.ts'
 
 /** The endorsement of a key that waits for one, to be signed by the caller's own key. */
@@ -37,7 +45,12 @@ export async function prepareEndorsement(
           enrolmentSha256: key.enrolmentSha256,
           subjectId: personId,
           publicKey: enrolment.publicKey,
-          endorser: { subjectId: endorserId, name: endorser.name, role, enrolmentSha256: ownKey.enrolmentSha256 },
+          endorser: {
+            subjectId: endorserId,
+            name: endorser.name,
+            role,
+            enrolmentSha256: ownKey.enrolmentSha256,
+          },
           identity: given.identity,
           statement: endorsementStatement({
             endorser: endorser.name,
@@ -64,18 +77,38 @@ export async function endorseKey(
 ): Promise<void> {
   await services.db.transaction(async (t) => {
     const { ownKey } = await requireEndorser(services, endorserId, personId, t)
-    const pending = await takePending(services.db, { id: given.endorsementId, personId: endorserId, kind: 'endorsement' }, t)
+    const pending = await takePending(
+      services.db,
+      { id: given.endorsementId, personId: endorserId, kind: 'endorsement' },
+      t,
+    )
     if (!pending || pending.expiresAt <= services.clock.now())
-      throw new Problem('record-expired', 'The prepared endorsement has expired or was used. Begin again; nothing was changed.')
+      throw new Problem(
+        'record-expired',
+        'The prepared endorsement has expired or was used. Begin again; nothing was changed.',
+      )
     const document = parseCanonical(pending.document) as unknown as Endorsement
     if (document.subjectId !== personId || document.endorser.enrolmentSha256 !== ownKey.enrolmentSha256)
-      throw new Problem('record-changed', 'Your key or the person is another than when this was prepared. Begin again.')
+      throw new Problem(
+        'record-changed',
+        'Your key or the person is another than when this was prepared. Begin again.',
+      )
     const key = await requireWaiting(services, personId, document.enrolmentSha256, t)
     if (!verifySignature(ownKey.publicKey, pending.document, given.signature))
-      throw new Problem('invalid-values', 'The signature is not one of your key over the endorsement; nothing was changed.', {
-        errors: [{ pointer: '/signature', detail: 'Sign the document bytes with your own signing key.' }],
-      })
-    await recordEndorsement(services, endorserId, key, { id: given.endorsementId, document: pending.document, signature: given.signature }, t)
+      throw new Problem(
+        'invalid-values',
+        'The signature is not one of your key over the endorsement; nothing was changed.',
+        {
+          errors: [{ pointer: '/signature', detail: 'Sign the document bytes with your own signing key.' }],
+        },
+      )
+    await recordEndorsement(
+      services,
+      endorserId,
+      key,
+      { id: given.endorsementId, document: pending.document, signature: given.signature },
+      t,
+    )
     await certify(services, key, (parseCanonical(key.document) as unknown as Enrolment).name, t)
   })
 }
@@ -104,7 +137,8 @@ async function recordEndorsement(
 
 /** A manager or supervisor, another person, whose own key can sign. Both people's rows are locked, in one order. */
 async function requireEndorser(services: Services, endorserId: string, personId: string, t: Transaction) {
-  if (endorserId === personId) throw new Problem('not-allowed', 'Nobody endorses a key of their own. Ask a manager or supervisor.')
+  if (endorserId === personId)
+    throw new Problem('not-allowed', 'Nobody endorses a key of their own. Ask a manager or supervisor.')
   for (const id of [endorserId, personId].sort()) await lockPerson(services.db, id, t)
   const endorser = await lockPerson(services.db, endorserId, t)
   const role = (['manager', 'supervisor'] as const).find((candidate) => endorser?.roles.includes(candidate))
@@ -117,10 +151,18 @@ async function requireEndorser(services: Services, endorserId: string, personId:
 }
 
 /** The newest key of the person, if it waits for endorsement; an older one is never endorsed any more. */
-async function requireWaiting(services: Services, personId: string, enrolmentSha256: string, t: Transaction): Promise<KeyRow> {
+async function requireWaiting(
+  services: Services,
+  personId: string,
+  enrolmentSha256: string,
+  t: Transaction,
+): Promise<KeyRow> {
   const [newest] = await keysOf(services.db, [personId], t)
   if (!newest || newest.enrolmentSha256 !== enrolmentSha256)
-    throw new Problem('record-changed', 'This is not the newest enrolment of the person. Look at the newest one and compare its digits again.')
+    throw new Problem(
+      'record-changed',
+      'This is not the newest enrolment of the person. Look at the newest one and compare its digits again.',
+    )
   if (keyStatus(newest, services.clock.now()) !== 'awaiting-endorsement')
     throw new Problem('wrong-state', 'This key does not wait for an endorsement.')
   return newest

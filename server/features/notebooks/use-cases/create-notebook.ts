@@ -10,7 +10,10 @@ import { insertNotebook, upsertMember } from '../repository.ts'
 function keepingRole(roles: readonly Role[]): Role {
   const role = roles.find((r) => r === 'experimentalist') ?? roles.find((r) => r === 'supervisor')
   if (role === undefined)
-    throw new Problem('not-allowed', 'A notebook is opened by an experimentalist or a supervisor; your roles do not include writing.')
+    throw new Problem(
+      'not-allowed',
+      'A notebook is opened by an experimentalist or a supervisor; your roles do not include writing.',
+    )
   return role
 }
 
@@ -21,7 +24,11 @@ export async function createNotebook(services: Services, actor: Actor, title: st
   await services.db.transaction(async (t) => {
     const now = services.clock.now()
     await insertNotebook(services.db, { id, title, createdBy: actor.personId, createdAt: now }, t)
-    await upsertMember(services.db, { notebookId: id, personId: actor.personId, role, keeper: true, addedAt: now }, t)
+    await upsertMember(
+      services.db,
+      { notebookId: id, personId: actor.personId, role, keeper: true, addedAt: now },
+      t,
+    )
     await appendEvent(services, t, {
       actor: actorOf(actor),
       action: 'notebook.created',

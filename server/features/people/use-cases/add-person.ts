@@ -7,7 +7,15 @@ import { insertPerson } from '../repository.ts'
 /** A person of the laboratory, bound to a numeric account of the code host (a login can be renamed; the number cannot). */
 export async function addPerson(
   services: Services,
-  person: { id?: string; login: string; name: string; email: string | null; provider: string; providerAccountId: string; roles: Role[] },
+  person: {
+    id?: string
+    login: string
+    name: string
+    email: string | null
+    provider: string
+    providerAccountId: string
+    roles: Role[]
+  },
 ): Promise<string> {
   const id = person.id ?? randomUUID()
   await services.db.transaction(async (t) => {

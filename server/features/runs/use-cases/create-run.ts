@@ -16,7 +16,12 @@ type RunStart = z.output<typeof newRunSchema>
 type ApparatusUse = z.output<typeof apparatusUseSchema>
 
 /** A run that is not yet filed in an entry. */
-export async function createRun(services: Services, actor: Actor, notebookId: string, start: RunStart): Promise<string> {
+export async function createRun(
+  services: Services,
+  actor: Actor,
+  notebookId: string,
+  start: RunStart,
+): Promise<string> {
   return services.db.transaction(async (t) => {
     await requireNotebook(services, actor, notebookId, 'write', t)
     return addRun(services, actor, notebookId, start, t)
@@ -24,7 +29,12 @@ export async function createRun(services: Services, actor: Actor, notebookId: st
 }
 
 /** A run made and filed in an entry at once. */
-export async function createRunInEntry(services: Services, actor: Actor, entryId: string, start: RunStart): Promise<string> {
+export async function createRunInEntry(
+  services: Services,
+  actor: Actor,
+  entryId: string,
+  start: RunStart,
+): Promise<string> {
   return services.db.transaction(async (t) => {
     const entry = await requireWritableEntry(services, actor, entryId, t)
     const id = await addRun(services, actor, entry.notebookId, start, t)
@@ -34,13 +44,19 @@ export async function createRunInEntry(services: Services, actor: Actor, entryId
 }
 
 /** Files a run in an entry of the same notebook; it stays there, and its own chain ends here. */
-export async function fileRun(services: Services, actor: Actor, entryId: string, runId: string): Promise<void> {
+export async function fileRun(
+  services: Services,
+  actor: Actor,
+  entryId: string,
+  runId: string,
+): Promise<void> {
   await services.db.transaction(async (t) => {
     const entry = await requireWritableEntry(services, actor, entryId, t)
     const run = await lockRun(services.db, runId, t)
     if (run === null || run.notebookId !== entry.notebookId)
       throw new Problem('not-found', 'There is no such run in the notebook of this entry.')
-    if (run.entryId !== null) throw new Problem('wrong-state', 'The run is filed already; a run is filed once and stays.')
+    if (run.entryId !== null)
+      throw new Problem('wrong-state', 'The run is filed already; a run is filed once and stays.')
     await appendFiling(services, actor, entryId, runId, t)
   })
 }
@@ -48,7 +64,12 @@ export async function fileRun(services: Services, actor: Actor, entryId: string,
 export type RunDetails = Partial<RunStart>
 
 /** Changes conditions, times or equipment of a run that is not frozen. */
-export async function changeRun(services: Services, actor: Actor, runId: string, details: RunDetails): Promise<void> {
+export async function changeRun(
+  services: Services,
+  actor: Actor,
+  runId: string,
+  details: RunDetails,
+): Promise<void> {
   await services.db.transaction(async (t) => {
     const run = await requireWritableRun(services, actor, runId, t)
     const changed: RunRow = {
@@ -57,7 +78,8 @@ export async function changeRun(services: Services, actor: Actor, runId: string,
       startedAt: details.startedAt === undefined ? run.startedAt : new Date(details.startedAt),
       durationPs: details.durationPs === undefined ? run.durationPs : textOf(details.durationPs),
       conditions: details.conditions ?? run.conditions,
-      apparatus: details.apparatus === undefined ? run.apparatus : await asUsed(services, details.apparatus, t),
+      apparatus:
+        details.apparatus === undefined ? run.apparatus : await asUsed(services, details.apparatus, t),
     }
     await updateRun(services.db, runId, changed, t)
     await appendEvent(services, t, {
@@ -69,7 +91,13 @@ export async function changeRun(services: Services, actor: Actor, runId: string,
   })
 }
 
-async function addRun(services: Services, actor: Actor, notebookId: string, start: RunStart, t: Transaction): Promise<string> {
+async function addRun(
+  services: Services,
+  actor: Actor,
+  notebookId: string,
+  start: RunStart,
+  t: Transaction,
+): Promise<string> {
   const id = randomUUID()
   const now = services.clock.now()
   await insertRun(
@@ -96,7 +124,13 @@ async function addRun(services: Services, actor: Actor, notebookId: string, star
   return id
 }
 
-async function appendFiling(services: Services, actor: Actor, entryId: string, runId: string, t: Transaction): Promise<void> {
+async function appendFiling(
+  services: Services,
+  actor: Actor,
+  entryId: string,
+  runId: string,
+  t: Transaction,
+): Promise<void> {
   await fileRunIn(services.db, runId, entryId, t)
   const end = await services.db.row<{ sequence: string; digest: string }>(
     `select subject_sequence as sequence, digest from record.events where subject_kind = 'run' and subject_id = :runId
@@ -114,8 +148,16 @@ async function appendFiling(services: Services, actor: Actor, entryId: string, r
 }
 
 /** Equipment as used: the register's version and figures of today, with the role and channel it had. */
-async function asUsed(services: Services, uses: readonly ApparatusUse[], t: Transaction): Promise<RunApparatus[]> {
-  const register = await apparatusById(services.db, uses.map((use) => use.id), t)
+async function asUsed(
+  services: Services,
+  uses: readonly ApparatusUse[],
+  t: Transaction,
+): Promise<RunApparatus[]> {
+  const register = await apparatusById(
+    services.db,
+    uses.map((use) => use.id),
+    t,
+  )
   return uses.map((use, index) => {
     const found = register.find((apparatus) => apparatus.id === use.id)
     if (found === undefined)

@@ -4,7 +4,13 @@ import { Problem } from '../../../contract/problems.ts'
 import type { Meaning } from '../../../contract/signatures.ts'
 import { canonicalBytes } from '../../../ledger-format/canonical-json.ts'
 import { sha256Hex } from '../../../ledger-format/digest.ts'
-import { buildRecord, describeBody, overlaps, type BuiltBody, type Signing } from '../../../ledger-format/record.ts'
+import {
+  buildRecord,
+  describeBody,
+  overlaps,
+  type BuiltBody,
+  type Signing,
+} from '../../../ledger-format/record.ts'
 import { signingStatement } from '../../../ledger-format/statements.ts'
 import type { Transaction } from '../../../platform/db/database.ts'
 import type { Actor } from '../../../platform/http/actor.ts'
@@ -46,7 +52,12 @@ export async function prepareRecord(
     const signer = await requireSigner(services, personId, t)
     const body = await bodyToSign(services, standing, t)
     const parts = await signingParts(services, standing, signer, body, request, t)
-    const wanted = { entryId, personId, meaning: request.meaning, stateKey: sha256Hex(canonicalBytes({ ...parts, body: body.bodySha256 })) }
+    const wanted = {
+      entryId,
+      personId,
+      meaning: request.meaning,
+      stateKey: sha256Hex(canonicalBytes({ ...parts, body: body.bodySha256 })),
+    }
     const now = services.clock.now()
     const known = await findPrepared(services.db, { ...wanted, now }, t)
     if (known) return { bytes: known.record, sha256: known.sha256 }
@@ -58,7 +69,11 @@ export async function prepareRecord(
     })
     const record = Buffer.from(bytes)
     const expiresAt = new Date(now.getTime() + VALID_MS)
-    await keepPrepared(services.db, { ...wanted, record, sha256: recordSha256, bodySha256: body.bodySha256, createdAt: now, expiresAt }, t)
+    await keepPrepared(
+      services.db,
+      { ...wanted, record, sha256: recordSha256, bodySha256: body.bodySha256, createdAt: now, expiresAt },
+      t,
+    )
     return { bytes: record, sha256: recordSha256 }
   })
 }
@@ -68,12 +83,21 @@ async function bodyToSign(services: Services, { entry }: Standing, t: Transactio
   const gathered = await gather(services, entry, t)
   const blocks = await blocksOf(services, gathered, t)
   if (blocks.length > 0)
-    throw new Problem('signing-blocked', `The entry cannot be signed yet: ${blocks.map(({ detail }) => detail).join(' ')}`, { extra: { blocks } })
+    throw new Problem(
+      'signing-blocked',
+      `The entry cannot be signed yet: ${blocks.map(({ detail }) => detail).join(' ')}`,
+      { extra: { blocks } },
+    )
   const revised = await cutRevision(services, t, entry, 'signature')
   const body = await buildEntryBody(services, { ...gathered, entry: revised }, t)
   await keepBody(
     services.db,
-    { sha256: body.bodySha256, entryId: entry.id, body: Buffer.from(body.bytes), builtAt: services.clock.now() },
+    {
+      sha256: body.bodySha256,
+      entryId: entry.id,
+      body: Buffer.from(body.bytes),
+      builtAt: services.clock.now(),
+    },
     t,
   )
   return body
@@ -121,9 +145,15 @@ function signingRole(roles: readonly Role[], meaning: Meaning): Role {
 function requirePresence(body: BuiltBody, { runId, from, to }: RecordRequest) {
   const run = body.body.runs.find(({ id }) => id === runId)
   if (!runId || !run || !from || !to)
-    throw new Problem('invalid-values', 'Say at which run of this entry you were present, from when to when.', {
-      errors: [{ pointer: '/runId', detail: 'Give runId, from and to; the run must be filed in this entry.' }],
-    })
+    throw new Problem(
+      'invalid-values',
+      'Say at which run of this entry you were present, from when to when.',
+      {
+        errors: [
+          { pointer: '/runId', detail: 'Give runId, from and to; the run must be filed in this entry.' },
+        ],
+      },
+    )
   if (from > to || !overlaps({ from, to }, run))
     throw new Problem('invalid-values', `The time that you give does not overlap the run ${run.number}.`, {
       errors: [{ pointer: '/from', detail: `The run began at ${run.startedAt}.` }],
@@ -131,17 +161,32 @@ function requirePresence(body: BuiltBody, { runId, from, to }: RecordRequest) {
   return { presentFor: { runId, from, to }, stated: { run: run.number, from, to } }
 }
 
-async function openedBy(services: Services, entry: EntryRow, personId: string, t: Transaction): Promise<Signing['opened']> {
+async function openedBy(
+  services: Services,
+  entry: EntryRow,
+  personId: string,
+  t: Transaction,
+): Promise<Signing['opened']> {
   const openings = await openingsOf(services, entry, personId, t)
   return openings.map(({ kind, id, time }) => ({ kind, id, time: time.toISOString() }))
 }
 
 /** A living signature as a later one names it. */
-export function earlierOf({ recordSha256, signatureSha256, meaning, personId, signedAt }: SignatureRow): Signing['earlier'][number] {
+export function earlierOf({
+  recordSha256,
+  signatureSha256,
+  meaning,
+  personId,
+  signedAt,
+}: SignatureRow): Signing['earlier'][number] {
   return { recordSha256, signatureSha256, meaning, subjectId: personId, time: signedAt.toISOString() }
 }
 
 async function notBeforeLedger(services: Services, now: Date, t: Transaction): Promise<string> {
-  const state = await services.db.row<{ at: Date | null }>('select last_at as at from record.ledger_state', {}, t)
+  const state = await services.db.row<{ at: Date | null }>(
+    'select last_at as at from record.ledger_state',
+    {},
+    t,
+  )
   return new Date(Math.max(now.getTime(), state?.at?.getTime() ?? 0)).toISOString()
 }

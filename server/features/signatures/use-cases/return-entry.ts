@@ -23,9 +23,19 @@ export async function returnEntry(
   return services.db.transaction(async (t) => {
     const standing = await standingOf(services, personId, entryId, t)
     const kind = standing.entry.phase === 'collecting' ? 'reopened' : 'returned'
-    requireAction(standing, kind === 'reopened' ? 'reopen' : 'return', 'An entry is given back while it is being signed or with its witness.')
+    requireAction(
+      standing,
+      kind === 'reopened' ? 'reopen' : 'return',
+      'An entry is given back while it is being signed or with its witness.',
+    )
     const state: State = { state: 'draft', phase: kind === 'reopened' ? 'writing' : 'returned' }
-    await updateEntry(services.db, entryId, { ...state, bodySha256: null, submittedAt: null }, services.clock.now(), t)
+    await updateEntry(
+      services.db,
+      entryId,
+      { ...state, bodySha256: null, submittedAt: null },
+      services.clock.now(),
+      t,
+    )
     await tellAuthors(services, standing.entry, reason, personId, t)
     await recordVoiding(services, standing, kind, reason, t)
     return state

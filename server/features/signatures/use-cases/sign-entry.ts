@@ -14,7 +14,13 @@ import { blocksOf } from '../blocks.ts'
 import { buildEntryBody } from '../build-body.ts'
 import { gather } from '../gather.ts'
 import { tellWitnesses } from '../letters.ts'
-import { dropPrepared, insertSignature, livingSignatures, preparedByDigest, type PreparedRow } from '../repository.ts'
+import {
+  dropPrepared,
+  insertSignature,
+  livingSignatures,
+  preparedByDigest,
+  type PreparedRow,
+} from '../repository.ts'
 import { requireSigner, type Signer } from '../signing-policy.ts'
 import { requireSigning, standingOf, type Standing } from '../standing.ts'
 import { earlierOf } from './prepare-record.ts'
@@ -65,16 +71,32 @@ async function requirePrepared(
 ): Promise<PreparedRow> {
   const prepared = await preparedByDigest(services.db, wanted, t)
   if (!prepared)
-    throw new Problem('record-changed', 'These are not bytes that were prepared for you to sign here. Nothing was signed; open the entry again.')
+    throw new Problem(
+      'record-changed',
+      'These are not bytes that were prepared for you to sign here. Nothing was signed; open the entry again.',
+    )
   if (prepared.expiresAt <= services.clock.now())
-    throw new Problem('record-expired', 'What you looked at was prepared more than 15 minutes ago. Nothing was signed; open the entry again.')
+    throw new Problem(
+      'record-expired',
+      'What you looked at was prepared more than 15 minutes ago. Nothing was signed; open the entry again.',
+    )
   return prepared
 }
 
 /** The record must say what holds now: the living signatures, and the same body. */
-async function requireUnchanged(services: Services, { entry, living }: Standing, record: SignedRecord, t: Transaction): Promise<void> {
-  const changed = new Problem('record-changed', 'The entry has changed since you looked at it. Nothing was signed; read it again and sign then.')
-  const earlier = [...living.map(earlierOf)].sort((a, b) => (a.time + a.recordSha256 < b.time + b.recordSha256 ? -1 : 1))
+async function requireUnchanged(
+  services: Services,
+  { entry, living }: Standing,
+  record: SignedRecord,
+  t: Transaction,
+): Promise<void> {
+  const changed = new Problem(
+    'record-changed',
+    'The entry has changed since you looked at it. Nothing was signed; read it again and sign then.',
+  )
+  const earlier = [...living.map(earlierOf)].sort((a, b) =>
+    a.time + a.recordSha256 < b.time + b.recordSha256 ? -1 : 1,
+  )
   if (sha256Hex(canonicalBytes(earlier)) !== sha256Hex(canonicalBytes(record.signing.earlier))) throw changed
   if (entry.bodySha256 !== null) {
     if (entry.bodySha256 !== record.bodySha256) throw changed
@@ -83,18 +105,36 @@ async function requireUnchanged(services: Services, { entry, living }: Standing,
   const gathered = await gather(services, entry, t)
   const blocks = await blocksOf(services, gathered, t)
   if (blocks.length > 0)
-    throw new Problem('signing-blocked', `The entry cannot be signed any more: ${blocks.map(({ detail }) => detail).join(' ')}`, { extra: { blocks } })
+    throw new Problem(
+      'signing-blocked',
+      `The entry cannot be signed any more: ${blocks.map(({ detail }) => detail).join(' ')}`,
+      { extra: { blocks } },
+    )
   if ((await buildEntryBody(services, gathered, t)).bodySha256 !== record.bodySha256) throw changed
 }
 
-function requireOwnSignature({ key }: Signer, record: SignedRecord, prepared: PreparedRow, signature: Buffer): void {
+function requireOwnSignature(
+  { key }: Signer,
+  record: SignedRecord,
+  prepared: PreparedRow,
+  signature: Buffer,
+): void {
   const { certificateSha256, enrolmentSha256 } = record.signing.signer
   if (key.certificateSha256 !== certificateSha256 || key.enrolmentSha256 !== enrolmentSha256)
-    throw new Problem('record-changed', 'Your signing key is another than when this was prepared. Nothing was signed; open the entry again.')
+    throw new Problem(
+      'record-changed',
+      'Your signing key is another than when this was prepared. Nothing was signed; open the entry again.',
+    )
   if (!verifySignature(key.publicKey, prepared.record, signature))
-    throw new Problem('invalid-values', 'The signature is not one of your key over these bytes. Nothing was signed.', {
-      errors: [{ pointer: '/signature', detail: 'It does not verify (strict Ed25519) under your public key.' }],
-    })
+    throw new Problem(
+      'invalid-values',
+      'The signature is not one of your key over these bytes. Nothing was signed.',
+      {
+        errors: [
+          { pointer: '/signature', detail: 'It does not verify (strict Ed25519) under your public key.' },
+        ],
+      },
+    )
 }
 
 async function recordSignature(
@@ -109,12 +149,27 @@ async function recordSignature(
   const signatureSha256 = sha256Hex(signature)
   const next = await nextState(services, entry, record, person.id, t)
   await dropPrepared(services.db, entry.id, person.id, t)
-  await updateEntry(services.db, entry.id, { ...next, bodySha256: record.bodySha256 }, services.clock.now(), t)
-  await services.queue.send('stamp-signature', { signatureId: id }, { transaction: t, startAfter: 3, retryLimit: 12 })
+  await updateEntry(
+    services.db,
+    entry.id,
+    { ...next, bodySha256: record.bodySha256 },
+    services.clock.now(),
+    t,
+  )
+  await services.queue.send(
+    'stamp-signature',
+    { signatureId: id },
+    { transaction: t, startAfter: 3, retryLimit: 12 },
+  )
   if (next.phase === 'with-witness' && entry.phase !== 'with-witness') await tellWitnesses(services, entry, t)
   const actor = { kind: 'person', id: person.id, onBehalfOf: null } as const
   const payload = { recordSha256, signatureSha256, meaning, bodySha256: record.bodySha256 }
-  const event = await appendEvent(services, t, { actor, action: 'entry.signed', subject: { kind: 'entry', id: entry.id }, payload })
+  const event = await appendEvent(services, t, {
+    actor,
+    action: 'entry.signed',
+    subject: { kind: 'entry', id: entry.id },
+    payload,
+  })
   await insertSignature(
     services.db,
     {
@@ -144,17 +199,24 @@ async function nextState(
   personId: string,
   t: Transaction,
 ): Promise<Pick<EntryRow, 'state' | 'phase' | 'submittedAt'>> {
-  const signed = [...(await livingSignatures(services.db, entry.id, t)), { personId, meaning: record.signing.meaning }]
-  const by = (wanted: (meaning: Meaning) => boolean) => new Set(signed.filter(({ meaning }) => wanted(meaning)).map((s) => s.personId))
+  const signed = [
+    ...(await livingSignatures(services.db, entry.id, t)),
+    { personId, meaning: record.signing.meaning },
+  ]
+  const by = (wanted: (meaning: Meaning) => boolean) =>
+    new Set(signed.filter(({ meaning }) => wanted(meaning)).map((s) => s.personId))
   if (record.signing.meaning === 'authorship') {
     const authors = by((meaning) => meaning === 'authorship')
-    const complete = record.authors.every(({ subjectId, exception }) => exception !== null || authors.has(subjectId))
+    const complete = record.authors.every(
+      ({ subjectId, exception }) => exception !== null || authors.has(subjectId),
+    )
     return complete
       ? { state: 'submitted', phase: 'with-witness', submittedAt: services.clock.now() }
       : { state: 'draft', phase: 'collecting', submittedAt: null }
   }
   const barred = [...record.authors, ...record.contributors].some(({ subjectId }) => subjectId === personId)
-  if (barred) throw new Problem('not-allowed', 'You supplied something of this entry, so you cannot be its witness.')
+  if (barred)
+    throw new Problem('not-allowed', 'You supplied something of this entry, so you cannot be its witness.')
   const witnesses = by((meaning) => meaning !== 'authorship')
   return witnesses.size >= record.entry.witnessesRequired
     ? { state: 'sealed', phase: 'sealed', submittedAt: entry.submittedAt }
@@ -163,9 +225,16 @@ async function nextState(
 
 /** The seal: its event, that of the entry it amends, a head over both, and the job that makes the evidence. */
 async function seal(services: Services, entry: EntryRow, bodySha256: string, t: Transaction): Promise<void> {
-  const signatures = (await livingSignatures(services.db, entry.id, t)).map(({ recordSha256 }) => recordSha256)
+  const signatures = (await livingSignatures(services.db, entry.id, t)).map(
+    ({ recordSha256 }) => recordSha256,
+  )
   const actor = { kind: 'system', id: null, onBehalfOf: null } as const
-  await appendEvent(services, t, { actor, action: 'entry.sealed', subject: { kind: 'entry', id: entry.id }, payload: { bodySha256, signatures } })
+  await appendEvent(services, t, {
+    actor,
+    action: 'entry.sealed',
+    subject: { kind: 'entry', id: entry.id },
+    payload: { bodySha256, signatures },
+  })
   if (entry.amendsEntryId !== null)
     await appendEvent(services, t, {
       actor,

@@ -1,17 +1,18 @@
 import type { Entry } from '../../../../server/contract/entries.ts'
 import { StateGlyph } from '../../../ui/state-glyph.tsx'
 import { filesToSign } from '../entry-files.ts'
+import { LateRemark } from './late-remark.tsx'
 
 type Block = Entry['blocks'][number]
 
-/** What stands in the way of signing, a sentence each, with a way to the place on the sheet. */
-export function BlocksList({ entry, onGo }: { entry: Entry; onGo: () => void }) {
+/** What stands in the way of signing, a sentence each, with a way to the place on the sheet or the means to mend it here. */
+export function BlocksList({ entry, onGo, onMended }: { entry: Entry; onGo: () => void; onMended: () => void }) {
   return (
     <ul className="hs-checks" aria-label="What stands in the way">
       {entry.blocks.map((block) => {
         const place = placeOf(block, entry)
         return (
-          <li key={`${block.code} ${block.pointer ?? ''}`}>
+          <li key={`${block.code} ${block.pointer ?? ''}`} className="items-start">
             <StateGlyph state="fault" wordless />
             <span>
               {block.detail}{' '}
@@ -29,6 +30,7 @@ export function BlocksList({ entry, onGo }: { entry: Entry; onGo: () => void }) 
                   Go to {place.name}
                 </a>
               )}
+              {block.code === 'late-remark-missing' && <LateRemark entryId={entry.id} onKept={onMended} />}
             </span>
           </li>
         )

@@ -6,7 +6,7 @@ export function ChecksList({ checks }: { checks: Check[] }) {
   return (
     <ul className="hs-checks">
       {checks.map((check) => (
-        <li key={`${check.what} ${check.more ?? ''}`}>
+        <li key={`${check.what} ${check.more ?? ''}`} className="items-start">
           <StateGlyph state={check.state} wordless />
           <span>
             {check.what}

@@ -2,7 +2,7 @@ import { useState } from 'react'
 import type { Entry } from '../../../../server/contract/entries.ts'
 import type { EntrySignature } from '../../../../server/contract/signatures.ts'
 import { Button } from '../../../ui/button.tsx'
-import { stampWords } from '../meaning-words.ts'
+import { stampSentence } from '../meaning-words.ts'
 import type { Presence } from '../signing.ts'
 import { MeaningChoice, type WitnessMeaning } from './meaning-choice.tsx'
 import type { SheetOnScreen } from './sign-act.tsx'
@@ -64,7 +64,7 @@ function Countersigned({ signature, more }: { signature: EntrySignature; more: n
       {more <= 0
         ? 'The sheet is sealed in the ledger; nothing in it can change afterwards.'
         : `${more} more must countersign before it is sealed.`}{' '}
-      It is {stampWords(signature.timeStamp)}.
+      {stampSentence(signature.timeStamp)}
     </>
   )
 }

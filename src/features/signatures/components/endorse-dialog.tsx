@@ -23,14 +23,20 @@ interface EndorseProps {
   laboratory: { id: string; name: string }
 }
 
-/** A manager or supervisor endorses the key of another person, after checking who that person is. */
+/**
+ * A manager or supervisor endorses the newest key of another person, after checking who that person is. It is offered where
+ * such a key waits, also beside one that still signs; and kept while its dialog is open, since the act ends the waiting.
+ */
 export function EndorseAct(props: EndorseProps) {
   const [open, setOpen] = useState(false)
+  const { data: newest } = useQuery({ ...enrolmentQuery(props.person.id), retry: false })
   return (
     <>
-      <Button size="small" onClick={() => setOpen(true)}>
-        Endorse key
-      </Button>
+      {newest?.status === 'awaiting-endorsement' && (
+        <Button size="small" onClick={() => setOpen(true)}>
+          Endorse key
+        </Button>
+      )}
       {open && <EndorseDialog {...props} onClose={() => setOpen(false)} />}
     </>
   )
@@ -114,7 +120,7 @@ function EndorseForm({
       <DialogPart>
         <div className="flex flex-wrap items-start gap-4">
           <FringeMark sha256={enrolmentSha256} size={52} />
-          <div>
+          <div className="min-w-0 flex-1 basis-60">
             <p className="hs-quiet">Digits of the key, enrolled {dateAndTime(enrolment.time)}</p>
             <p className="hs-fig text-6">{digits}</p>
             <p className="hs-hint">Checked here: the key has signed its own enrolment, and these are its digits.</p>

@@ -12,7 +12,17 @@ import { judgePassphrase, leastLength } from '../passphrase/strength.ts'
 import { useShare } from '../use-share.ts'
 
 /** Makes a signing key: a passphrase chosen or drawn, written down once more, and the statement that the key signs. */
-export function EnrolForm({ me, laboratory, replaces }: { me: Owner; laboratory: { id: string; name: string }; replaces: boolean }) {
+export function EnrolForm({
+  me,
+  laboratory,
+  replaces,
+  onEnrolled,
+}: {
+  me: Owner
+  laboratory: { id: string; name: string }
+  replaces: boolean
+  onEnrolled: () => void
+}) {
   const [passphrase, setPassphrase] = useState('')
   const [again, setAgain] = useState('')
   const [drawn, setDrawn] = useState<string | null>(null)
@@ -36,6 +46,7 @@ export function EnrolForm({ me, laboratory, replaces }: { me: Owner; laboratory:
           setPassphrase('')
           setAgain('')
           setDrawn(null)
+          onEnrolled()
         },
       },
     )
@@ -63,7 +74,7 @@ export function EnrolForm({ me, laboratory, replaces }: { me: Owner; laboratory:
       <blockquote className="hs-prose">“{enrolmentStatement({ name: me.name, laboratory: laboratory.name })}”</blockquote>
       <Checkbox
         label="I mean this, and the new key may sign it."
-        hint={replaces ? 'The key you have stays valid for what it has signed; it cannot sign any more.' : undefined}
+        hint={replaces ? 'The key you have signs until the new one is endorsed, and stays valid for what it has signed.' : undefined}
         checked={meant}
         onChange={setMeant}
       />

@@ -82,7 +82,7 @@ function Beginning({ file, onOpened }: { file: RawFile; onOpened: () => void }) 
   return (
     <DialogPart>
       <p className="hs-label">{lines ? 'How it begins' : 'Not text; it begins with these bytes'}</p>
-      <pre className="hs-fig max-h-60 overflow-auto bg-well p-2.5 text-1">
+      <pre className={`hs-fig max-h-60 overflow-auto bg-well p-2.5 text-1 ${lines ? 'whitespace-pre' : 'whitespace-pre-wrap'}`}>
         {lines ? lines.join('\n') : [...first.data.slice(0, 256)].map((byte) => byte.toString(16).padStart(2, '0')).join(' ')}
       </pre>
     </DialogPart>

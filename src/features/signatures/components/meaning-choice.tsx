@@ -5,7 +5,7 @@ import { Button } from '../../../ui/button.tsx'
 import { TextField } from '../../../ui/field.tsx'
 import { OptionRow } from '../../../ui/option-row.tsx'
 import { Select } from '../../../ui/select.tsx'
-import { endOfRun, presenceTrouble } from '../presence.ts'
+import { presenceTrouble, spanOfRun } from '../presence.ts'
 import type { Presence } from '../signing.ts'
 import { utcOfZoned, zonedOfUtc } from '../zoned-time.ts'
 
@@ -64,16 +64,16 @@ function PresenceTimes({
 }) {
   const [runId, setRunId] = useState(runs[0]?.id ?? '')
   const run = runs.find((each) => each.id === runId)
-  const [from, setFrom] = useState(run ? zonedOfUtc(run.startedAt, zone) : '')
-  const [to, setTo] = useState(run ? zonedOfUtc(endOfRun(run), zone) : '')
+  const [from, setFrom] = useState(run ? zonedOfUtc(spanOfRun(run).from, zone) : '')
+  const [to, setTo] = useState(run ? zonedOfUtc(spanOfRun(run).to, zone) : '')
   const trouble = run ? presenceTrouble(run, utcOfZoned(from, zone), utcOfZoned(to, zone)) : 'Choose the run.'
 
   function chooseRun(id: string) {
     const chosen = runs.find((each) => each.id === id)
     setRunId(id)
     if (!chosen) return
-    setFrom(zonedOfUtc(chosen.startedAt, zone))
-    setTo(zonedOfUtc(endOfRun(chosen), zone))
+    setFrom(zonedOfUtc(spanOfRun(chosen).from, zone))
+    setTo(zonedOfUtc(spanOfRun(chosen).to, zone))
     onPresence(null)
   }
 

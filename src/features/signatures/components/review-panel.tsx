@@ -63,7 +63,14 @@ export function ReviewPanel({
       )}
       <h3>Checked by Halfsilver</h3>
       <ChecksList checks={checksOf(entry, calculations)} />
-      <Opening openables={openables} isOpened={isOpened} sheet={sheet} onFile={(id) => setOpenedFiles((files) => [...files, id])} />
+      {mayWitness && (
+        <Opening
+          openables={openables}
+          isOpened={isOpened}
+          sheet={sheet}
+          onFile={(id) => setOpenedFiles((files) => [...files, id])}
+        />
+      )}
       {mayWitness && <Questions answered={answered} onAnswered={setAnswered} />}
       <div className="hs-actions mt-5">
         {entry.allowed.includes('return') && <ReturnAct entry={entry} onReturned={onReturned} />}
@@ -98,7 +105,7 @@ function Opening({
         {openables.map((each) => {
           const file = filesToSign(sheet.entry).find((candidate) => candidate.id === each.id)
           return (
-            <li key={each.id}>
+            <li key={each.id} className="items-start">
               {isOpened(each) ? <StateGlyph state="ok" wordless /> : <StateGlyph state="draft" wordless />}
               <span className="min-w-0 break-words">
                 {file && <FilePeek file={file} onOpened={() => onFile(file.id)} />}

@@ -2,7 +2,7 @@ import { useState } from 'react'
 import type { Entry } from '../../../../server/contract/entries.ts'
 import type { EntrySignature } from '../../../../server/contract/signatures.ts'
 import { Button } from '../../../ui/button.tsx'
-import { stampWords } from '../meaning-words.ts'
+import { stampSentence } from '../meaning-words.ts'
 import { SignatureDialog } from './signature-dialog.tsx'
 
 export interface SheetOnScreen {
@@ -61,7 +61,7 @@ function Signed({ signature, others }: { signature: EntrySignature; others: stri
       {others.length === 0
         ? 'The sheet waits for a witness; its text can change only after a return or a recall.'
         : `${others.join(' and ')} must sign too before it goes to the witness.`}{' '}
-      It is {stampWords(signature.timeStamp)}.
+      {stampSentence(signature.timeStamp)}
     </>
   )
 }

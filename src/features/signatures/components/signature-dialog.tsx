@@ -152,6 +152,7 @@ interface PreparationQuery {
   data: Preparation | undefined
   error: Error | null
   isFetching: boolean
+  refetch: () => Promise<unknown>
 }
 
 function Prepared({ preparation, onGo, children }: { preparation: PreparationQuery; onGo: () => void; children: ReactNode }) {
@@ -169,7 +170,7 @@ function Prepared({ preparation, onGo, children }: { preparation: PreparationQue
     return (
       <DialogPart>
         <p className="mb-2">This sheet cannot be signed yet:</p>
-        <BlocksList entry={data.entry} onGo={onGo} />
+        <BlocksList entry={data.entry} onGo={onGo} onMended={() => void preparation.refetch()} />
       </DialogPart>
     )
   if (data.state === 'no-key') return <DialogPart><NoKey status={data.key.status} /></DialogPart>

@@ -6,6 +6,9 @@ import { WaitingScale } from '../../../ui/waiting-scale.tsx'
 import type { DeskEntry } from '../queries.ts'
 import { daysSince, dueDays, overdueDays } from '../waiting.ts'
 
+/** On a phone each row becomes lines, the age first. */
+const asLines = 'max-[700px]:[&_tr]:grid-cols-1'
+
 /** Sheets that wait for a witness, oldest first, each with its age on the scale of fourteen days. */
 export function WitnessQueue({
   entries,
@@ -26,14 +29,16 @@ export function WitnessQueue({
     { head: 'Submitted', cell: (entry) => entry.submittedAt && nearTime(entry.submittedAt, now), nowrap: true, deskOnly: true },
   ]
   return (
-    <Table
-      label="Sheets that wait for you"
-      columns={columns}
-      rows={oldestFirst(entries)}
-      keyOf={(entry) => entry.id}
-      selected={selected ?? undefined}
-      stackable
-    />
+    <div className={asLines}>
+      <Table
+        label="Sheets that wait for you"
+        columns={columns}
+        rows={oldestFirst(entries)}
+        keyOf={(entry) => entry.id}
+        selected={selected ?? undefined}
+        stackable
+      />
+    </div>
   )
 }
 
@@ -95,5 +100,9 @@ export function OtherSheets({ label, entries, now }: { label: string; entries: D
     { head: 'Last change', cell: (entry) => nearTime(entry.updatedAt, now), nowrap: true },
     { head: 'Standing', cell: (entry) => <StateGlyph state={entry.phase === 'sealed' ? 'sealed' : 'returned'} />, nowrap: true },
   ]
-  return <Table label={label} columns={columns} rows={entries} keyOf={(entry) => entry.id} stackable />
+  return (
+    <div className={asLines}>
+      <Table label={label} columns={columns} rows={entries} keyOf={(entry) => entry.id} stackable />
+    </div>
+  )
 }
