@@ -1,9 +1,10 @@
 import { closePrinter } from './features/evidence/index.ts'
-import { readConfig, ConfigError } from './platform/config.ts'
+import { readConfig } from './platform/config.ts'
 import { openDatabase } from './platform/db/database.ts'
 import { migrate } from './platform/db/migrate.ts'
 import { openLog } from './platform/logger.ts'
 import { openServices } from './platform/open-services.ts'
+import { complain } from './platform/run-process.ts'
 import type { Services } from './platform/services.ts'
 
 const usage = `usage: node --import ./server/launch/typescript.mjs server/cli.ts <command>
@@ -28,7 +29,10 @@ const commands: Record<string, (given: string[]) => Promise<void>> = {
   async 'seed-demo'() {
     const { seedDemo } = await import('./demo/seed-demo.ts')
     await withServices(async (services) => {
-      if (!services.config.demo) throw new Error('HALFSILVER_DEMO is not set: the demonstration is loaded only where nothing real is configured.')
+      if (!services.config.demo)
+        throw new Error(
+          'HALFSILVER_DEMO is not set: the demonstration is loaded only where nothing real is configured.',
+        )
       await seedDemo(services, (step) => process.stdout.write(`${step}\n`))
     })
   },
@@ -39,7 +43,14 @@ const commands: Record<string, (given: string[]) => Promise<void>> = {
     const { identityProvider } = await import('./platform/identity/sign-in.ts')
     await withServices(async (services) => {
       await openLaboratory(services, { name: services.config.laboratory.name, demo: false })
-      await addPerson(services, { login, name, email, provider: identityProvider, providerAccountId: accountId, roles: ['manager'] })
+      await addPerson(services, {
+        login,
+        name,
+        email,
+        provider: identityProvider,
+        providerAccountId: accountId,
+        roles: ['manager'],
+      })
     })
   },
 }
@@ -65,6 +76,6 @@ if (!command) {
 try {
   await command(given)
 } catch (error) {
-  console.error(error instanceof ConfigError ? error.message : error)
+  complain(error)
   process.exit(1)
 }

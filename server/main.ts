@@ -15,14 +15,23 @@ import type { Services } from './platform/services.ts'
 
 /** What runs beside the API, under the application's role. */
 function systemJobs(services: Services): Job[] {
-  return [sendMailJob(services), ...fileJobs(services), ...laboratoryJobs(services), ...evidenceJobs(services), ...exportJobs(services)]
+  return [
+    sendMailJob(services),
+    ...fileJobs(services),
+    ...laboratoryJobs(services),
+    ...evidenceJobs(services),
+    ...exportJobs(services),
+  ]
 }
 
 /** Demo people have a published passphrase: their database is never served with real services (ruling 23). */
 async function refuseDemo(services: Services) {
   if (services.config.demo || !(await findLaboratory(services))?.demo) return
   throw new ConfigError([
-    { variable: 'DATABASE_URL', detail: 'names a database that holds the demonstration; real services need one of their own' },
+    {
+      variable: 'DATABASE_URL',
+      detail: 'names a database that holds the demonstration; real services need one of their own',
+    },
   ])
 }
 

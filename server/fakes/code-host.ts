@@ -33,7 +33,11 @@ export function codeHost({ clientId, clientSecret, accounts = demoAccounts }: Co
 
   app.get('/login/oauth/authorize', (req, res) => {
     const asked = authorisation(req, clientId)
-    if (typeof asked === 'string') return void res.status(400).set(pageHeaders).send(page('Cannot sign in', escapeHtml(asked)))
+    if (typeof asked === 'string')
+      return void res
+        .status(400)
+        .set(pageHeaders)
+        .send(page('Cannot sign in', escapeHtml(asked)))
     const login = text(req.query.login)
     if (login === null) return void res.set(pageHeaders).send(choicePage(req, accounts))
     const target = new URL(asked.redirectUri)
@@ -53,11 +57,15 @@ export function codeHost({ clientId, clientSecret, accounts = demoAccounts }: Co
     const sent = req.body as Record<string, string | undefined>
     const grant = codes.get(sent.code ?? '')
     codes.delete(sent.code ?? '')
-    const refused = (error: string) => void res.json({ error, error_description: 'The code is incorrect, used or expired.' })
-    if (sent.client_id !== clientId || sent.client_secret !== clientSecret) return refused('incorrect_client_credentials')
+    const refused = (error: string) =>
+      void res.json({ error, error_description: 'The code is incorrect, used or expired.' })
+    if (sent.client_id !== clientId || sent.client_secret !== clientSecret)
+      return refused('incorrect_client_credentials')
     if (!grant || grant.expiresAt < Date.now()) return refused('bad_verification_code')
-    if (sent.redirect_uri !== undefined && sent.redirect_uri !== grant.redirectUri) return refused('redirect_uri_mismatch')
-    if (grant.challenge !== null && challengeOf(sent.code_verifier ?? '') !== grant.challenge) return refused('bad_verification_code')
+    if (sent.redirect_uri !== undefined && sent.redirect_uri !== grant.redirectUri)
+      return refused('redirect_uri_mismatch')
+    if (grant.challenge !== null && challengeOf(sent.code_verifier ?? '') !== grant.challenge)
+      return refused('bad_verification_code')
     const token = randomBytes(20).toString('hex')
     tokens.set(token, grant.account)
     res.json({ access_token: token, scope: grant.scope, token_type: 'bearer' })
@@ -84,10 +92,13 @@ export function codeHost({ clientId, clientSecret, accounts = demoAccounts }: Co
 function authorisation({ query }: Request, clientId: string) {
   const redirectUri = text(query.redirect_uri)
   if (query.client_id !== clientId) return 'The application is not registered here (client_id).'
-  if (query.response_type !== undefined && query.response_type !== 'code') return 'Only response_type=code is known here.'
-  if (redirectUri === null || !/^https?:/.test(redirectUri) || !URL.canParse(redirectUri)) return 'The redirect_uri is not an address.'
+  if (query.response_type !== undefined && query.response_type !== 'code')
+    return 'Only response_type=code is known here.'
+  if (redirectUri === null || !/^https?:/.test(redirectUri) || !URL.canParse(redirectUri))
+    return 'The redirect_uri is not an address.'
   const challenge = text(query.code_challenge)
-  if (challenge !== null && query.code_challenge_method !== 'S256') return 'Only the PKCE method S256 is known here.'
+  if (challenge !== null && query.code_challenge_method !== 'S256')
+    return 'Only the PKCE method S256 is known here.'
   return { redirectUri, scope: text(query.scope) ?? '', state: text(query.state), challenge }
 }
 

@@ -48,7 +48,8 @@ export function mailServer(): MailServer {
 function inboxPages(letters: Letter[]): Express {
   const app = express()
   app.disable('x-powered-by')
-  const shown = (to: unknown) => (typeof to === 'string' && to !== '' ? letters.filter((letter) => letter.to.includes(to)) : letters)
+  const shown = (to: unknown) =>
+    typeof to === 'string' && to !== '' ? letters.filter((letter) => letter.to.includes(to)) : letters
   app.get('/letters.json', (req, res) => {
     res.set(pageHeaders).json({ items: shown(req.query.to) })
   })

@@ -17,7 +17,9 @@ const portOf = (name: string) => Number(process.env[name] ?? 0)
 
 function serve(app: Express, port: number): Promise<number> {
   return new Promise((done, fail) => {
-    const server = app.listen(port, '127.0.0.1', (error?: Error) => (error ? fail(error) : done(opened(server))))
+    const server = app.listen(port, '127.0.0.1', (error?: Error) =>
+      error ? fail(error) : done(opened(server)),
+    )
   })
 }
 
@@ -33,7 +35,10 @@ async function startMail() {
   const { smtp, inbox } = mailServer()
   await new Promise<void>((done) => smtp.listen(portOf('SMTP_PORT'), '127.0.0.1', done))
   closers.push(() => smtp.close())
-  return { smtpPort: (smtp.server.address() as AddressInfo).port, inboxPort: await serve(inbox, portOf('INBOX_PORT')) }
+  return {
+    smtpPort: (smtp.server.address() as AddressInfo).port,
+    inboxPort: await serve(inbox, portOf('INBOX_PORT')),
+  }
 }
 
 async function startCodeHost() {
@@ -44,12 +49,19 @@ async function startCodeHost() {
 }
 
 async function startStamps() {
-  const authority = await createTimeStampAuthority({ folder: path.join(folder, 'stamps'), clock: { now: () => new Date() } })
+  const authority = await createTimeStampAuthority({
+    folder: path.join(folder, 'stamps'),
+    clock: { now: () => new Date() },
+  })
   const server = await serveTimeStampAuthority(authority, portOf('TSA_PORT'))
   return { stampsPort: opened(server), chainFile: path.resolve(authority.chainFile) }
 }
 
-const starters: Record<string, () => Promise<object>> = { 'code-host': startCodeHost, mail: startMail, stamps: startStamps }
+const starters: Record<string, () => Promise<object>> = {
+  'code-host': startCodeHost,
+  mail: startMail,
+  stamps: startStamps,
+}
 const started = await Promise.all(
   wanted.map((name) => {
     const start = starters[name]

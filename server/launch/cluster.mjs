@@ -30,11 +30,18 @@ export async function startCluster(processes, dataFolder, secrets, { fast = fals
   if (fresh) makeCluster(folder, data, secrets, account)
   const bin = postgresBinaries(fs.readFileSync(path.join(data, 'PG_VERSION'), 'utf8').trim())
   if (!bin)
-    throw new Refusal(`The database in ${data} was made by another version of PostgreSQL, which is not installed any more. Install that version again.`)
+    throw new Refusal(
+      `The database in ${data} was made by another version of PostgreSQL, which is not installed any more. Install that version again.`,
+    )
   fs.chmodSync(data, 0o700)
   removeStalePid(data)
   const port = await freePort()
-  const settings = [`port=${port}`, 'listen_addresses=127.0.0.1', 'unix_socket_directories=', ...(fast ? FAST : [])]
+  const settings = [
+    `port=${port}`,
+    'listen_addresses=127.0.0.1',
+    'unix_socket_directories=',
+    ...(fast ? FAST : []),
+  ]
   await processes.start('postgres', {
     command: path.join(bin, 'postgres'),
     args: ['-D', data, ...settings.flatMap((setting) => ['-c', setting])],
@@ -71,8 +78,14 @@ export function removeCluster(dataFolder) {
 /** PostgreSQL refuses to run as root: then it runs as the account that the Debian package made. */
 function serverAccount() {
   if (process.getuid() !== 0) return {}
-  const line = fs.readFileSync('/etc/passwd', 'utf8').split('\n').find((row) => row.startsWith('postgres:'))
-  if (!line) throw new Refusal('The account "postgres" is missing; the Debian package makes it: apt-get install -y --reinstall postgresql-common')
+  const line = fs
+    .readFileSync('/etc/passwd', 'utf8')
+    .split('\n')
+    .find((row) => row.startsWith('postgres:'))
+  if (!line)
+    throw new Refusal(
+      'The account "postgres" is missing; the Debian package makes it: apt-get install -y --reinstall postgresql-common',
+    )
   const [, , uid, gid] = line.split(':').map(Number)
   return { uid, gid }
 }
@@ -86,13 +99,18 @@ function clusterFolder(dataFolder, secrets, account) {
   if (fs.existsSync(note)) {
     const kept = fs.readFileSync(note, 'utf8')
     if (fs.existsSync(kept) && !makeFolder(kept, account))
-      throw new Refusal(`The account of the database cannot reach ${kept} any more. Give its parents the right to be passed (chmod o+x).`)
+      throw new Refusal(
+        `The account of the database cannot reach ${kept} any more. Give its parents the right to be passed (chmod o+x).`,
+      )
     if (makeFolder(kept, account)) return kept
   }
   const own = path.join(dataFolder, 'postgres')
   const other = `/var/tmp/halfsilver-${pathDigest(dataFolder)}-${secrets.id}`
   const chosen = [own, other].find((folder) => makeFolder(folder, account))
-  if (!chosen) throw new Refusal(`The database can be neither in ${own} nor in ${other}: its account may write in neither.`)
+  if (!chosen)
+    throw new Refusal(
+      `The database can be neither in ${own} nor in ${other}: its account may write in neither.`,
+    )
   if (chosen === other) {
     fs.rmdirSync(own)
     say(`The account of the database cannot reach ${dataFolder}; the database is in ${other}`)
@@ -127,8 +145,24 @@ function makeCluster(folder, data, secrets, account) {
   fs.writeFileSync(passwordFile, secrets.superuser, { mode: 0o600 })
   try {
     if (account.uid !== undefined) fs.chownSync(passwordFile, account.uid, account.gid)
-    const args = ['-D', data, '-U', 'postgres', '-A', 'scram-sha-256', `--pwfile=${passwordFile}`, '-E', 'UTF8', '--locale=C.UTF-8', '--no-sync']
-    execFileSync(path.join(bin, 'initdb'), args, { ...account, cwd: '/', stdio: ['ignore', 'ignore', 'pipe'] })
+    const args = [
+      '-D',
+      data,
+      '-U',
+      'postgres',
+      '-A',
+      'scram-sha-256',
+      `--pwfile=${passwordFile}`,
+      '-E',
+      'UTF8',
+      '--locale=C.UTF-8',
+      '--no-sync',
+    ]
+    execFileSync(path.join(bin, 'initdb'), args, {
+      ...account,
+      cwd: '/',
+      stdio: ['ignore', 'ignore', 'pipe'],
+    })
   } catch (error) {
     throw new Error(`The database could not be made: ${error.stderr ?? error.message}`, { cause: error })
   } finally {
@@ -143,13 +177,18 @@ function removeStalePid(data) {
   const pid = fs.readFileSync(file, 'utf8').split('\n')[0]
   const command = `/proc/${pid}/cmdline`
   const ours = fs.existsSync(command) && fs.readFileSync(command, 'utf8').includes(data)
-  if (ours) throw new Refusal(`The database in ${data} is still running (process ${pid}). Stop it first: kill -INT ${pid}`)
+  if (ours)
+    throw new Refusal(
+      `The database in ${data} is still running (process ${pid}). Stop it first: kill -INT ${pid}`,
+    )
   fs.rmSync(file)
 }
 
 async function accepts(bin, port) {
   try {
-    execFileSync(path.join(bin, 'pg_isready'), ['-h', '127.0.0.1', '-p', String(port), '-q'], { stdio: 'ignore' })
+    execFileSync(path.join(bin, 'pg_isready'), ['-h', '127.0.0.1', '-p', String(port), '-q'], {
+      stdio: 'ignore',
+    })
     return true
   } catch {
     return false
@@ -157,8 +196,26 @@ async function accepts(bin, port) {
 }
 
 function runSql(bin, port, password, database, text) {
-  const args = ['-h', '127.0.0.1', '-p', String(port), '-U', 'postgres', '-d', database, '-v', 'ON_ERROR_STOP=1', '-q', '-X']
-  execFileSync(path.join(bin, 'psql'), args, { input: text, cwd: '/', env: { ...process.env, PGPASSWORD: password }, stdio: ['pipe', 'ignore', 'pipe'] })
+  const args = [
+    '-h',
+    '127.0.0.1',
+    '-p',
+    String(port),
+    '-U',
+    'postgres',
+    '-d',
+    database,
+    '-v',
+    'ON_ERROR_STOP=1',
+    '-q',
+    '-X',
+  ]
+  execFileSync(path.join(bin, 'psql'), args, {
+    input: text,
+    cwd: '/',
+    env: { ...process.env, PGPASSWORD: password },
+    stdio: ['pipe', 'ignore', 'pipe'],
+  })
 }
 
 const rolesSql = ({ owner, app, worker }) => `

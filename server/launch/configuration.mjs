@@ -16,7 +16,8 @@ export function standIns(environment) {
 
 /** A demonstration only when nothing from outside takes part (ruling 23). */
 export function isDemo(environment) {
-  const loopback = !environment.PUBLIC_ORIGIN || /^http:\/\/127\.0\.0\.1(:\d+)?$/.test(environment.PUBLIC_ORIGIN)
+  const loopback =
+    !environment.PUBLIC_ORIGIN || /^http:\/\/127\.0\.0\.1(:\d+)?$/.test(environment.PUBLIC_ORIGIN)
   return loopback && standIns(environment).length === Object.keys(outside).length
 }
 
@@ -53,7 +54,10 @@ export function productEnvironment({ environment, port, dataFolder, secrets, dat
       OAUTH_PROFILE_URL: `${codeHost}/user`,
       OAUTH_EMAILS_URL: `${codeHost}/user/emails`,
     }),
-    ...(local.has('mail') && { SMTP_URL: `smtp://127.0.0.1:${ports.smtp}`, MAIL_FROM: 'Ridgeway notebook <notebook@ridgeway.example>' }),
+    ...(local.has('mail') && {
+      SMTP_URL: `smtp://127.0.0.1:${ports.smtp}`,
+      MAIL_FROM: 'Ridgeway notebook <notebook@ridgeway.example>',
+    }),
     ...(local.has('stamps') && {
       TSA_URL: `http://127.0.0.1:${ports.stamps}/`,
       TSA_CHAIN_FILE: path.join(dataFolder, 'fakes/stamps/tsa-chain.pem'),
@@ -62,8 +66,16 @@ export function productEnvironment({ environment, port, dataFolder, secrets, dat
   }
 }
 
-/** What a worker is given: everything but the secrets and the database of the application (threat B9). */
+/** What a worker is never given: the secrets and the database of the application (threat B9). */
+const keptFromWorkers = [
+  'DATABASE_URL',
+  'DATABASE_OWNER_URL',
+  'SESSION_SECRET',
+  'HALFSILVER_SECRET',
+  'OAUTH_CLIENT_SECRET',
+  'SMTP_URL',
+]
+
 export function workerEnvironment(environment) {
-  const { DATABASE_URL, DATABASE_OWNER_URL, SESSION_SECRET, HALFSILVER_SECRET, OAUTH_CLIENT_SECRET, SMTP_URL, ...rest } = environment
-  return rest
+  return Object.fromEntries(Object.entries(environment).filter(([name]) => !keptFromWorkers.includes(name)))
 }

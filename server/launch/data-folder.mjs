@@ -10,7 +10,9 @@ export function openDataFolder(folder) {
     fs.mkdirSync(folder, { recursive: true, mode: 0o711 })
     fs.accessSync(folder, fs.constants.W_OK | fs.constants.X_OK)
   } catch (error) {
-    throw new Refusal(`The data folder ${folder} cannot be written (${error.code}). Name another one: HALFSILVER_DATA=/path npm start`)
+    throw new Refusal(
+      `The data folder ${folder} cannot be written (${error.code}). Name another one: HALFSILVER_DATA=/path npm start`,
+    )
   }
   return fs.realpathSync(folder)
 }
@@ -50,7 +52,10 @@ export function secretsOf(folder) {
   if (!fs.existsSync(file)) {
     const secret = () => randomBytes(32).toString('hex')
     const names = ['superuser', 'owner', 'app', 'worker', 'session', 'atRest', 'storage', 'oauth']
-    const made = { id: randomBytes(6).toString('hex'), ...Object.fromEntries(names.map((name) => [name, secret()])) }
+    const made = {
+      id: randomBytes(6).toString('hex'),
+      ...Object.fromEntries(names.map((name) => [name, secret()])),
+    }
     fs.writeFileSync(file, JSON.stringify(made, null, 2), { mode: 0o600 })
   }
   return JSON.parse(fs.readFileSync(file, 'utf8'))

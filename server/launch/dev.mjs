@@ -12,14 +12,34 @@ const loader = new URL('./typescript.mjs', import.meta.url).href
  */
 await runMain(async () => {
   await prepare()
-  const [{ startServices }, { freePort }] = await Promise.all([import('./product.mjs'), import('./ports.mjs')])
+  const [{ startServices }, { freePort }] = await Promise.all([
+    import('./product.mjs'),
+    import('./ports.mjs'),
+  ])
   const port = Number(process.env.PORT ?? 4310)
   const dataFolder = path.resolve(root, process.env.HALFSILVER_DATA ?? '.data')
-  const { env, workerEnv, ports, stop } = await startServices({ dataFolder, port, environment: process.env, tell: say })
+  const { env, workerEnv, ports, stop } = await startServices({
+    dataFolder,
+    port,
+    environment: process.env,
+    tell: say,
+  })
   const apiPort = await freePort()
   // The product's address is the page's, the API listens elsewhere.
   const api = { ...env, PORT: String(apiPort) }
-  const watched = (file, own) => run(process.execPath, [path.join(root, 'node_modules/tsx/dist/cli.mjs'), 'watch', '--clear-screen=false', '--import', loader, file], own)
+  const watched = (file, own) =>
+    run(
+      process.execPath,
+      [
+        path.join(root, 'node_modules/tsx/dist/cli.mjs'),
+        'watch',
+        '--clear-screen=false',
+        '--import',
+        loader,
+        file,
+      ],
+      own,
+    )
   const vite = [path.join(root, 'node_modules/vite/bin/vite.js'), '--port', String(port), '--strictPort']
   const children = [
     watched('server/main.ts', api),

@@ -6,7 +6,11 @@ import { root } from './root.mjs'
 /** One digest over names and contents of files and folders of the checkout; what is not there counts for nothing. */
 export function digestOf(places) {
   const hash = createHash('sha256')
-  for (const file of places.flatMap(filesOf)) hash.update(file).update('\0').update(fs.readFileSync(path.join(root, file)))
+  for (const file of places.flatMap(filesOf))
+    hash
+      .update(file)
+      .update('\0')
+      .update(fs.readFileSync(path.join(root, file)))
   return hash.digest('hex')
 }
 

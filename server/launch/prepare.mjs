@@ -17,7 +17,8 @@ const at = (...parts) => path.join(root, ...parts)
  */
 export async function prepare({ only, tell = say } = {}) {
   const [major, minor] = process.versions.node.split('.').map(Number)
-  if (major < 20 || (major === 20 && minor < 19)) throw new Refusal(`Node 20.19 or newer is needed; this is ${process.version}.`)
+  if (major < 20 || (major === 20 && minor < 19))
+    throw new Refusal(`Node 20.19 or newer is needed; this is ${process.version}.`)
   const release = await lock(tell)
   try {
     await installPackages(tell)
@@ -33,7 +34,7 @@ export async function prepare({ only, tell = say } = {}) {
 async function lock(tell) {
   const file = path.join(os.tmpdir(), `halfsilver-setup-${process.getuid()}-${pathDigest(root)}`)
   const own = JSON.stringify({ pid: process.pid, since: startTime(process.pid) })
-  for (let told = false; ; ) {
+  for (let told = false; ;) {
     try {
       fs.writeFileSync(file, own, { flag: 'wx' })
       return () => fs.rmSync(file, { force: true })
@@ -80,7 +81,8 @@ function installedFits() {
   const installed = JSON.parse(fs.readFileSync(file, 'utf8')).packages
   const locked = JSON.parse(fs.readFileSync(at('package-lock.json'), 'utf8')).packages
   return Object.entries(locked).every(
-    ([name, { version, optional }]) => name === '' || (installed[name] ? installed[name].version === version : optional),
+    ([name, { version, optional }]) =>
+      name === '' || (installed[name] ? installed[name].version === version : optional),
   )
 }
 
@@ -88,8 +90,14 @@ async function installDebianPackages(tell) {
   const missing = [...(postgresBinaries() ? [] : ['postgresql']), ...(chromium() ? [] : ['chromium'])]
   if (missing.length === 0) return
   const line = `apt-get install -y ${missing.join(' ')}`
-  if (process.getuid() !== 0) throw new Refusal(`The Debian packages ${missing.join(' and ')} are missing. Install them first: sudo ${line}`)
-  if (!fs.existsSync('/usr/bin/apt-get')) throw new Refusal(`${missing.join(' and ')} are missing, and this is not a Debian system. Install them first.`)
+  if (process.getuid() !== 0)
+    throw new Refusal(
+      `The Debian packages ${missing.join(' and ')} are missing. Install them first: sudo ${line}`,
+    )
+  if (!fs.existsSync('/usr/bin/apt-get'))
+    throw new Refusal(
+      `${missing.join(' and ')} are missing, and this is not a Debian system. Install them first.`,
+    )
   tell(`Installing Debian packages: ${missing.join(', ')}`)
   const env = { ...process.env, DEBIAN_FRONTEND: 'noninteractive' }
   await run('apt-get', ['update', '-q'], env)
@@ -102,7 +110,16 @@ export function chromium() {
 }
 
 /** What the built client and the offline checker are made from. */
-const sources = ['src', 'public', 'server/contract', 'server/document', 'server/ledger-format', 'index.html', 'package-lock.json', 'tsconfig.json']
+const sources = [
+  'src',
+  'public',
+  'server/contract',
+  'server/document',
+  'server/ledger-format',
+  'index.html',
+  'package-lock.json',
+  'tsconfig.json',
+]
 
 async function build(tell) {
   const configs = ['vite.config.ts', 'vite.checker.config.ts']
@@ -112,7 +129,11 @@ async function build(tell) {
   tell('Building the client')
   const { NODE_ENV: _, ...env } = process.env
   for (const config of configs)
-    await run(process.execPath, [at('node_modules/vite/bin/vite.js'), 'build', '--config', at(config), '--logLevel', 'warn'], { ...env, NO_COLOR: '1' })
+    await run(
+      process.execPath,
+      [at('node_modules/vite/bin/vite.js'), 'build', '--config', at(config), '--logLevel', 'warn'],
+      { ...env, NO_COLOR: '1' },
+    )
   fs.writeFileSync(stamp, wanted)
 }
 

@@ -27,7 +27,13 @@ export class Processes {
    * `ready`, `stopSignal` (SIGTERM), `graceMs` after which it is killed, `onDeath(line)` to report a restart.
    */
   async start(name, options) {
-    const member = { name, options, child: null, pause: FIRST_PAUSE_MS, logFile: path.join(this.#folder, 'logs', `${name}.log`) }
+    const member = {
+      name,
+      options,
+      child: null,
+      pause: FIRST_PAUSE_MS,
+      logFile: path.join(this.#folder, 'logs', `${name}.log`),
+    }
     this.#members.push(member)
     await this.#launch(member)
   }
@@ -43,7 +49,9 @@ export class Processes {
     this.#remember()
     const died = new Promise((_, fail) => {
       child.once('error', (error) => fail(new Error(`${member.name} cannot start: ${error.message}`)))
-      child.once('exit', (code, signal) => fail(new Error(`${member.name} ended at its start (${signal ?? code}).\n${tail(member.logFile)}`)))
+      child.once('exit', (code, signal) =>
+        fail(new Error(`${member.name} ended at its start (${signal ?? code}).\n${tail(member.logFile)}`)),
+      )
     })
     died.catch(() => undefined)
     await Promise.race([ready.wait(child), died])
@@ -55,7 +63,9 @@ export class Processes {
     if (this.#stopping || member.restarting) return
     member.restarting = true
     if (Date.now() - member.startedAt > STEADY_MS) member.pause = FIRST_PAUSE_MS
-    member.options.onDeath?.(`${member.name} ended unexpectedly and is started again; its log: ${member.logFile}`)
+    member.options.onDeath?.(
+      `${member.name} ended unexpectedly and is started again; its log: ${member.logFile}`,
+    )
     setTimeout(() => {
       member.restarting = false
       if (this.#stopping) return
@@ -72,11 +82,13 @@ export class Processes {
   }
 
   #remember() {
-    const alive = this.#members.filter(({ child }) => child?.pid).map(({ child, options }) => ({
-      pid: child.pid,
-      since: startTime(child.pid),
-      signal: options.stopSignal ?? 'SIGTERM',
-    }))
+    const alive = this.#members
+      .filter(({ child }) => child?.pid)
+      .map(({ child, options }) => ({
+        pid: child.pid,
+        since: startTime(child.pid),
+        signal: options.stopSignal ?? 'SIGTERM',
+      }))
     fs.writeFileSync(rememberedFile(this.#folder), JSON.stringify(alive))
   }
 }

@@ -17,7 +17,14 @@ import { typescript, startStandIns } from './services.mjs'
  *   (hears each line of progress), `signal` (gives up the start: what runs already is stopped and the start throws)
  * @returns `{ url, env, workerEnv, ports, processes, stop }`
  */
-export async function startServices({ dataFolder: folder, port, environment = process.env, fast = false, tell, signal }) {
+export async function startServices({
+  dataFolder: folder,
+  port,
+  environment = process.env,
+  fast = false,
+  tell,
+  signal,
+}) {
   const dataFolder = openDataFolder(folder)
   const release = lockDataFolder(dataFolder)
   const processes = new Processes(dataFolder)
@@ -28,11 +35,13 @@ export async function startServices({ dataFolder: folder, port, environment = pr
   try {
     await endLeftovers(dataFolder)
     forgetHalfDemo(dataFolder, tell)
-    if (!(await isFree(port))) throw new Refusal(`Port ${port} is in use. Take another one: PORT=${port + 1} npm start`)
+    if (!(await isFree(port)))
+      throw new Refusal(`Port ${port} is in use. Take another one: PORT=${port + 1} npm start`)
     const secrets = secretsOf(dataFolder)
     tell('Starting database, object store, mail and sign-in')
     const [database, ports] = await Promise.all([
-      standIns(environment).includes('database') && startCluster(processes, dataFolder, secrets, { fast, onDeath: tell }),
+      standIns(environment).includes('database') &&
+        startCluster(processes, dataFolder, secrets, { fast, onDeath: tell }),
       startStandIns(processes, { environment, dataFolder, secrets, onDeath: tell }),
     ])
     const demo = isDemo(environment)
@@ -99,7 +108,8 @@ async function loadDemo(env, dataFolder, { tell, signal }) {
 function forgetHalfDemo(dataFolder, tell) {
   if (!fs.existsSync(halfDemo(dataFolder))) return
   tell('The demonstration was loaded only in part; beginning again')
-  for (const name of ['objects', 'keys', 'fakes']) fs.rmSync(path.join(dataFolder, name), { recursive: true, force: true })
+  for (const name of ['objects', 'keys', 'fakes'])
+    fs.rmSync(path.join(dataFolder, name), { recursive: true, force: true })
   removeCluster(dataFolder)
   fs.rmSync(halfDemo(dataFolder))
 }
@@ -119,6 +129,8 @@ function command(env, name, { tell, signal }) {
   })
   return new Promise((done, fail) => {
     child.once('error', fail)
-    child.once('close', (code) => (code === 0 ? done(lines) : fail(new Error(`The command ${name} failed.\n${complaint}`))))
+    child.once('close', (code) =>
+      code === 0 ? done(lines) : fail(new Error(`The command ${name} failed.\n${complaint}`)),
+    )
   })
 }

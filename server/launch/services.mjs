@@ -19,7 +19,8 @@ export async function startStandIns(processes, { environment, dataFolder, secret
   const ports = { storage, codeHost, smtp, inbox, stamps }
   const fakes = wanted.filter((name) => ['code-host', 'mail', 'stamps'].includes(name))
   await Promise.all([
-    wanted.includes('storage') && startStorage(processes, { environment, dataFolder, secrets, port: storage, onDeath }),
+    wanted.includes('storage') &&
+      startStorage(processes, { environment, dataFolder, secrets, port: storage, onDeath }),
     fakes.length > 0 && startFakes(processes, { environment, dataFolder, secrets, fakes, ports, onDeath }),
   ])
   return ports

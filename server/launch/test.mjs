@@ -16,7 +16,9 @@ await runMain(async () => {
   await prepare()
   const given = process.argv.slice(2)
   const checks = given.length === 0 ? [runCheck('lint'), runCheck('typecheck')] : []
-  const results = given.includes('--project') ? [runTests(given)] : projects.map((name) => runTests(['--project', name, ...given]))
+  const results = given.includes('--project')
+    ? [runTests(given)]
+    : projects.map((name) => runTests(['--project', name, ...given]))
   const passed = sum([...checks, ...results], 'passed')
   const failed = sum([...checks, ...results], 'failed')
   say(`${passed} passed, ${failed} failed`)
@@ -40,7 +42,10 @@ function runTests(args) {
   const report = path.join(folder, 'report.json')
   const vitest = path.join(root, 'node_modules/vitest/vitest.mjs')
   const reporters = ['--reporter=default', '--reporter=json', `--outputFile.json=${report}`]
-  const run = spawnSync(process.execPath, [vitest, 'run', '--passWithNoTests', ...reporters, ...args], { cwd: root, stdio: 'inherit' })
+  const run = spawnSync(process.execPath, [vitest, 'run', '--passWithNoTests', ...reporters, ...args], {
+    cwd: root,
+    stdio: 'inherit',
+  })
   const counted = readReport(report)
   fs.rmSync(folder, { recursive: true, force: true })
   // A file that cannot be loaded, or an error outside of any test, fails the run without a failed test.

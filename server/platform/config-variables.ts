@@ -26,9 +26,17 @@ function isZone(name: string): boolean {
 
 /** Every environment variable the product reads. What each is for: docs/deploy.md. */
 export const environmentSchema = z.object({
-  PORT: z.coerce.number('must be a port number').int().min(1).max(65535, 'must be a port number, 1 to 65535').default(4310),
+  PORT: z.coerce
+    .number('must be a port number')
+    .int()
+    .min(1)
+    .max(65535, 'must be a port number, 1 to 65535')
+    .default(4310),
   HALFSILVER_DATA: word.default('.data'),
-  PUBLIC_ORIGIN: web.refine((text) => URL.canParse(text) && new URL(text).pathname === '/', 'must have no path'),
+  PUBLIC_ORIGIN: web.refine(
+    (text) => URL.canParse(text) && new URL(text).pathname === '/',
+    'must have no path',
+  ),
   DATABASE_URL: postgres,
   DATABASE_OWNER_URL: postgres.optional(),
   DATABASE_WORKER_URL: postgres.optional(),
@@ -55,7 +63,11 @@ export const environmentSchema = z.object({
   TSA_INDEPENDENT: onOrOff,
   LABORATORY_NAME: word.default('Laboratory'),
   LABORATORY_ZONE: zone.default('Europe/Berlin'),
-  MAX_UPLOAD_BYTES: z.coerce.number('must be a number of bytes').int().min(1).default(64 * 2 ** 30),
+  MAX_UPLOAD_BYTES: z.coerce
+    .number('must be a number of bytes')
+    .int()
+    .min(1)
+    .default(64 * 2 ** 30),
   HALFSILVER_DEMO: onOrOff,
 })
 

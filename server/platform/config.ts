@@ -27,7 +27,9 @@ type Values = z.output<typeof environmentSchema>
  * In a worker the values kept from it are random or unreachable placeholders, whatever the environment holds.
  */
 export function readConfig(environment: Record<string, string | undefined>, kind: ProcessKind = 'api') {
-  const parsed = environmentSchema.safeParse(kind === 'worker' ? { ...environment, ...placeholders() } : environment)
+  const parsed = environmentSchema.safeParse(
+    kind === 'worker' ? { ...environment, ...placeholders() } : environment,
+  )
   if (!parsed.success) throw new ConfigError(parsed.error.issues.map((issue) => fault(issue, environment)))
   const values = parsed.data
   const faults = [...missingDatabases(values, kind), ...unsafe(values)]
@@ -60,7 +62,8 @@ function placeholders(): Partial<Record<EnvironmentName, string>> {
 function fault(issue: z.core.$ZodIssue, environment: Record<string, string | undefined>) {
   const variable = String(issue.path[0] ?? 'environment')
   const example = examples[variable as EnvironmentName]
-  const found = environment[variable] === undefined || environment[variable] === '' ? 'is missing' : issue.message
+  const found =
+    environment[variable] === undefined || environment[variable] === '' ? 'is missing' : issue.message
   return { variable, detail: `${found}${example ? `; an example: ${variable}=${example}` : ''}` }
 }
 
@@ -90,8 +93,18 @@ function unsafe(values: Values) {
     })
   if (!values.HALFSILVER_DEMO) return faults
   if (!isLoopback(origin.hostname))
-    faults.push({ variable: 'HALFSILVER_DEMO', detail: 'is set, but PUBLIC_ORIGIN is not on loopback; leave it out' })
-  for (const name of ['DATABASE_URL', 'STORAGE_ENDPOINT', 'OAUTH_AUTHORIZE_URL', 'OAUTH_TOKEN_URL', 'SMTP_URL', 'TSA_URL'] as const)
+    faults.push({
+      variable: 'HALFSILVER_DEMO',
+      detail: 'is set, but PUBLIC_ORIGIN is not on loopback; leave it out',
+    })
+  for (const name of [
+    'DATABASE_URL',
+    'STORAGE_ENDPOINT',
+    'OAUTH_AUTHORIZE_URL',
+    'OAUTH_TOKEN_URL',
+    'SMTP_URL',
+    'TSA_URL',
+  ] as const)
     if (!isLoopback(new URL(values[name]).hostname))
       faults.push({
         variable: 'HALFSILVER_DEMO',
@@ -108,7 +121,11 @@ function shaped(values: Values, environment: string | undefined) {
     dataFolder: path.resolve(values.HALFSILVER_DATA),
     /** Scheme, host and port as a browser sees the product. */
     origin,
-    database: { app: values.DATABASE_URL, owner: values.DATABASE_OWNER_URL, worker: values.DATABASE_WORKER_URL },
+    database: {
+      app: values.DATABASE_URL,
+      owner: values.DATABASE_OWNER_URL,
+      worker: values.DATABASE_WORKER_URL,
+    },
     sessionSecret: values.SESSION_SECRET,
     /** Wraps at rest what must not be readable from a dump of the database (threat B7). */
     secret: values.HALFSILVER_SECRET,
@@ -128,7 +145,11 @@ function shaped(values: Values, environment: string | undefined) {
       emailsUrl: values.OAUTH_EMAILS_URL,
     },
     mail: { smtpUrl: values.SMTP_URL, from: values.MAIL_FROM },
-    timeStamps: { url: values.TSA_URL, chainFile: values.TSA_CHAIN_FILE, independent: values.TSA_INDEPENDENT },
+    timeStamps: {
+      url: values.TSA_URL,
+      chainFile: values.TSA_CHAIN_FILE,
+      independent: values.TSA_INDEPENDENT,
+    },
     laboratory: { name: values.LABORATORY_NAME, zone: values.LABORATORY_ZONE },
     maxUploadBytes: values.MAX_UPLOAD_BYTES,
     demo: values.HALFSILVER_DEMO,

@@ -15,6 +15,10 @@ export const redacted = [
 
 /** Lines of JSON on standard output; LOG_LEVEL (info) says how much. */
 export function openLog(name: string, destination?: DestinationStream): Logger {
-  const options = { name, level: process.env.LOG_LEVEL ?? 'info', redact: { paths: redacted, censor: '[not logged]' } }
+  const options = {
+    name,
+    level: process.env.LOG_LEVEL ?? 'info',
+    redact: { paths: redacted, censor: '[not logged]' },
+  }
   return destination ? pino(options, destination) : pino(options)
 }

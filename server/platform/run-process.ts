@@ -1,3 +1,4 @@
+import { inspect } from 'node:util'
 import { ConfigError } from './config.ts'
 
 /** What `run` gives back to stop what it started. */
@@ -17,7 +18,7 @@ export async function runProcess(run: () => Promise<Stop>): Promise<void> {
       stop().then(
         () => process.exit(0),
         (error: unknown) => {
-          console.error(error)
+          complain(error)
           process.exit(1)
         },
       )
@@ -25,7 +26,12 @@ export async function runProcess(run: () => Promise<Stop>): Promise<void> {
     for (const signal of ['SIGTERM', 'SIGINT', 'disconnect'] as const) process.on(signal, end)
     process.send?.('ready')
   } catch (error) {
-    console.error(error instanceof ConfigError ? error.message : error)
+    complain(error)
     process.exit(1)
   }
+}
+
+/** On standard error: a wrong configuration in its sentences, anything else with its stack. */
+export function complain(error: unknown): void {
+  process.stderr.write(`${error instanceof ConfigError ? error.message : inspect(error)}\n`)
 }

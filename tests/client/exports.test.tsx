@@ -1,6 +1,6 @@
 // @vitest-environment jsdom
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query'
-import { cleanup, render, screen } from '@testing-library/react'
+import { cleanup, configure, render, screen } from '@testing-library/react'
 import userEvent from '@testing-library/user-event'
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest'
 import type { BundleExport } from '../../server/contract/exports.ts'
@@ -56,7 +56,10 @@ let states: BundleExport[]
 let started: unknown[]
 beforeEach(() => {
   allowed = ['export']
-  states = [bundle({ status: 'waiting-for-time-stamp' }), bundle({ status: 'done', size: 1_900_000, sha256: 'a'.repeat(64) })]
+  states = [
+    bundle({ status: 'waiting-for-time-stamp' }),
+    bundle({ status: 'done', size: 1_900_000, sha256: 'a'.repeat(64) }),
+  ]
   started = []
   vi.stubGlobal(
     'fetch',
@@ -66,11 +69,14 @@ beforeEach(() => {
         return json(bundle({}), 202)
       }
       if (url.includes('/exports/')) return json(states.length > 1 ? states.shift() : states[0])
-      if (url.includes('/entries')) return json({ items: [entry(1, 'sealed'), entry(2, 'draft')], nextCursor: null })
+      if (url.includes('/entries'))
+        return json({ items: [entry(1, 'sealed'), entry(2, 'draft')], nextCursor: null })
       return json({ items: url.includes('/notebooks') ? [notebook(allowed)] : [], nextCursor: null })
     }),
   )
 })
+// Other work may share the processor.
+configure({ asyncUtilTimeout: 15_000 })
 afterEach(() => {
   cleanup()
   vi.unstubAllGlobals()
@@ -95,10 +101,12 @@ describe('export of a notebook', () => {
     await user.click(screen.getByRole('button', { name: 'Export and sign' }))
     await screen.findByText(/Waits for a time stamp/)
     expect(started).toEqual([{ notebookId: uuid(50), withoutRaw: true }])
-    const link = await screen.findByRole('link', { name: 'Download bundle' }, { timeout: 10_000 })
+    const link = await screen.findByRole('link', { name: 'Download bundle' })
     expect(link.getAttribute('href')).toBe(`/api/v1/exports/${uuid(90)}/bundle`)
     expect(link.getAttribute('download')).toBe('ridgeway-N-07-2026-11-13.zip')
-    expect(screen.getByText('npm run verify -- ridgeway-N-07-2026-11-13.zip --anchors anchors.json')).toBeTruthy()
+    expect(
+      screen.getByText('npm run verify -- ridgeway-N-07-2026-11-13.zip --anchors anchors.json'),
+    ).toBeTruthy()
   })
 
   it('says what failed and that nothing was changed', async () => {

@@ -43,7 +43,8 @@ describe('an event checked in the browser', () => {
   })
 
   test('every event of the tree holds', () => {
-    for (const view of views) expect(checkEventHere(view, proofOf(view), head)).toEqual({ digest: true, inclusion: true })
+    for (const view of views)
+      expect(checkEventHere(view, proofOf(view), head)).toEqual({ digest: true, inclusion: true })
   })
 
   test('the digest is SHA-256 of the canonical event, by another implementation too', () => {
@@ -51,9 +52,17 @@ describe('an event checked in the browser', () => {
     // Members in code-unit order are RFC 8785's; this event has plain names and values.
     const sorted = (value: unknown): unknown =>
       value && typeof value === 'object'
-        ? Object.fromEntries(Object.entries(value).sort(([a], [b]) => (a < b ? -1 : 1)).map(([k, v]) => [k, sorted(v)]))
+        ? Object.fromEntries(
+            Object.entries(value)
+              .sort(([a], [b]) => (a < b ? -1 : 1))
+              .map(([k, v]) => [k, sorted(v)]),
+          )
         : value
-    expect(createHash('sha256').update(JSON.stringify(sorted(event))).digest('hex')).toBe(digest)
+    expect(
+      createHash('sha256')
+        .update(JSON.stringify(sorted(event)))
+        .digest('hex'),
+    ).toBe(digest)
   })
 
   test('a changed payload is found, though the server gives the old digest and proof', () => {
@@ -97,14 +106,23 @@ describe('standing', () => {
 
   test('the result says whether the chain holds, or where it breaks', () => {
     expect(resultWords(verification({}))).toBe('The chain holds')
-    const broken = verification({ holds: false, firstBroken: { sequence: 4804, detail: 'its digest differs' } })
+    const broken = verification({
+      holds: false,
+      firstBroken: { sequence: 4804, detail: 'its digest differs' },
+    })
     expect(resultWords(broken)).toMatch(/^The chain breaks at event 4\D?804$/)
-    expect(resultWords(verification({ holds: false, head: 'differs' }))).toBe('The chain and the head do not agree')
+    expect(resultWords(verification({ holds: false, head: 'differs' }))).toBe(
+      'The chain and the head do not agree',
+    )
   })
 
   test('before, at and after a break, and beyond the head', () => {
     const broken = verification({ holds: false, firstBroken: { sequence: 5, detail: '' } })
-    expect([4, 5, 6].map((sequence) => standingOf(sequence, broken, 10).state)).toEqual(['ok', 'fault', 'note'])
+    expect([4, 5, 6].map((sequence) => standingOf(sequence, broken, 10).state)).toEqual([
+      'ok',
+      'fault',
+      'note',
+    ])
     expect(standingOf(10, undefined, 10).state).toBe('ok')
     expect(standingOf(11, undefined, 10).words).toBe('not yet under a head')
     expect(standingOf(1, undefined, null).state).toBe('queued')

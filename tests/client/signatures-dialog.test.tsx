@@ -1,8 +1,16 @@
 // @vitest-environment jsdom
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query'
-import { cleanup, render, screen, waitFor, within } from '@testing-library/react'
+import { cleanup, configure, render, screen, waitFor, within } from '@testing-library/react'
 import userEvent from '@testing-library/user-event'
-import { createCipheriv, createHash, createPublicKey, generateKeyPairSync, randomBytes, scryptSync, verify } from 'node:crypto'
+import {
+  createCipheriv,
+  createHash,
+  createPublicKey,
+  generateKeyPairSync,
+  randomBytes,
+  scryptSync,
+  verify,
+} from 'node:crypto'
 import { MemoryRouter } from 'react-router-dom'
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest'
 import type { Entry } from '../../server/contract/entries.ts'
@@ -12,8 +20,11 @@ import { authorRecord, certificate, content, entryOnScreen, laboratory, maren } 
 
 // The derivation by OpenSSL instead of JavaScript, for speed; that both give the same is told in tests/ledger.
 vi.mock('@noble/hashes/scrypt.js', () => ({
-  scryptAsync: async (password: Uint8Array, ownSalt: Uint8Array, { N, r, p, dkLen }: { N: number; r: number; p: number; dkLen: number }) =>
-    new Uint8Array(scryptSync(password, ownSalt, dkLen, { N, r, p, maxmem: 2 ** 29 })),
+  scryptAsync: async (
+    password: Uint8Array,
+    ownSalt: Uint8Array,
+    { N, r, p, dkLen }: { N: number; r: number; p: number; dkLen: number },
+  ) => new Uint8Array(scryptSync(password, ownSalt, dkLen, { N, r, p, maxmem: 2 ** 29 })),
 }))
 
 /*
@@ -27,13 +38,19 @@ const proof = derived.subarray(32).toString('base64')
 const pair = generateKeyPairSync('ed25519')
 const iv = randomBytes(12)
 const cipher = createCipheriv('aes-256-gcm', derived.subarray(0, 32), iv)
-const sealed = Buffer.concat([cipher.update(pair.privateKey.export({ format: 'der', type: 'pkcs8' })), cipher.final()])
+const sealed = Buffer.concat([
+  cipher.update(pair.privateKey.export({ format: 'der', type: 'pkcs8' })),
+  cipher.final(),
+])
 const wrappedKey = Buffer.concat([sealed, cipher.getAuthTag()]).toString('base64')
 
 const json = (body: unknown, status = 200) =>
   new Response(JSON.stringify(body), { status, headers: { 'Content-Type': 'application/json' } })
 const problem = (code: string, status: number, more: object = {}) =>
-  json({ type: `urn:halfsilver:problem:${code}`, code, title: code, status, detail: 'In words.', ...more }, status)
+  json(
+    { type: `urn:halfsilver:problem:${code}`, code, title: code, status, detail: 'In words.', ...more },
+    status,
+  )
 
 interface Server {
   entry: Entry
@@ -49,7 +66,15 @@ async function answer(input: string | URL | Request, init?: RequestInit): Promis
   if (pathname.endsWith('/me/signing-key')) {
     const kdf = { name: 'scrypt', n: 2 ** 17, r: 8, p: 1, salt: salt.toString('base64') }
     const enrolmentSha256 = 'd'.repeat(64)
-    return json({ status: 'active', publicKey: null, certificate, kdf, enrolmentSha256, lockedUntil: null, expiresAt: null })
+    return json({
+      status: 'active',
+      publicKey: null,
+      certificate,
+      kdf,
+      enrolmentSha256,
+      lockedUntil: null,
+      expiresAt: null,
+    })
   }
   if (pathname.endsWith('/unlock')) {
     if (body.proof === proof) return json({ wrappedKey, iv: iv.toString('base64') })
@@ -68,7 +93,16 @@ async function answer(input: string | URL | Request, init?: RequestInit): Promis
     const signer = { personId: maren.id, name: maren.name, role: 'experimentalist' }
     const { meaning, recordSha256 } = body
     return json(
-      { id: maren.id, meaning, statement: 's', signer, time: '2026-11-12T15:20:01.000Z', recordSha256, timeStamp, voided: false },
+      {
+        id: maren.id,
+        meaning,
+        statement: 's',
+        signer,
+        time: '2026-11-12T15:20:01.000Z',
+        recordSha256,
+        timeStamp,
+        voided: false,
+      },
       201,
     )
   }
@@ -79,6 +113,8 @@ beforeEach(() => {
   server = { entry: entryOnScreen(), record: authorRecord().bytes, wrongProofs: 0, signed: [] }
   vi.stubGlobal('fetch', vi.fn(answer))
 })
+// Other work may share the processor.
+configure({ asyncUtilTimeout: 15_000 })
 afterEach(() => {
   cleanup()
   vi.unstubAllGlobals()
@@ -92,7 +128,16 @@ async function opened(shown: unknown = content) {
     <QueryClientProvider client={new QueryClient()}>
       <MemoryRouter>
         <UiRoot>
-          <SignAct sheet={{ entry: server.entry, me: maren, laboratoryId: laboratory.id, shownContent: () => shown, save }} onSigned={onSigned} />
+          <SignAct
+            sheet={{
+              entry: server.entry,
+              me: maren,
+              laboratoryId: laboratory.id,
+              shownContent: () => shown,
+              save,
+            }}
+            onSigned={onSigned}
+          />
         </UiRoot>
       </MemoryRouter>
     </QueryClientProvider>,
@@ -112,9 +157,12 @@ describe('sign and submit', () => {
     await user.click(within(dialog).getByLabelText(/Signing passphrase/))
     await user.paste(passphrase)
     await user.click(within(dialog).getByRole('button', { name: 'Sign and submit' }))
-    await screen.findByText('Signed and submitted.', {}, { timeout: 20_000 })
+    await screen.findByText('Signed and submitted.')
     const [given] = server.signed
-    expect(given).toMatchObject({ meaning: 'authorship', recordSha256: createHash('sha256').update(server.record).digest('hex') })
+    expect(given).toMatchObject({
+      meaning: 'authorship',
+      recordSha256: createHash('sha256').update(server.record).digest('hex'),
+    })
     const publicKey = createPublicKey(pair.privateKey)
     expect(verify(null, server.record, publicKey, Buffer.from(given!.signature, 'base64'))).toBe(true)
     expect(onSigned).toHaveBeenCalledOnce()
@@ -127,10 +175,10 @@ describe('sign and submit', () => {
     const act = () => within(dialog).getByRole('button', { name: 'Sign and submit' })
     await user.type(field, 'not this one at all')
     await user.click(act())
-    await within(dialog).findByText(/4 attempts are left/, {}, { timeout: 20_000 })
+    await within(dialog).findByText(/4 attempts are left/)
     server.wrongProofs = 4
     await user.click(act())
-    await within(dialog).findByText(/Signing is locked until/, {}, { timeout: 20_000 })
+    await within(dialog).findByText(/Signing is locked until/)
     expect(server.signed).toEqual([])
   }, 60_000)
 
@@ -157,7 +205,10 @@ describe('sign and submit', () => {
   })
 
   it('lists what stands in the way instead', async () => {
-    server.entry = { ...server.entry, blocks: [{ code: 'calculation-stale', detail: 'C1 was computed from another reading.', pointer: null }] }
+    server.entry = {
+      ...server.entry,
+      blocks: [{ code: 'calculation-stale', detail: 'C1 was computed from another reading.', pointer: null }],
+    }
     const { dialog } = await opened()
     await within(dialog).findByText('C1 was computed from another reading.')
     expect(within(dialog).queryByLabelText(/Signing passphrase/)).toBeNull()

@@ -17,16 +17,25 @@ describe('times typed in the laboratory’s zone', () => {
     expect(zonedOfUtc(utc, 'Europe/Berlin').startsWith(text)).toBe(true)
   })
 
-  test.each(['', 'yesterday', '12.11.2026 11:30', '2026-13-01 10:00', '2026-02-30 10:00', '2026-11-12 24:10', '2026-11-12 10:61'])(
-    '%j is no time',
-    (text) => {
-      expect(utcOfZoned(text, 'Europe/Berlin')).toBeNull()
-    },
-  )
+  test.each([
+    '',
+    'yesterday',
+    '12.11.2026 11:30',
+    '2026-13-01 10:00',
+    '2026-02-30 10:00',
+    '2026-11-12 24:10',
+    '2026-11-12 10:61',
+  ])('%j is no time', (text) => {
+    expect(utcOfZoned(text, 'Europe/Berlin')).toBeNull()
+  })
 })
 
 describe('presence at a run', () => {
-  const run = { number: 'R-0612', startedAt: '2026-11-12T10:00:00.000Z', durationPs: '600000000000000' } as Run
+  const run = {
+    number: 'R-0612',
+    startedAt: '2026-11-12T10:00:00.000Z',
+    durationPs: '600000000000000',
+  } as Run
   test.each([
     ['2026-11-12T09:00:00.000Z', '2026-11-12T10:00:00.000Z', null],
     ['2026-11-12T10:10:00.000Z', '2026-11-12T11:00:00.000Z', null],
@@ -46,8 +55,12 @@ describe('the desk in one sentence', () => {
   test('counts who waits, who is past seven days and who is past thirty', () => {
     expect(deskSentence([], now)).toBe('No sheet waits for you.')
     expect(deskSentence([days(0.2)], now)).toBe('One sheet waits for you, none past the seven-day limit.')
-    expect(deskSentence([days(9), days(1), days(7), days(4)], now)).toBe('Four sheets wait for you, one past the seven-day limit.')
-    expect(deskSentence([days(31), days(8)], now)).toBe('Two sheets wait for you, two past the seven-day limit, one overdue.')
+    expect(deskSentence([days(9), days(1), days(7), days(4)], now)).toBe(
+      'Four sheets wait for you, one past the seven-day limit.',
+    )
+    expect(deskSentence([days(31), days(8)], now)).toBe(
+      'Two sheets wait for you, two past the seven-day limit, one overdue.',
+    )
   })
   test('a clock ahead of ours waits no negative time', () => {
     expect(daysSince(days(-1), now)).toBe(0)
@@ -56,7 +69,11 @@ describe('the desk in one sentence', () => {
 
 describe('times offered for presence', () => {
   test('hold the whole run, in whole seconds', () => {
-    const run = { number: 'R-0009', startedAt: '2026-12-01T17:32:25.400Z', durationPs: '1999990000000' } as Run
+    const run = {
+      number: 'R-0009',
+      startedAt: '2026-12-01T17:32:25.400Z',
+      durationPs: '1999990000000',
+    } as Run
     const { from, to } = spanOfRun(run)
     expect([from, to]).toEqual(['2026-12-01T17:32:25.000Z', '2026-12-01T17:32:28.000Z'])
     expect(presenceTrouble(run, from, to)).toBeNull()

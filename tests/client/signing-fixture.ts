@@ -41,7 +41,17 @@ export const body = buildBody({
   contributors: [],
   content,
   runs: [],
-  files: [{ ...file, size: '1200', runId: null, uploadedBy: maren.id, uploadedAt: time, via: 'browser', reading: null }],
+  files: [
+    {
+      ...file,
+      size: '1200',
+      runId: null,
+      uploadedBy: maren.id,
+      uploadedAt: time,
+      via: 'browser',
+      reading: null,
+    },
+  ],
   calculations: [
     {
       id: uuid(30),
@@ -62,14 +72,25 @@ export const body = buildBody({
 })
 
 export const statementOf = (meaning: Signing['meaning']) =>
-  signingStatement(meaning, { laboratory: laboratory.name, number: 'N-07/042', revision: 17, title: 'Purity of dot 31b' })
+  signingStatement(meaning, {
+    laboratory: laboratory.name,
+    number: 'N-07/042',
+    revision: 17,
+    title: 'Purity of dot 31b',
+  })
 
 export function signingOf(over: Partial<Signing> = {}): Signing {
   return {
     id: uuid(40),
     meaning: 'authorship',
     statement: statementOf('authorship'),
-    signer: { subjectId: maren.id, name: maren.name, role: 'experimentalist', certificateSha256, enrolmentSha256: hex('d') },
+    signer: {
+      subjectId: maren.id,
+      name: maren.name,
+      role: 'experimentalist',
+      certificateSha256,
+      enrolmentSha256: hex('d'),
+    },
     time,
     zone: 'Europe/Berlin',
     presentFor: null,
@@ -105,7 +126,19 @@ export function entryOnScreen(): Entry {
     contentSha256: hex('0'),
     bodySha256: null,
     runs: [],
-    files: [{ ...file, entryId: uuid(7), runId: null, state: 'verified', uploadedBy: maren.id, uploadedByName: maren.name, uploadedAt: time, sameBytesAs: [], reading: noReading }],
+    files: [
+      {
+        ...file,
+        entryId: uuid(7),
+        runId: null,
+        state: 'verified',
+        uploadedBy: maren.id,
+        uploadedByName: maren.name,
+        uploadedAt: time,
+        sameBytesAs: [],
+        reading: noReading,
+      },
+    ],
     calculations: [{ id: uuid(30), label: 'C1', kind: 'correlation', status: 'done', stale: false, figures }],
     signatures: [],
     witnesses: { required: 1, given: 0 },

@@ -20,11 +20,16 @@ interface Letter {
 }
 
 async function inbox(to: string): Promise<Letter[]> {
-  return ((await (await fetch(`${inject('inboxUrl')}/letters.json?to=${to}`)).json()) as { items: Letter[] }).items
+  return ((await (await fetch(`${inject('inboxUrl')}/letters.json?to=${to}`)).json()) as { items: Letter[] })
+    .items
 }
 
 async function letters(to: string, withinMs: number): Promise<Letter[]> {
-  for (const end = Date.now() + withinMs; Date.now() < end; await new Promise((done) => setTimeout(done, 50))) {
+  for (
+    const end = Date.now() + withinMs;
+    Date.now() < end;
+    await new Promise((done) => setTimeout(done, 50))
+  ) {
     const found = await inbox(to)
     if (found.length > 0) return found
   }
@@ -34,9 +39,14 @@ async function letters(to: string, withinMs: number): Promise<Letter[]> {
 test('a letter leaves when its transaction commits', async () => {
   const to = `${randomUUID()}@ridgeway.example`
   const subject = 'Witness asked: g²(0) of run 7 <script>alert(1)</script>'
-  await open.services.db.transaction((t) => open.services.mail.enqueue({ to, subject, text: 'Open N-07/042.' }, t))
+  await open.services.db.transaction((t) =>
+    open.services.mail.enqueue({ to, subject, text: 'Open N-07/042.' }, t),
+  )
   expect(await letters(to, 10_000)).toMatchObject([{ subject, to: [to] }])
-  const [row] = await open.services.db.rows<{ sent_at: Date | null }>('select sent_at from work.outbox where recipient = :to', { to })
+  const [row] = await open.services.db.rows<{ sent_at: Date | null }>(
+    'select sent_at from work.outbox where recipient = :to',
+    { to },
+  )
   expect(row?.sent_at).not.toBeNull()
   const page = await (await fetch(inject('inboxUrl'))).text()
   expect(page).toContain('Witness asked')

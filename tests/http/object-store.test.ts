@@ -13,15 +13,20 @@ beforeAll(async () => {
   await store.ensureBucket()
 })
 
-test.each([1, 1000, 16 * 2 ** 20, 16 * 2 ** 20 + 1, 40 * 2 ** 20])('a stream of %i bytes is stored and hashed on the way', async (size) => {
-  const bytes = randomBytes(size)
-  const at = key()
-  const chunks = Array.from({ length: Math.ceil(size / 65_536) }, (_, i) => bytes.subarray(i * 65_536, (i + 1) * 65_536))
-  const stored = await store.putStream(at, Readable.from(chunks))
-  expect(stored).toMatchObject({ size, sha256: hex('sha256', bytes), sha512: hex('sha512', bytes) })
-  expect(hex('sha256', await store.getBytes(at, stored.versionId))).toBe(stored.sha256)
-  expect(await store.stat(at)).toMatchObject({ size })
-})
+test.each([1, 1000, 16 * 2 ** 20, 16 * 2 ** 20 + 1, 40 * 2 ** 20])(
+  'a stream of %i bytes is stored and hashed on the way',
+  async (size) => {
+    const bytes = randomBytes(size)
+    const at = key()
+    const chunks = Array.from({ length: Math.ceil(size / 65_536) }, (_, i) =>
+      bytes.subarray(i * 65_536, (i + 1) * 65_536),
+    )
+    const stored = await store.putStream(at, Readable.from(chunks))
+    expect(stored).toMatchObject({ size, sha256: hex('sha256', bytes), sha512: hex('sha512', bytes) })
+    expect(hex('sha256', await store.getBytes(at, stored.versionId))).toBe(stored.sha256)
+    expect(await store.stat(at)).toMatchObject({ size })
+  },
+)
 
 test('bytes, and parts of them', async () => {
   const at = key()

@@ -21,25 +21,38 @@ async function opened() {
 }
 
 beforeAll(async () => {
-  const owner = new PgBoss({ connectionString: inject('ownerDatabaseUrl'), schema: queueSchema, supervise: false, schedule: false })
+  const owner = new PgBoss({
+    connectionString: inject('ownerDatabaseUrl'),
+    schema: queueSchema,
+    supervise: false,
+    schedule: false,
+  })
   await owner.start()
   for (const name of [queue, `${queue}-slow`, `${queue}-left`]) await owner.createQueue(name)
   await owner.stop({ graceful: false })
   open = await opened()
   await open.services.queue.work(
-    job(queue, z.object({ key: z.string(), fail: z.number().optional(), takes: z.number().optional() }), async ({ key, fail = 0, takes = 0 }) => {
-      const failed = failures.get(key) ?? 0
-      failures.set(key, failed + 1)
-      if (failed < fail) throw new Error('not yet')
-      await new Promise((done) => setTimeout(done, takes))
-      seen.push({ key, at: Date.now() })
-    }),
+    job(
+      queue,
+      z.object({ key: z.string(), fail: z.number().optional(), takes: z.number().optional() }),
+      async ({ key, fail = 0, takes = 0 }) => {
+        const failed = failures.get(key) ?? 0
+        failures.set(key, failed + 1)
+        if (failed < fail) throw new Error('not yet')
+        await new Promise((done) => setTimeout(done, takes))
+        seen.push({ key, at: Date.now() })
+      },
+    ),
   )
 })
 afterAll(() => open.close())
 
 async function arrival(key: string, withinMs: number): Promise<number | null> {
-  for (const end = Date.now() + withinMs; Date.now() < end; await new Promise((done) => setTimeout(done, 5))) {
+  for (
+    const end = Date.now() + withinMs;
+    Date.now() < end;
+    await new Promise((done) => setTimeout(done, 5))
+  ) {
     const found = seen.find((one) => one.key === key)
     if (found) return found.at
   }
@@ -114,7 +127,9 @@ test('a job whose process died is taken up by the next that serves its queue', a
   // What a killed process leaves: a job that is running, and nobody who runs it.
   await db.run(`update queue.job set state = 'active', started_on = now() where id = :id`, { id })
   const next = await opened()
-  await next.services.queue.work(job(left, z.object({ key: z.string() }), async ({ key }) => void seen.push({ key, at: Date.now() })))
+  await next.services.queue.work(
+    job(left, z.object({ key: z.string() }), async ({ key }) => void seen.push({ key, at: Date.now() })),
+  )
   expect(await arrival('left', 5000)).not.toBeNull()
   await next.close()
 })
@@ -123,7 +138,9 @@ test('a job that runs is left alone while its process lives', async () => {
   await open.services.queue.send(queue, { key: 'long', takes: 1500 })
   await new Promise((done) => setTimeout(done, 500))
   const other = await opened()
-  await other.services.queue.work(job(queue, z.object({ key: z.string() }), async ({ key }) => void seen.push({ key, at: Date.now() })))
+  await other.services.queue.work(
+    job(queue, z.object({ key: z.string() }), async ({ key }) => void seen.push({ key, at: Date.now() })),
+  )
   await new Promise((done) => setTimeout(done, 1500))
   await other.close()
   expect(seen.filter(({ key }) => key === 'long')).toHaveLength(1)

@@ -10,7 +10,8 @@ import { startSmallApp, type SmallApp } from '../support/small-app.ts'
 let app: SmallApp
 let maren: PersonClient
 const signedInAt = new Date('2030-01-15T09:00:00.000Z')
-const after = (minutes: number, seconds = 0) => app.clock.set(new Date(signedInAt.getTime() + minutes * 60_000 + seconds * 1000))
+const after = (minutes: number, seconds = 0) =>
+  app.clock.set(new Date(signedInAt.getTime() + minutes * 60_000 + seconds * 1000))
 const active = { 'x-person-active': '1' }
 
 beforeAll(async () => {
@@ -30,8 +31,10 @@ beforeEach(async () => {
   maren = await signIn(app.url, 'maren')
 })
 
-const ask = (headers: Record<string, string> = {}) => maren.call('GET', 'tokens', undefined, headers).then(({ status }) => status)
-const change = () => maren.call('DELETE', 'tokens/7f0c6f6a-53b8-4a6e-a9a7-1a1f0d3c2b11').then(({ status }) => status)
+const ask = (headers: Record<string, string> = {}) =>
+  maren.call('GET', 'tokens', undefined, headers).then(({ status }) => status)
+const change = () =>
+  maren.call('DELETE', 'tokens/7f0c6f6a-53b8-4a6e-a9a7-1a1f0d3c2b11').then(({ status }) => status)
 
 describe('idle', () => {
   test.each([
@@ -117,7 +120,10 @@ describe('the cookie', () => {
     const toHost = new URL(before.headers.get('location') ?? '')
     toHost.searchParams.set('login', 'maren')
     const back = await fetch(toHost, { redirect: 'manual' })
-    const done = await fetch(back.headers.get('location') ?? '', { redirect: 'manual', headers: { cookie: planted } })
+    const done = await fetch(back.headers.get('location') ?? '', {
+      redirect: 'manual',
+      headers: { cookie: planted },
+    })
     expect(done.headers.get('location')).toBe('/')
     const [own = ''] = done.headers.getSetCookie().map((line) => line.split(';')[0] ?? '')
     expect(own).not.toBe(planted)

@@ -11,7 +11,11 @@ beforeAll(async () => {
 afterAll(() => app.close())
 
 const go = (url: string | URL, cookie = '') => fetch(url, { redirect: 'manual', headers: { cookie } })
-const cookieOf = (answer: Response) => answer.headers.getSetCookie().map((line) => line.split(';')[0]).join('; ')
+const cookieOf = (answer: Response) =>
+  answer.headers
+    .getSetCookie()
+    .map((line) => line.split(';')[0])
+    .join('; ')
 const locationOf = (answer: Response) => new URL(answer.headers.get('location') ?? '', app.url)
 
 async function begun(login: string) {

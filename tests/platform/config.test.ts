@@ -44,10 +44,25 @@ test('a whole environment is taken, with the usual values for what is left out',
 })
 
 test('every fault is named at once, with an example', () => {
-  const faults = faultsOf({ ...whole, DATABASE_URL: undefined, PORT: '99999', STORAGE_ENDPOINT: 'objects', LABORATORY_ZONE: 'Europe/Nowhere' })
-  expect(faults.map(({ variable }) => variable).sort()).toEqual(['DATABASE_URL', 'LABORATORY_ZONE', 'PORT', 'STORAGE_ENDPOINT'])
-  expect(faults.find(({ variable }) => variable === 'DATABASE_URL')?.detail).toBe(`is missing; an example: DATABASE_URL=${examples.DATABASE_URL}`)
-  expect(faults.find(({ variable }) => variable === 'STORAGE_ENDPOINT')?.detail).toContain('must be a URL that begins with http:// or https://')
+  const faults = faultsOf({
+    ...whole,
+    DATABASE_URL: undefined,
+    PORT: '99999',
+    STORAGE_ENDPOINT: 'objects',
+    LABORATORY_ZONE: 'Europe/Nowhere',
+  })
+  expect(faults.map(({ variable }) => variable).sort()).toEqual([
+    'DATABASE_URL',
+    'LABORATORY_ZONE',
+    'PORT',
+    'STORAGE_ENDPOINT',
+  ])
+  expect(faults.find(({ variable }) => variable === 'DATABASE_URL')?.detail).toBe(
+    `is missing; an example: DATABASE_URL=${examples.DATABASE_URL}`,
+  )
+  expect(faults.find(({ variable }) => variable === 'STORAGE_ENDPOINT')?.detail).toContain(
+    'must be a URL that begins with http:// or https://',
+  )
 })
 
 test.each(['SESSION_SECRET', 'HALFSILVER_SECRET'])('%s must be long', (name) => {
@@ -55,20 +70,29 @@ test.each(['SESSION_SECRET', 'HALFSILVER_SECRET'])('%s must be long', (name) => 
 })
 
 test('no message repeats a secret', () => {
-  const error = new ConfigError(faultsOf({ ...whole, SESSION_SECRET: 'too-short-secret', DATABASE_URL: 'hs_app:hidden@db' }))
+  const error = new ConfigError(
+    faultsOf({ ...whole, SESSION_SECRET: 'too-short-secret', DATABASE_URL: 'hs_app:hidden@db' }),
+  )
   expect(error.message).not.toContain('too-short-secret')
   expect(error.message).not.toContain('hidden')
 })
 
 test('each process needs its own database role', () => {
-  expect(faultsOf({ ...whole, DATABASE_OWNER_URL: undefined }, 'cli')).toMatchObject([{ variable: 'DATABASE_OWNER_URL' }])
-  expect(faultsOf({ ...whole, DATABASE_WORKER_URL: undefined }, 'worker')).toMatchObject([{ variable: 'DATABASE_WORKER_URL' }])
+  expect(faultsOf({ ...whole, DATABASE_OWNER_URL: undefined }, 'cli')).toMatchObject([
+    { variable: 'DATABASE_OWNER_URL' },
+  ])
+  expect(faultsOf({ ...whole, DATABASE_WORKER_URL: undefined }, 'worker')).toMatchObject([
+    { variable: 'DATABASE_WORKER_URL' },
+  ])
 })
 
 test('a worker starts without the secrets of the application, and never holds them (threat B9)', () => {
   const { SESSION_SECRET, HALFSILVER_SECRET, DATABASE_URL, OAUTH_CLIENT_SECRET, SMTP_URL, ...rest } = whole
   expect(faultsOf(rest, 'worker')).toEqual([])
-  const config = readConfig({ ...rest, SESSION_SECRET, HALFSILVER_SECRET, DATABASE_URL, OAUTH_CLIENT_SECRET, SMTP_URL }, 'worker')
+  const config = readConfig(
+    { ...rest, SESSION_SECRET, HALFSILVER_SECRET, DATABASE_URL, OAUTH_CLIENT_SECRET, SMTP_URL },
+    'worker',
+  )
   const held = JSON.stringify(config)
   for (const secret of [SESSION_SECRET, HALFSILVER_SECRET, DATABASE_URL]) expect(held).not.toContain(secret)
 })

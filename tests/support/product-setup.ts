@@ -40,6 +40,7 @@ export default async function setup(project: TestProject) {
 
 /** Without what vitest adds for itself and without settings of a product that may run beside. */
 function ownEnvironment() {
-  const foreign = /^(VITEST|TEST$|VITE_|PORT$|PUBLIC_ORIGIN$|HALFSILVER_DATA$|DATABASE_|STORAGE_|OAUTH_|SMTP_|TSA_)/
+  const foreign =
+    /^(VITEST|TEST$|VITE_|PORT$|PUBLIC_ORIGIN$|HALFSILVER_DATA$|DATABASE_|STORAGE_|OAUTH_|SMTP_|TSA_)/
   return Object.fromEntries(Object.entries(process.env).filter(([name]) => !foreign.test(name)))
 }

@@ -36,7 +36,11 @@ export async function startSmallApp(
   const log = openLog('test', { write: (line: string) => void logged.push(line) })
   const { services, close } = await openServices(config, config.database.app, log, clock)
   const sessions = openSessions(config)
-  const app = buildHttp(services, { routes: routes(services), sessions, signIn: { onSignIn: async () => undefined } })
+  const app = buildHttp(services, {
+    routes: routes(services),
+    sessions,
+    signIn: { onSignIn: async () => undefined },
+  })
   const http = await serve(app, port)
   if ((http.server.address() as AddressInfo).port !== port) throw new Error('served at another port')
   return {

@@ -1,4 +1,4 @@
 export { evidenceJobs } from './jobs.ts'
 export { closePrinter, warmPrinter } from './printer.ts'
-export { renditionsOf, type Rendition } from './repository.ts'
+export { renditionsOf } from './repository.ts'
 export { renderEvidence } from './use-cases/render-evidence.ts'

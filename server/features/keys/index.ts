@@ -6,4 +6,4 @@ export { keyInForce, signingKeyStatuses, type CertifiedKey } from './statuses.ts
 export { endorseKey, prepareEndorsement } from './use-cases/endorse-key.ts'
 export { enrolKey } from './use-cases/enrol-key.ts'
 export { prepareEnrolment } from './use-cases/prepare-enrolment.ts'
-export { inactiveSentence, unlockKey } from './use-cases/unlock-key.ts'
+export { inactiveSentence } from './use-cases/unlock-key.ts'

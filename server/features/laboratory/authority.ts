@@ -123,7 +123,7 @@ function describe(certificate: x509.X509Certificate): IssuedCertificate {
 }
 
 /** PEM in lines of 64, under the label that OpenSSL knows. */
-export function pemOf(label: string, der: ArrayBuffer | Uint8Array): string {
+function pemOf(label: string, der: ArrayBuffer | Uint8Array): string {
   const text = Buffer.from(der as Uint8Array)
     .toString('base64')
     .replace(/.{64}(?=.)/g, '$&\n')

@@ -6,7 +6,8 @@ import { makeHead } from './heads.ts'
 import { registerTimeStampRoots, stampAllMissing, stampJobs } from './stamps.ts'
 
 const DAY_S = 86_400
-const HOUR_MS = 3_600_000
+const HOUR_S = 3600
+const HOUR_MS = HOUR_S * 1000
 
 /**
  * The jobs of the laboratory: stamps, and once an hour a look at whether the day's head was made and every stamp has come.
@@ -33,7 +34,7 @@ export async function scheduleHeadChecks(services: Services): Promise<void> {
 async function scheduleNext(services: Services): Promise<void> {
   const startAfter = new Date((Math.floor(Date.now() / HOUR_MS) + 1) * HOUR_MS)
   const singletonKey = startAfter.toISOString()
-  await services.queue.send('check-heads', {}, { startAfter, singletonKey, singletonSeconds: DAY_S })
+  await services.queue.send('check-heads', {}, { startAfter, singletonKey, singletonSeconds: 2 * HOUR_S })
 }
 
 async function makeDailyHead(services: Services): Promise<void> {

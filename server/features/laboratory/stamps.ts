@@ -14,7 +14,7 @@ const JOB_TIMEOUT_MS = 30_000
 const CLOCK_ALARM_MS = 60_000
 
 /** SHA-256 of signature bytes, hex: the key of their time stamp. */
-export const signatureDigest = (signature: Uint8Array) => createHash('sha256').update(signature).digest('hex')
+const signatureDigest = (signature: Uint8Array) => createHash('sha256').update(signature).digest('hex')
 
 /** Stamps a signature unless it has a stamp; throws while the authority cannot be reached or answers wrongly. */
 export async function stamp(

@@ -2,9 +2,16 @@ import type { Entry, EntrySummary } from '../../contract/entries.ts'
 import { entryActions, notebookRights } from '../../contract/policy.ts'
 import type { Actor } from '../../platform/http/actor.ts'
 import type { Services } from '../../platform/services.ts'
-import { calculationsOfEntry, inputFiles, presentSummary } from '../calculations/index.ts'
+import { calculationsIn, type NormalDocument } from '../../document/index.ts'
+import {
+  calculationsOfEntry,
+  inputFiles,
+  presentSummary,
+  type CalculationRow,
+} from '../calculations/index.ts'
 import {
   addendaOf,
+  contentOfSave,
   entryNumber,
   findEntry,
   hasContributed,
@@ -68,7 +75,8 @@ export async function presentEntry(services: Services, actor: Actor, entry: Entr
     addendaOf(db, entry.id),
     entry.amendsEntryId === null ? null : findEntry(db, entry.amendsEntryId),
   ])
-  const inputs = await inputFiles(services, calculations)
+  const current = await currentCalculations(services, entry, calculations)
+  const inputs = await inputFiles(services, current)
   const witnessed = signatures.filter((s) => s.meaning !== 'authorship' && !s.voided)
   return {
     ...(summary as EntrySummary),
@@ -80,7 +88,7 @@ export async function presentEntry(services: Services, actor: Actor, entry: Entr
     bodySha256: entry.bodySha256,
     runs: await presentRuns(services, actor, runs),
     files: await presentFiles(services, actor, files),
-    calculations: calculations.map((calculation) => presentSummary(calculation, inputs)),
+    calculations: current.map((calculation) => presentSummary(calculation, inputs)),
     signatures: signatures.map(({ entryId: _, ...signature }) => signature),
     witnesses: {
       required: entry.witnessesRequired,
@@ -96,6 +104,21 @@ export async function presentEntry(services: Services, actor: Actor, entry: Entr
     blocks: entry.state === 'draft' ? await signingBlocks(services, entry) : [],
     allowed: await allowedTo(services, actor, entry, signatures),
   }
+}
+
+/** Those that stand in the text, and of each label the newest; what a successor has replaced is history. */
+async function currentCalculations(
+  services: Services,
+  entry: EntryRow,
+  calculations: readonly CalculationRow[],
+): Promise<CalculationRow[]> {
+  const content = await contentOfSave(services.db, entry.id, entry.saveNumber)
+  const placed = new Set(content === null ? [] : calculationsIn(content as NormalDocument))
+  const placedLabels = new Set(calculations.filter(({ id }) => placed.has(id)).map(({ label }) => label))
+  const newest = new Map(calculations.map(({ label, id }) => [label, id]))
+  return calculations.filter(
+    ({ id, label }) => placed.has(id) || (!placedLabels.has(label) && newest.get(label) === id),
+  )
 }
 
 async function allowedTo(

@@ -33,7 +33,11 @@ export function openDatabase(url: string, log: Logger, maxConnections = MAX_CONN
     dialectOptions: { application_name: 'halfsilver' },
   })
 
-  function rows<T extends object>(sql: string, replacements: Replacements = {}, t?: Transaction): Promise<T[]> {
+  function rows<T extends object>(
+    sql: string,
+    replacements: Replacements = {},
+    t?: Transaction,
+  ): Promise<T[]> {
     return sequelize.query<T>(sql, { type: QueryTypes.SELECT, replacements, transaction: t, raw: true })
   }
 

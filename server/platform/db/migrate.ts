@@ -42,7 +42,13 @@ function migrations({ sequelize }: Database) {
 
 /** pg-boss makes its schema and a table per queue; both need the owner. The running processes get rows alone. */
 async function createQueues(ownerUrl: string, db: Database, log: Logger) {
-  const boss = new PgBoss({ connectionString: ownerUrl, schema: queueSchema, supervise: false, schedule: false, max: 2 })
+  const boss = new PgBoss({
+    connectionString: ownerUrl,
+    schema: queueSchema,
+    supervise: false,
+    schedule: false,
+    max: 2,
+  })
   boss.on('error', (error) => log.error({ err: error }, 'queue'))
   await boss.start()
   try {
@@ -51,5 +57,7 @@ async function createQueues(ownerUrl: string, db: Database, log: Logger) {
     await boss.stop({ graceful: false, wait: true })
   }
   await db.run(`grant usage on schema ${queueSchema} to hs_app, hs_worker`)
-  await db.run(`grant select, insert, update, delete on all tables in schema ${queueSchema} to hs_app, hs_worker`)
+  await db.run(
+    `grant select, insert, update, delete on all tables in schema ${queueSchema} to hs_app, hs_worker`,
+  )
 }

@@ -34,7 +34,11 @@ export async function openEvents(url: string, db: Database, log: Logger): Promis
   }
 
   async function connect() {
-    const next = new pg.Client({ connectionString: url, application_name: 'halfsilver events', keepAlive: true })
+    const next = new pg.Client({
+      connectionString: url,
+      application_name: 'halfsilver events',
+      keepAlive: true,
+    })
     next.on('notification', ({ payload }) => hear(payload ?? 'null'))
     next.on('error', (error) => log.warn({ err: error }, 'the event connection failed'))
     next.on('end', () => {

@@ -27,9 +27,12 @@ interface PersonRow {
 
 /** The person of a session, or null when the account has been closed. */
 export async function personActor(db: Database, personId: string, sessionId: string): Promise<Actor | null> {
-  const person = await db.row<PersonRow>('select id, login, name, roles from work.people where id = :personId and active', {
-    personId,
-  })
+  const person = await db.row<PersonRow>(
+    'select id, login, name, roles from work.people where id = :personId and active',
+    {
+      personId,
+    },
+  )
   return person && { kind: 'person', ...named(person), scopes: ['read', 'record'], sessionId }
 }
 

@@ -37,10 +37,21 @@ export function buildHttp(services: Services, { routes, sessions, signIn }: AppP
   app.use(securityHeaders(config, inlineScriptHashes(path.join(clientFolder, 'index.html'))))
   app.use(allowedHosts(config))
   app.use(healthRoutes(services))
-  app.use(compression({ filter: (req, res) => !isStream(res.getHeader('Content-Type')) && compression.filter(req, res) }))
+  app.use(
+    compression({
+      filter: (req, res) => !isStream(res.getHeader('Content-Type')) && compression.filter(req, res),
+    }),
+  )
   app.use('/api/v1', interfaceOf(services, routes, sessions))
   app.use('/api', nothingHere)
-  app.use('/auth', notStored, limitSignIns(), sessions.middleware, signInRoutes(services, signIn), nothingHere)
+  app.use(
+    '/auth',
+    notStored,
+    limitSignIns(),
+    sessions.middleware,
+    signInRoutes(services, signIn),
+    nothingHere,
+  )
   app.use('/docs/api', documentationPage())
   app.use(clientFiles(clientFolder))
   app.use(nothingHere)

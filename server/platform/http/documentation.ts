@@ -6,6 +6,14 @@ import { documentationHeaders } from './security.ts'
 export function documentationPage(): Router {
   const router = Router()
   const options = { swaggerUrl: '/api/v1/openapi.json', validatorUrl: null, tryItOutEnabled: false }
-  router.use(documentationHeaders, swaggerUi.serve, swaggerUi.setup(undefined, { swaggerOptions: options, swaggerUrl: options.swaggerUrl, customSiteTitle: 'Halfsilver interface' }))
+  router.use(
+    documentationHeaders,
+    swaggerUi.serve,
+    swaggerUi.setup(undefined, {
+      swaggerOptions: options,
+      swaggerUrl: options.swaggerUrl,
+      customSiteTitle: 'Halfsilver interface',
+    }),
+  )
   return router
 }

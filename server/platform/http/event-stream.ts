@@ -18,9 +18,18 @@ const BEAT_MS = 15_000
  * Server-sent events for one request. Every 15 s it sends a comment, so that nothing in between takes the connection for
  * dead, and ends the stream when the session has ended meanwhile (ruling 19).
  */
-export function openEventStream<E extends Endpoint>(services: Services, { req, res, actor }: Context<E>): EventStream {
+export function openEventStream<E extends Endpoint>(
+  services: Services,
+  { req, res, actor }: Context<E>,
+): EventStream {
   const ended = new AbortController()
-  res.status(200).set({ 'Content-Type': 'text/event-stream', 'Cache-Control': 'no-store, no-transform', 'X-Accel-Buffering': 'no' })
+  res
+    .status(200)
+    .set({
+      'Content-Type': 'text/event-stream',
+      'Cache-Control': 'no-store, no-transform',
+      'X-Accel-Buffering': 'no',
+    })
   res.flushHeaders()
 
   async function maySee(): Promise<boolean> {

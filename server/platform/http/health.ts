@@ -10,7 +10,9 @@ export function healthRoutes(services: Services): Router {
     res.json({ alive: true })
   })
   router.get('/readyz', async (_req, res) => {
-    const checks = await Promise.all(Object.entries(reachable(services)).map(async ([name, check]) => [name, await outcome(check)]))
+    const checks = await Promise.all(
+      Object.entries(reachable(services)).map(async ([name, check]) => [name, await outcome(check)]),
+    )
     const parts = Object.fromEntries(checks) as Record<string, string>
     const ready = Object.values(parts).every((found) => found === 'reachable')
     if (!ready) services.log.warn({ parts }, 'not ready')

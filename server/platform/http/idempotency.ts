@@ -29,11 +29,21 @@ export async function answerOnce(
   run: () => Promise<Settled>,
 ): Promise<Settled> {
   const key = req.get('idempotency-key')
-  if (endpoint.method !== 'POST' || !visitor || key === undefined || neverKept.includes(endpoint)) return run()
+  if (endpoint.method !== 'POST' || !visitor || key === undefined || neverKept.includes(endpoint))
+    return run()
   if (!/^[\x21-\x7e]{1,200}$/.test(key))
-    throw new Problem('invalid-values', 'The Idempotency-Key must be 1 to 200 printable characters without spaces.')
+    throw new Problem(
+      'invalid-values',
+      'The Idempotency-Key must be 1 to 200 printable characters without spaces.',
+    )
   const { db, clock } = services
-  const call = { key, personId: visitor.personId, method: req.method, path: req.originalUrl, now: clock.now() }
+  const call = {
+    key,
+    personId: visitor.personId,
+    method: req.method,
+    path: req.originalUrl,
+    now: clock.now(),
+  }
   const earlier = await claim(services, call)
   if (earlier) return replayed(earlier, call)
   const own = 'key = :key and person_id = :personId'
@@ -53,7 +63,10 @@ type Call = { key: string; personId: string; method: string; path: string; now: 
 /** Takes the key for this call, or answers the call that has it. */
 async function claim({ db }: Services, call: Call): Promise<KeptAnswer | null> {
   const oldest = new Date(call.now.getTime() - KEPT_HOURS * 3_600_000)
-  await db.run('delete from work.idempotency where person_id = :personId and created_at < :oldest', { ...call, oldest })
+  await db.run('delete from work.idempotency where person_id = :personId and created_at < :oldest', {
+    ...call,
+    oldest,
+  })
   const taken = await db.rows(
     `insert into work.idempotency (key, person_id, method, path, created_at) values (:key, :personId, :method, :path, :now)
      on conflict do nothing returning key`,
@@ -69,8 +82,18 @@ async function claim({ db }: Services, call: Call): Promise<KeptAnswer | null> {
 
 function replayed(earlier: KeptAnswer, call: Call): Settled {
   if (earlier.method !== call.method || earlier.path !== call.path)
-    throw new Problem('invalid-values', 'This Idempotency-Key was used for another call. Use a new key for each thing you do.')
+    throw new Problem(
+      'invalid-values',
+      'This Idempotency-Key was used for another call. Use a new key for each thing you do.',
+    )
   if (earlier.status === null)
-    throw new Problem('wrong-state', 'The first call with this Idempotency-Key is still under way. Try again in a moment.')
-  return { status: earlier.status, headers: { 'Idempotency-Replayed': 'true' }, body: earlier.body ?? undefined }
+    throw new Problem(
+      'wrong-state',
+      'The first call with this Idempotency-Key is still under way. Try again in a moment.',
+    )
+  return {
+    status: earlier.status,
+    headers: { 'Idempotency-Replayed': 'true' },
+    body: earlier.body ?? undefined,
+  }
 }

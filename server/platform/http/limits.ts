@@ -27,7 +27,13 @@ function limiter(limit: number, byPerson: boolean): RequestHandler {
     keyGenerator: (req) => (byPerson && visitorOf(req)?.personId) || ipKeyGenerator(req.ip ?? ''),
     handler: (_req, _res, next) => {
       const extra = { retryAfterS: 60 }
-      next(new Problem('too-many-requests', `More than ${limit} calls in a minute. Wait a minute; nothing was changed.`, { extra }))
+      next(
+        new Problem(
+          'too-many-requests',
+          `More than ${limit} calls in a minute. Wait a minute; nothing was changed.`,
+          { extra },
+        ),
+      )
     },
   })
 }

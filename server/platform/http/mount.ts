@@ -60,13 +60,15 @@ function settled({ config, log }: Services, endpoint: Endpoint, result: unknown)
   if (parsed.success) return { ...head, body: parsed.data }
   const call = `${endpoint.method} ${endpoint.path}`
   log.error({ call, issues: parsed.error.issues.slice(0, 10) }, 'the reply is not what the contract says')
-  if (!config.production) throw new Error(`${call} answers otherwise than the contract says: ${parsed.error.message}`)
+  if (!config.production)
+    throw new Error(`${call} answers otherwise than the contract says: ${parsed.error.message}`)
   return { ...head, body: given.body }
 }
 
 function contextOf(endpoint: Endpoint, req: Request, res: Response): Context<Endpoint> {
   const params = endpoint.params.safeParse(req.params)
-  if (!params.success) throw new Problem('not-found', 'There is nothing at this address, or you may not see it.')
+  if (!params.success)
+    throw new Problem('not-found', 'There is nothing at this address, or you may not see it.')
   const visitor = visitorOf(req)
   return {
     params: params.data,
@@ -99,21 +101,29 @@ export function fieldErrors(issue: z.core.$ZodIssue): FieldError[] {
   const at = (path: PropertyKey[]) =>
     path.map((key) => '/' + String(key).replaceAll('~', '~0').replaceAll('/', '~1')).join('')
   if (issue.code === 'unrecognized_keys')
-    return issue.keys.map((key) => ({ pointer: at([...issue.path, key]), detail: 'There is no such field here.' }))
+    return issue.keys.map((key) => ({
+      pointer: at([...issue.path, key]),
+      detail: 'There is no such field here.',
+    }))
   return [{ pointer: at(issue.path), detail: sentence(issue) }]
 }
 
 function sentence(issue: z.core.$ZodIssue): string {
-  if (issue.code === 'invalid_type' && issue.input === undefined && /undefined/.test(issue.message)) return 'This is missing.'
+  if (issue.code === 'invalid_type' && issue.input === undefined && /undefined/.test(issue.message))
+    return 'This is missing.'
   return issue.message.replace(/^Invalid input: /, '').replace(/^./, (first) => first.toUpperCase()) + '.'
 }
 
 /** 415 for a body that is neither what the endpoint takes nor absent (also what keeps forms of other sites out). */
 function requireType({ body }: Endpoint, req: Request) {
-  const hasBody = req.headers['transfer-encoding'] !== undefined || Number(req.headers['content-length'] ?? 0) > 0
+  const hasBody =
+    req.headers['transfer-encoding'] !== undefined || Number(req.headers['content-length'] ?? 0) > 0
   if (body === 'multipart') {
     if (!req.is('multipart/form-data'))
-      throw new Problem('unreadable-type', 'Send the file as multipart/form-data in the field "file"; nothing was stored.')
+      throw new Problem(
+        'unreadable-type',
+        'Send the file as multipart/form-data in the field "file"; nothing was stored.',
+      )
     return
   }
   if (hasBody && !req.is('application/json'))

@@ -43,7 +43,9 @@ function operation(name: string, endpoint: Endpoint): Json {
     tags: [endpoint.tag],
     security: security(endpoint),
     parameters: [...parameters(endpoint.params, 'path'), ...parameters(endpoint.query, 'query')],
-    ...(endpoint.body === null ? {} : { requestBody: { required: true, content: requestContent(endpoint.body) } }),
+    ...(endpoint.body === null
+      ? {}
+      : { requestBody: { required: true, content: requestContent(endpoint.body) } }),
     responses: { [endpoint.status]: reply(endpoint.reply), ...problems(endpoint) },
   }
 }
@@ -54,7 +56,10 @@ function security({ access, token }: Endpoint): Json[] {
 }
 
 function parameters(given: z.ZodType, place: 'path' | 'query'): Json[] {
-  const { properties = {}, required = [] } = schema(given, 'input') as { properties?: Record<string, Json>; required?: string[] }
+  const { properties = {}, required = [] } = schema(given, 'input') as {
+    properties?: Record<string, Json>
+    required?: string[]
+  }
   return Object.entries(properties).map(([name, of]) => ({
     name,
     in: place,
@@ -72,7 +77,11 @@ function requestContent(body: NonNullable<Endpoint['body']>): Json {
 function reply(kind: Endpoint['reply']): Json {
   if (kind === null) return { description: 'Done' }
   if (kind === 'bytes') return { description: 'The bytes', content: { '*/*': {} } }
-  if (kind === 'events') return { description: 'Server-sent events', content: { 'text/event-stream': { schema: { type: 'string' } } } }
+  if (kind === 'events')
+    return {
+      description: 'Server-sent events',
+      content: { 'text/event-stream': { schema: { type: 'string' } } },
+    }
   return { description: 'Done', content: { 'application/json': { schema: schema(kind, 'output') } } }
 }
 
@@ -81,7 +90,9 @@ function problems({ access, problems: own }: Endpoint): Json {
   for (const code of new Set([...always, ...(access === 'anyone' ? [] : signedIn), ...own]))
     byStatus.set(problemTable[code].status, [...(byStatus.get(problemTable[code].status) ?? []), code])
   const content = { 'application/problem+json': { schema: { $ref: '#/components/schemas/Problem' } } }
-  return Object.fromEntries([...byStatus].map(([status, codes]) => [status, { description: codes.join(', '), content }]))
+  return Object.fromEntries(
+    [...byStatus].map(([status, codes]) => [status, { description: codes.join(', '), content }]),
+  )
 }
 
 function schema(of: z.ZodType, io: 'input' | 'output'): Json {

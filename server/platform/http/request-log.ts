@@ -13,7 +13,11 @@ export function requestLog(log: Logger): RequestHandler {
     genReqId: () => randomUUID(),
     autoLogging: { ignore: ({ url = '' }) => !url.startsWith('/api/') && !url.startsWith('/auth/') },
     serializers: {
-      req: ({ id, method, url = '' }: { id: string; method: string; url?: string }) => ({ id, method, path: url.split('?')[0] }),
+      req: ({ id, method, url = '' }: { id: string; method: string; url?: string }) => ({
+        id,
+        method,
+        path: url.split('?')[0],
+      }),
       res: ({ statusCode }: { statusCode: number }) => ({ statusCode }),
     },
   })

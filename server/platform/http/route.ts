@@ -25,13 +25,16 @@ export class Answer<T> {
 }
 
 /** Use it in place of the bare body: `return answer(entry, { headers: { ETag: '"3"' } })`. */
-export function answer<T>(body: T, more: { status?: number; headers?: Record<string, string> } = {}): Answer<T> {
+export function answer<T>(
+  body: T,
+  more: { status?: number; headers?: Record<string, string> } = {},
+): Answer<T> {
   return new Answer(body, more.status, more.headers ?? {})
 }
 
 type Returned<E extends Endpoint> = E['reply'] extends z.ZodType
   ? ReplyOf<E> | Answer<ReplyOf<E>>
-  : // eslint-disable-next-line @typescript-eslint/no-invalid-void-type -- an async handler without a reply returns Promise<void>
+  : // An async handler without a reply returns Promise<void>.
     void | Answer<undefined>
 
 /** A handler of 'bytes' or 'events' writes to `res` itself and returns nothing. */

@@ -10,7 +10,10 @@ export function inlineScriptHashes(pageFile: string): string[] {
   if (!existsSync(pageFile)) return []
   const page = readFileSync(pageFile, 'utf8')
   return [...page.matchAll(/<script>([\s\S]*?)<\/script>/g)].map(
-    ([, text]) => `'sha256-${createHash('sha256').update(text ?? '').digest('base64')}'`,
+    ([, text]) =>
+      `'sha256-${createHash('sha256')
+        .update(text ?? '')
+        .digest('base64')}'`,
   )
 }
 
@@ -40,7 +43,10 @@ export function securityHeaders(config: Config, scriptHashes: string[]): Request
       xFrameOptions: { action: 'deny' },
     }),
     (_req, res, next) => {
-      res.set('Permissions-Policy', 'camera=(), microphone=(), geolocation=(), payment=(), usb=(), serial=(), midi=()')
+      res.set(
+        'Permissions-Policy',
+        'camera=(), microphone=(), geolocation=(), payment=(), usb=(), serial=(), midi=()',
+      )
       next()
     },
   ]
@@ -76,7 +82,10 @@ export function ownOriginOnly({ origin }: Config): RequestHandler {
     if (safeMethods.includes(req.method) || req.headers.authorization !== undefined) return next()
     const site = req.get('sec-fetch-site')
     if (req.headers.origin === origin && (site === undefined || site === 'same-origin')) return next()
-    throw new Problem('foreign-origin', `This request does not come from ${origin}; nothing was changed. Scripts use a token.`)
+    throw new Problem(
+      'foreign-origin',
+      `This request does not come from ${origin}; nothing was changed. Scripts use a token.`,
+    )
   }
 }
 

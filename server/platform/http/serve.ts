@@ -10,7 +10,10 @@ const CLOSE_MS = 5000
 
 /** Serves on loopback; TLS and other machines are the business of a proxy in front (docs/deploy.md). */
 export async function serve(app: Express, port: number): Promise<{ server: Server; close(): Promise<void> }> {
-  const server = createServer({ requestTimeout: UPLOAD_HOURS * 3_600_000, headersTimeout: HEADERS_MS, keepAliveTimeout: 65_000 }, app)
+  const server = createServer(
+    { requestTimeout: UPLOAD_HOURS * 3_600_000, headersTimeout: HEADERS_MS, keepAliveTimeout: 65_000 },
+    app,
+  )
   server.timeout = IDLE_MS
   await new Promise<void>((done, fail) => {
     server.once('error', fail)

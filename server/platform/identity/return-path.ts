@@ -2,6 +2,7 @@
 export function returnPath(given: unknown, origin: string): string {
   if (typeof given !== 'string' || !given.startsWith('/') || !URL.canParse(given, origin)) return '/'
   const target = new URL(given, origin)
-  if (target.origin !== origin || target.pathname.startsWith('/auth/') || target.pathname === '/sign-in') return '/'
+  if (target.origin !== origin || target.pathname.startsWith('/auth/') || target.pathname === '/sign-in')
+    return '/'
   return target.pathname + target.search + target.hash
 }

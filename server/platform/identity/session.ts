@@ -33,9 +33,19 @@ export interface SessionStore {
 
 /** Sessions in PostgreSQL; the browser holds a signed random id and nothing else. */
 export function openSessions(config: Config): SessionStore {
-  const pool = new pg.Pool({ connectionString: config.database.app, max: 5, application_name: 'halfsilver sessions' })
+  const pool = new pg.Pool({
+    connectionString: config.database.app,
+    max: 5,
+    application_name: 'halfsilver sessions',
+  })
   const Store = connectPgSimple(session)
-  const store = new Store({ pool, schemaName: 'session', tableName: 'sessions', ttl: SESSION_HOURS * 3600, disableTouch: true })
+  const store = new Store({
+    pool,
+    schemaName: 'session',
+    tableName: 'sessions',
+    ttl: SESSION_HOURS * 3600,
+    disableTouch: true,
+  })
   const middleware = session({
     name: sessionCookieName(config.port),
     secret: config.sessionSecret,
@@ -61,14 +71,23 @@ export function openSessions(config: Config): SessionStore {
 
 /** Starts a session under a new id, so that an id known before the sign-in is worth nothing. */
 export async function startSession(req: Request, personId: string, now: Date): Promise<void> {
-  await new Promise<void>((done, fail) => req.session.regenerate((error: unknown) => (error ? fail(asError(error)) : done())))
+  await new Promise<void>((done, fail) =>
+    req.session.regenerate((error: unknown) => (error ? fail(asError(error)) : done())),
+  )
   Object.assign(req.session, { personId, startedAt: now.toISOString(), activeAt: now.toISOString() })
 }
 
 /** Ends the session of this request and takes the cookie back. */
 export async function endSession(req: Request, res: Response, config: Config): Promise<void> {
-  await new Promise<void>((done, fail) => req.session.destroy((error: unknown) => (error ? fail(asError(error)) : done())))
-  res.clearCookie(sessionCookieName(config.port), { secure: true, httpOnly: true, sameSite: 'lax', path: '/' })
+  await new Promise<void>((done, fail) =>
+    req.session.destroy((error: unknown) => (error ? fail(asError(error)) : done())),
+  )
+  res.clearCookie(sessionCookieName(config.port), {
+    secure: true,
+    httpOnly: true,
+    sameSite: 'lax',
+    path: '/',
+  })
 }
 
 /** The person of the request's session while it lasts; notes activity. */

@@ -32,8 +32,12 @@ export function signInRoutes(services: Services, { onSignIn }: SignInEvents): Ro
       // Against forged and replayed answers: a state bound to the session, and PKCE. The types lack both options.
       ...{ state: true as unknown as string, pkce: true, allRawEmails: true },
     },
-    (_accessToken: string, _refreshToken: string, profile: Profile, done: (error: unknown, user?: object) => void) =>
-      done(null, { accountId: String(profile.id), login: profile.username ?? '' }),
+    (
+      _accessToken: string,
+      _refreshToken: string,
+      profile: Profile,
+      done: (error: unknown, user?: object) => void,
+    ) => done(null, { accountId: String(profile.id), login: profile.username ?? '' }),
   )
 
   // passport keeps a request's outcome on the strategy it is given: one object for all would hand a person's sign-in to
@@ -45,7 +49,8 @@ export function signInRoutes(services: Services, { onSignIn }: SignInEvents): Ro
       'select id, active from work.people where provider = :provider and provider_account_id = :id',
       { provider: identityProvider, id: account.accountId },
     )
-    if (!person) return refuse(res, 'unknown-account', `account ${account.accountId} (${account.login}) is nobody here`)
+    if (!person)
+      return refuse(res, 'unknown-account', `account ${account.accountId} (${account.login}) is nobody here`)
     if (!person.active) return refuse(res, 'closed-account', `account ${account.accountId} is closed`)
     const target = returnPath(req.session.returnTo, config.origin)
     await onSignIn(person.id)
@@ -68,7 +73,8 @@ export function signInRoutes(services: Services, { onSignIn }: SignInEvents): Ro
   })
   router.get('/github/callback', (req, res, next) => {
     const finished = (error: unknown, account: unknown, info: unknown) => {
-      if (error || !account) return refuse(res, 'not-completed', error ?? (info as { message?: string } | undefined)?.message)
+      if (error || !account)
+        return refuse(res, 'not-completed', error ?? (info as { message?: string } | undefined)?.message)
       finish(req, res, account as { accountId: string; login: string }).catch(next)
     }
     passport.authenticate(forOneRequest(), { session: false }, finished)(req, res, next)

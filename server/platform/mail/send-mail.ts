@@ -36,9 +36,12 @@ export function sendMailJob({ config, db, clock }: Services) {
       })
       throw error
     }
-    await db.run('update work.outbox set attempts = attempts + 1, sent_at = :now, last_error = null where id = :id', {
-      id,
-      now: clock.now(),
-    })
+    await db.run(
+      'update work.outbox set attempts = attempts + 1, sent_at = :now, last_error = null where id = :id',
+      {
+        id,
+        now: clock.now(),
+      },
+    )
   })
 }

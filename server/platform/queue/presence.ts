@@ -12,12 +12,19 @@ export interface Presence {
 }
 
 export async function openPresence(url: string): Promise<Presence> {
-  const client = new pg.Client({ connectionString: url, application_name: 'halfsilver presence', keepAlive: true })
+  const client = new pg.Client({
+    connectionString: url,
+    application_name: 'halfsilver presence',
+    keepAlive: true,
+  })
   await client.connect()
   client.on('error', () => undefined)
 
   async function isAlone(queue: QueueName): Promise<boolean> {
-    const { rows } = await client.query<{ alone: boolean }>('select pg_try_advisory_lock(hashtext($1)) as alone', [lockName(queue)])
+    const { rows } = await client.query<{ alone: boolean }>(
+      'select pg_try_advisory_lock(hashtext($1)) as alone',
+      [lockName(queue)],
+    )
     return rows[0]?.alone ?? false
   }
 

@@ -38,7 +38,13 @@ const EXPIRE_HOURS = 2
  * starts the job at once; polling finds what a lost notification or a start time in the future left.
  */
 export async function openQueue(url: string, db: Database, events: Events, log: Logger): Promise<Queue> {
-  const boss = new PgBoss({ connectionString: url, schema: queueSchema, migrate: false, schedule: false, max: 6 })
+  const boss = new PgBoss({
+    connectionString: url,
+    schema: queueSchema,
+    migrate: false,
+    schedule: false,
+    max: 6,
+  })
   boss.on('error', (error) => log.error({ err: error }, 'queue'))
   await boss.start()
   const presence = await openPresence(url)
@@ -48,7 +54,12 @@ export async function openQueue(url: string, db: Database, events: Events, log: 
   function joined(transaction: Transaction): PgBoss.Db {
     return {
       executeSql: async (text, values) => ({
-        rows: await db.sequelize.query(text, { type: QueryTypes.SELECT, bind: values.map((value: unknown) => value ?? null), transaction, raw: true }),
+        rows: await db.sequelize.query(text, {
+          type: QueryTypes.SELECT,
+          bind: values.map((value: unknown) => value ?? null),
+          transaction,
+          raw: true,
+        }),
       }),
     }
   }
@@ -70,9 +81,13 @@ export async function openQueue(url: string, db: Database, events: Events, log: 
   async function work(job: Job, { pollingS = POLLING_S }: { pollingS?: number } = {}) {
     await presence.begin(job.queue)
     for (let slot = 0; slot < job.concurrency; slot++) {
-      const worker = await boss.work(job.queue, { batchSize: 1, pollingIntervalSeconds: pollingS }, async (jobs) => {
-        for (const { id, data } of jobs) await runLogged(job, data, id)
-      })
+      const worker = await boss.work(
+        job.queue,
+        { batchSize: 1, pollingIntervalSeconds: pollingS },
+        async (jobs) => {
+          for (const { id, data } of jobs) await runLogged(job, data, id)
+        },
+      )
       silence.push(events.listen(`queue:${job.queue}`, () => boss.notifyWorker(worker)))
     }
   }

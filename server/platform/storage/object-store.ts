@@ -1,4 +1,6 @@
 import { createHash } from 'node:crypto'
+import http from 'node:http'
+import https from 'node:https'
 import { Readable } from 'node:stream'
 import { buffer } from 'node:stream/consumers'
 import { Client, RETENTION_MODES } from 'minio'
@@ -46,7 +48,13 @@ export interface ObjectStore {
   lock(key: string, versionId: string | null, until: Date): Promise<void>
 }
 
-export function openObjectStore({ endpoint, accessKey, secretKey, region, bucket }: StorageSettings): ObjectStore {
+export function openObjectStore({
+  endpoint,
+  accessKey,
+  secretKey,
+  region,
+  bucket,
+}: StorageSettings): ObjectStore {
   const { hostname, port, protocol } = new URL(endpoint)
   const client = new Client({
     endPoint: hostname,
@@ -56,6 +64,9 @@ export function openObjectStore({ endpoint, accessKey, secretKey, region, bucket
     secretKey,
     region,
     partSize: PART_SIZE,
+    // A connection for each call: one kept open may be closed by the store at the moment it is used again, and the client
+    // does not repeat a call whose connection breaks.
+    transportAgent: new (protocol === 'https:' ? https : http).Agent({ keepAlive: false }),
   })
   const version = (versionId?: string | null) => (versionId ? { versionId } : {})
 
@@ -67,7 +78,8 @@ export function openObjectStore({ endpoint, accessKey, secretKey, region, bucket
 
   return {
     async ensureBucket() {
-      if (!(await client.bucketExists(bucket))) await client.makeBucket(bucket, region, { ObjectLocking: true })
+      if (!(await client.bucketExists(bucket)))
+        await client.makeBucket(bucket, region, { ObjectLocking: true })
     },
     async check() {
       if (!(await client.bucketExists(bucket))) throw new Error(`the bucket ${bucket} is not in the store`)
@@ -77,7 +89,12 @@ export function openObjectStore({ endpoint, accessKey, secretKey, region, bucket
       const body = Buffer.from(bytes.buffer, bytes.byteOffset, bytes.byteLength)
       const { versionId } = await client.putObject(bucket, key, body, body.length)
       const digest = (name: string) => createHash(name).update(body).digest('hex')
-      return { versionId: versionId ?? null, size: body.length, sha256: digest('sha256'), sha512: digest('sha512') }
+      return {
+        versionId: versionId ?? null,
+        size: body.length,
+        sha256: digest('sha256'),
+        sha512: digest('sha512'),
+      }
     },
     get,
     getBytes: async (key, versionId, range) => buffer(await get(key, versionId, range)),
@@ -92,9 +109,17 @@ export function openObjectStore({ endpoint, accessKey, secretKey, region, bucket
     },
     remove: (key, versionId) => client.removeObject(bucket, key, version(versionId)),
     async lock(key, versionId, until) {
-      const retention = { mode: RETENTION_MODES.COMPLIANCE, retainUntilDate: until.toISOString(), ...version(versionId) }
+      const retention = {
+        mode: RETENTION_MODES.COMPLIANCE,
+        retainUntilDate: until.toISOString(),
+        ...version(versionId),
+      }
       // The declared type of this argument admits no value at all (minio 8.0.7).
-      await client.putObjectRetention(bucket, key, retention as unknown as Parameters<Client['putObjectRetention']>[2])
+      await client.putObjectRetention(
+        bucket,
+        key,
+        retention as unknown as Parameters<Client['putObjectRetention']>[2],
+      )
     },
   }
 }

@@ -10,7 +10,13 @@ export const PART_SIZE = 16 * 2 ** 20
  * unheard error ends the process) nor settles after one, so the error is raced against the upload and the parts that
  * arrived are removed.
  */
-export async function putHashed(client: Client, bucket: string, key: string, stream: Readable, signal?: AbortSignal) {
+export async function putHashed(
+  client: Client,
+  bucket: string,
+  key: string,
+  stream: Readable,
+  signal?: AbortSignal,
+) {
   const sha256 = createHash('sha256')
   const sha512 = createHash('sha512')
   let size = 0

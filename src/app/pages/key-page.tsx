@@ -1,7 +1,13 @@
 import { useSuspenseQuery } from '@tanstack/react-query'
 import { useState } from 'react'
 import { sessionQuery } from '../../features/sign-in/queries.ts'
-import { EnrolForm, KeyStanding, signingKeyQuery, WaitingSuccessor, WhatAPageCannotPrevent } from '../../features/signatures/index.ts'
+import {
+  EnrolForm,
+  KeyStanding,
+  signingKeyQuery,
+  WaitingSuccessor,
+  WhatAPageCannotPrevent,
+} from '../../features/signatures/index.ts'
 import { Button } from '../../ui/button.tsx'
 import { Ground, PageHead } from '../../ui/ground.tsx'
 import { Columns, Section, Sheet } from '../../ui/sheet.tsx'
@@ -49,8 +55,8 @@ export function Component() {
           ) : (
             <Section title="A new key">
               <p className="mb-2.5 max-w-[64ch]">
-                Passphrase forgotten, or become known? Enrol a new key and have it endorsed. The old one signs until
-                then, and stays valid for what it has signed.
+                Passphrase forgotten, or become known? Enrol a new key and have it endorsed. The old one signs
+                until then, and stays valid for what it has signed.
               </p>
               <Button onClick={() => setAgain(true)}>Enrol a new key</Button>
             </Section>

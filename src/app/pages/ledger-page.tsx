@@ -1,7 +1,13 @@
 import { useSuspenseQuery } from '@tanstack/react-query'
 import { useSearchParams } from 'react-router-dom'
 import { ExportForm, ExportList } from '../../features/exports/index.ts'
-import { AnchorsSection, HeadSection, LedgerEvents, VerificationResult, type SubjectFilter } from '../../features/ledger/index.ts'
+import {
+  AnchorsSection,
+  HeadSection,
+  LedgerEvents,
+  VerificationResult,
+  type SubjectFilter,
+} from '../../features/ledger/index.ts'
 import { sessionQuery } from '../../features/sign-in/queries.ts'
 import { Ground, PageHead } from '../../ui/ground.tsx'
 import { Columns, Section, Sheet } from '../../ui/sheet.tsx'
@@ -15,10 +21,14 @@ export function Component() {
   const [search, setSearch] = useSearchParams()
   const id = search.get('subject')
   const subject: SubjectFilter | null = id === null ? null : { id, name: search.get('name') ?? 'one subject' }
-  const chooseSubject = (chosen: SubjectFilter | null) => setSearch(chosen ? { subject: chosen.id, name: chosen.name } : {}, { replace: true })
+  const chooseSubject = (chosen: SubjectFilter | null) =>
+    setSearch(chosen ? { subject: chosen.id, name: chosen.name } : {}, { replace: true })
   return (
     <Ground>
-      <PageHead title="Ledger" about="Every signature and seal in the laboratory, each event bound to the one before it." />
+      <PageHead
+        title="Ledger"
+        about="Every signature and seal in the laboratory, each event bound to the one before it."
+      />
       <Sheet>
         <Columns
           label="Exports, head and anchors"
@@ -37,8 +47,8 @@ export function Component() {
           <LedgerEvents subject={subject} onSubject={chooseSubject} />
           {!seesAll && (
             <p className="hs-quiet mt-4">
-              You see the events of notebooks that you may read, and your own. Auditors and managers see all; the check
-              above is over all in any case.
+              You see the events of notebooks that you may read, and your own. Auditors and managers see all;
+              the check above is over all in any case.
             </p>
           )}
         </Columns>

@@ -41,12 +41,13 @@ function KeysMargin({ waiting, mayEndorse }: { waiting: Person[]; mayEndorse: bo
     <>
       <Section title="Endorsing a key">
         <p>
-          A key signs only after a manager or a supervisor, never its owner, has checked who the person is, compared the
-          digits of the key and signed that. Both signatures are in every bundle.
+          A key signs only after a manager or a supervisor, never its owner, has checked who the person is,
+          compared the digits of the key and signed that. Both signatures are in every bundle.
         </p>
         {waiting.length > 0 && (
           <p className="mt-2">
-            {waiting.map((person) => person.name).join(', ')} {waiting.length === 1 ? 'waits' : 'wait'} for it.
+            {waiting.map((person) => person.name).join(', ')} {waiting.length === 1 ? 'waits' : 'wait'} for
+            it.
             {!mayEndorse && ' You cannot endorse; ask a manager or a supervisor.'}
           </p>
         )}

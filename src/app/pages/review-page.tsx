@@ -63,7 +63,9 @@ function Review({ entryId }: { entryId: string }) {
             onSigned={() => setOutcome('countersigned')}
             onReturned={() => setOutcome('returned')}
           />
-          {outcome && <Onward outcome={outcome} next={queue.find((each) => each.id !== entryId)?.id ?? null} />}
+          {outcome && (
+            <Onward outcome={outcome} next={queue.find((each) => each.id !== entryId)?.id ?? null} />
+          )}
         </div>
       </div>
     </Ground>

@@ -55,7 +55,10 @@ export function Component() {
             <WitnessQueue entries={queue} now={now} selected={beside?.id ?? null} onSelect={setChosen} />
           )}
           {which === 'mine' && queue.length === 0 && (
-            <p>A sheet comes here when all its authors have signed it, and stays until it is countersigned or returned.</p>
+            <p>
+              A sheet comes here when all its authors have signed it, and stays until it is countersigned or
+              returned.
+            </p>
           )}
           {which === 'returned' && <Others label="Sheets with their authors" entries={returned} now={now} />}
           {which === 'sealed' && <Others label="Sealed sheets" entries={sealed} now={now} />}

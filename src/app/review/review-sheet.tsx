@@ -1,7 +1,6 @@
-import type { CSSProperties } from 'react'
+import type { ComponentProps, CSSProperties } from 'react'
 import type { Entry } from '../../../server/contract/entries.ts'
 import type { Notebook } from '../../../server/contract/notebooks.ts'
-import type { NormalDocument } from '../../../server/document/index.ts'
 import { experimentNames } from '../../features/entries/experiments.ts'
 import { SealFoot } from '../../features/entries/seal-foot.tsx'
 import { BeamStrip } from '../../features/runs/beam-strip.tsx'
@@ -20,7 +19,7 @@ export function ReviewSheet({
 }: {
   entry: Entry
   notebook: Notebook
-  content: NormalDocument
+  content: ComponentProps<typeof SheetText>['content']
   justSealed: boolean
 }) {
   return (

@@ -47,6 +47,8 @@ function Loaded(props: { calculation: Calculation } & Omit<CalculationBlockProps
   const state = stateOf(calculation, sealed)
   const refused = recompute.error instanceof ApiProblem ? recompute.error : null
   const fieldErrors = [...(refused?.errors ?? []), ...(status === 'failed' ? errorsOf(calculation) : [])]
+  // What was asked for stays in the fields while it is on its way, and while it is refused.
+  const asked = recompute.isPending || refused?.errors.length ? recompute.variables : undefined
   const away = refused !== null && refused.errors.length === 0
   return (
     <Block
@@ -63,7 +65,7 @@ function Loaded(props: { calculation: Calculation } & Omit<CalculationBlockProps
       {kind && (
         <ParameterRow
           schema={kind.parameters as JsonSchema}
-          parameters={recompute.isPending ? recompute.variables : calculation.parameters}
+          parameters={asked ?? calculation.parameters}
           disabled={!editable || goingOn || recompute.isPending}
           errors={fieldErrors}
           onChange={(parameters) => recompute.mutate(parameters)}

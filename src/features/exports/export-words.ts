@@ -8,7 +8,9 @@ export function bundleTitle(bundle: Pick<BundleExport, 'entries' | 'notebookId' 
   const notebook = first.split('/')[0] ?? first
   if (bundle.notebookId !== null) return `${notebook}, whole`
   if (more.length === 0) return first
-  return more.every((number) => number.startsWith(notebook)) ? `${notebook}, ${numbers.length} entries` : `${numbers.length} entries`
+  return more.every((number) => number.startsWith(notebook))
+    ? `${notebook}, ${numbers.length} entries`
+    : `${numbers.length} entries`
 }
 
 /** How far an export is, and whether one may leave. */

@@ -14,7 +14,7 @@ export function isSettled(bundle: Pick<BundleExport, 'status'>): boolean {
 export const exportsQuery = queryOptions({
   queryKey: ['exports'] as const,
   queryFn: ({ signal }) => call('listExports', { signal }),
-  refetchInterval: (query) => (query.state.data?.items.every(isSettled) ?? true ? false : pollMs),
+  refetchInterval: (query) => ((query.state.data?.items.every(isSettled) ?? true) ? false : pollMs),
 })
 
 /** One export, until it is settled. */
@@ -30,13 +30,16 @@ export function exportQuery(id: string) {
 export const exportableNotebooksQuery = queryOptions({
   queryKey: [...queryKeys.notebooks, 'exportable'] as const,
   queryFn: async ({ signal }) =>
-    (await call('listNotebooks', { query: { limit: 200 }, signal })).items.filter((each) => each.allowed.includes('export')),
+    (await call('listNotebooks', { query: { limit: 200 }, signal })).items.filter((each) =>
+      each.allowed.includes('export'),
+    ),
 })
 
 /** Entries of a notebook, to choose the sealed ones. */
 export function entriesToExportQuery(notebookId: string) {
   return queryOptions({
     queryKey: [...queryKeys.entriesOf(notebookId), 'to-export'] as const,
-    queryFn: async ({ signal }) => (await call('listEntries', { params: { id: notebookId }, query: { limit: 200 }, signal })).items,
+    queryFn: async ({ signal }) =>
+      (await call('listEntries', { params: { id: notebookId }, query: { limit: 200 }, signal })).items,
   })
 }

@@ -20,7 +20,19 @@ export interface EventCheck {
 
 /** The members of an event that are hashed (shapes 3), without what the interface adds. */
 export function eventOf(view: LedgerEventView): LedgerEvent {
-  const { schema, epoch, sequence, time, actor, action, subject, subjectSequence, subjectPrevious, payload, previous } = view
+  const {
+    schema,
+    epoch,
+    sequence,
+    time,
+    actor,
+    action,
+    subject,
+    subjectSequence,
+    subjectPrevious,
+    payload,
+    previous,
+  } = view
   return {
     schema,
     epoch,
@@ -40,7 +52,11 @@ export function eventOf(view: LedgerEventView): LedgerEvent {
  * Checks an event here, not on the server: its digest and leaf hash are recomputed from what is shown, and the proof must
  * lead to the head's root hash.
  */
-export function checkEventHere(view: LedgerEventView, proof: InclusionProof, head: { treeSize: number; rootHash: string }): EventCheck {
+export function checkEventHere(
+  view: LedgerEventView,
+  proof: InclusionProof,
+  head: { treeSize: number; rootHash: string },
+): EventCheck {
   const event = eventOf(view)
   const built = describeEvent(event, canonicalBytes(event))
   const sameTree = proof.treeSize === head.treeSize && proof.rootHash === head.rootHash

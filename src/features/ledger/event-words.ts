@@ -47,7 +47,8 @@ const words: Record<string, string> = {
 
 /** The event in words; a signature is told by its meaning. */
 export function eventWords(event: Pick<LedgerEventView, 'action' | 'payload'>): string {
-  if (event.action === 'entry.signed') return event.payload.meaning === 'authorship' ? 'Signed' : 'Countersigned'
+  if (event.action === 'entry.signed')
+    return event.payload.meaning === 'authorship' ? 'Signed' : 'Countersigned'
   return words[event.action] ?? event.action
 }
 
@@ -70,7 +71,9 @@ const subjectWords: Record<string, string> = {
   apparatus: 'a piece of apparatus',
 }
 
-export function subjectInWords(event: Pick<LedgerEventView, 'subject'> & { subjectName: string | null }): string {
+export function subjectInWords(
+  event: Pick<LedgerEventView, 'subject'> & { subjectName: string | null },
+): string {
   return event.subjectName ?? subjectWords[event.subject.kind] ?? event.subject.kind
 }
 

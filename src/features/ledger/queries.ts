@@ -30,7 +30,8 @@ export const anchorsQuery = queryOptions({
 export function inclusionProofQuery(sequence: number, treeSize: number) {
   return queryOptions({
     queryKey: ['ledger', 'proof', sequence, treeSize],
-    queryFn: ({ signal }) => call('getInclusionProof', { params: { seq: sequence }, query: { treeSize }, signal }),
+    queryFn: ({ signal }) =>
+      call('getInclusionProof', { params: { seq: sequence }, query: { treeSize }, signal }),
     staleTime: Number.POSITIVE_INFINITY,
   })
 }

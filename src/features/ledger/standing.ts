@@ -13,7 +13,11 @@ export interface Standing {
  * What is known of an event: whether the last verification reached it, and whether a signed head covers it. Without a
  * verification only the head is told.
  */
-export function standingOf(sequence: number, verification: Verification | undefined, treeSize: number | null): Standing {
+export function standingOf(
+  sequence: number,
+  verification: Verification | undefined,
+  treeSize: number | null,
+): Standing {
   const broken = verification?.firstBroken
   if (broken && sequence === broken.sequence) return { state: 'fault', words: 'breaks here' }
   if (broken && sequence > broken.sequence) return { state: 'note', words: 'after the break' }

@@ -51,11 +51,17 @@ function parseEnrolment(bytes: Uint8Array): Enrolment {
   return value
 }
 
-function checkEnrolment(enrolment: Enrolment, owner: Owner, laboratory: { id: string; name: string }, publicKey: string): void {
+function checkEnrolment(
+  enrolment: Enrolment,
+  owner: Owner,
+  laboratory: { id: string; name: string },
+  publicKey: string,
+): void {
   if (enrolment.laboratory !== laboratory.id) refuse('belongs to another laboratory')
   if (enrolment.subjectId !== owner.id || enrolment.name !== owner.name) refuse('names another person')
   if (enrolment.publicKey !== publicKey) refuse('names another key than the one made here')
-  if (enrolment.statement !== enrolmentStatement({ name: owner.name, laboratory: laboratory.name })) refuse('has other words')
+  if (enrolment.statement !== enrolmentStatement({ name: owner.name, laboratory: laboratory.name }))
+    refuse('has other words')
 }
 
 export interface CheckedEnrolment {
@@ -66,10 +72,15 @@ export interface CheckedEnrolment {
 }
 
 /** A person's enrolment as sent, checked here: its key signed it, and its digest is the one named. */
-export function checkedEnrolment(sent: { document: string; signature: string; enrolmentSha256: string }): CheckedEnrolment {
+export function checkedEnrolment(sent: {
+  document: string
+  signature: string
+  enrolmentSha256: string
+}): CheckedEnrolment {
   const bytes = fromBase64(sent.document)
   const enrolment = parseEnrolment(bytes)
-  if (sha256Hex(bytes) !== sent.enrolmentSha256) throw new Error('The enrolment is not the one that its digest names.')
+  if (sha256Hex(bytes) !== sent.enrolmentSha256)
+    throw new Error('The enrolment is not the one that its digest names.')
   if (!verifySignature(fromBase64(enrolment.publicKey), bytes, fromBase64(sent.signature)))
     throw new Error('The enrolment is not signed by the key that it names.')
   return { enrolment, enrolmentSha256: sent.enrolmentSha256, digits: keyDigits(sent.enrolmentSha256) }
@@ -99,7 +110,10 @@ export function endorseKey(
       })
       const bytes = fromBase64(prepared.document)
       checkEndorsement(bytes, person, identity, endorser, laboratory)
-      return call('putEndorsement', { params: { id, endorsementId: prepared.id }, body: { signature: sign(bytes) } })
+      return call('putEndorsement', {
+        params: { id, endorsementId: prepared.id },
+        body: { signature: sign(bytes) },
+      })
     },
     onProgress,
   )
@@ -117,10 +131,12 @@ function checkEndorsement(
   const endorsement: Endorsement = value
   const { enrolment, enrolmentSha256 } = person
   if (endorsement.laboratory !== laboratory.id) refuse('belongs to another laboratory')
-  if (endorsement.subjectId !== enrolment.subjectId || endorsement.enrolmentSha256 !== enrolmentSha256) refuse('is about another key')
+  if (endorsement.subjectId !== enrolment.subjectId || endorsement.enrolmentSha256 !== enrolmentSha256)
+    refuse('is about another key')
   if (endorsement.publicKey !== enrolment.publicKey) refuse('is about another key')
   if (endorsement.endorser.subjectId !== endorser.id) refuse('names another endorser')
   if (endorsement.identity !== identity) refuse('describes another check of identity')
   const parts = { endorser: endorser.name, person: enrolment.name, laboratory: laboratory.name }
-  if (endorsement.statement !== endorsementStatement({ ...parts, keyDigits: enrolmentSha256.slice(0, 16) })) refuse('has other words')
+  if (endorsement.statement !== endorsementStatement({ ...parts, keyDigits: enrolmentSha256.slice(0, 16) }))
+    refuse('has other words')
 }

@@ -10,7 +10,9 @@ export const meaningWords: Record<Meaning, string> = {
 /** The time stamp of a signature in words. */
 export function stampWords(stamp: EntrySignature['timeStamp']): string {
   if (stamp.status === 'pending') return 'not yet time-stamped'
-  return stamp.independent ? `time stamp by ${stamp.authority}` : 'time stamp by the laboratory’s own authority'
+  return stamp.independent
+    ? `time stamp by ${stamp.authority}`
+    : 'time stamp by the laboratory’s own authority'
 }
 
 /** The same as a sentence, for the result of signing. */

@@ -26,7 +26,8 @@ export function useWithdrawEntry(entryId: string) {
 export function useCreateAddendum(entryId: string) {
   const client = useQueryClient()
   return useMutation({
-    mutationFn: (title: string) => call('createAddendum', { params: { id: entryId }, body: title ? { title } : {} }),
+    mutationFn: (title: string) =>
+      call('createAddendum', { params: { id: entryId }, body: title ? { title } : {} }),
     onSuccess: () => lifeOfEntryChanged(client),
   })
 }
@@ -55,9 +56,17 @@ export function useEnrolKey(owner: Owner, laboratory: Laboratory) {
 export function useEndorseKey(endorser: Owner, laboratory: Laboratory) {
   const client = useQueryClient()
   return useMutation({
-    mutationFn: (given: { passphrase: string; person: CheckedEnrolment; identity: string; onProgress: Progress }) =>
-      endorseKey(given.passphrase, given.person, given.identity, endorser, laboratory, given.onProgress),
-    onSuccess: () => Promise.all([client.invalidateQueries({ queryKey: queryKeys.people }), client.invalidateQueries({ queryKey: ['ledger', 'events'] })]),
+    mutationFn: (given: {
+      passphrase: string
+      person: CheckedEnrolment
+      identity: string
+      onProgress: Progress
+    }) => endorseKey(given.passphrase, given.person, given.identity, endorser, laboratory, given.onProgress),
+    onSuccess: () =>
+      Promise.all([
+        client.invalidateQueries({ queryKey: queryKeys.people }),
+        client.invalidateQueries({ queryKey: ['ledger', 'events'] }),
+      ]),
   })
 }
 
@@ -65,7 +74,8 @@ export function useEndorseKey(endorser: Owner, laboratory: Laboratory) {
 export function useLateRemark(entryId: string) {
   const client = useQueryClient()
   return useMutation({
-    mutationFn: (lateRemark: string) => call('changeEntry', { params: { id: entryId }, body: { lateRemark } }),
+    mutationFn: (lateRemark: string) =>
+      call('changeEntry', { params: { id: entryId }, body: { lateRemark } }),
     onSuccess: (entry) => client.setQueryData(queryKeys.entry(entryId), entry),
   })
 }

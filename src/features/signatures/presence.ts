@@ -6,7 +6,9 @@ export function presenceTrouble(run: Run, from: string | null, to: string | null
   if (from === null || to === null) return 'Write the times as 2026-11-12 11:30.'
   if (from > to) return 'The end lies before the beginning.'
   const durationPs = run.durationPs === null ? null : String(run.durationPs)
-  return overlaps({ from, to }, { startedAt: run.startedAt, durationPs }) ? null : `The times do not overlap ${run.number}.`
+  return overlaps({ from, to }, { startedAt: run.startedAt, durationPs })
+    ? null
+    : `The times do not overlap ${run.number}.`
 }
 
 /** When a run began and ended, UTC, widened to whole seconds, in which presence is written. */

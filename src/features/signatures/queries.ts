@@ -21,7 +21,8 @@ export function enrolmentQuery(personId: string) {
 /** Sheets that wait for me as witness. */
 export const witnessQueueQuery = queryOptions({
   queryKey: [...queryKeys.myEntries('waiting'), 'queue'] as const,
-  queryFn: async ({ signal }) => (await call('listMyEntries', { query: { waiting: true, limit: 200 }, signal })).items,
+  queryFn: async ({ signal }) =>
+    (await call('listMyEntries', { query: { waiting: true, limit: 200 }, signal })).items,
 })
 
 /** The latest sheets that I may read, for what stands with authors and what is sealed. */

@@ -14,7 +14,12 @@ export interface Check {
  * store, whether the calculations are up to date, and every quality note. `calculations` are those read in full so far.
  */
 export function checksOf(entry: Entry, calculations: readonly Calculation[]): Check[] {
-  return [...signatureChecks(entry), ...fileChecks(entry), ...calculationChecks(entry), ...noteChecks(calculations)]
+  return [
+    ...signatureChecks(entry),
+    ...fileChecks(entry),
+    ...calculationChecks(entry),
+    ...noteChecks(calculations),
+  ]
 }
 
 function signatureChecks(entry: Entry): Check[] {
@@ -28,7 +33,8 @@ function signatureChecks(entry: Entry): Check[] {
       more: signed.map((each) => each.signer.name).join(', '),
     },
   ]
-  if (stamped.length < signed.length) check.push({ state: 'note', what: 'A time stamp is still to come', more: 'It joins by itself.' })
+  if (stamped.length < signed.length)
+    check.push({ state: 'note', what: 'A time stamp is still to come', more: 'It joins by itself.' })
   return check
 }
 
@@ -36,7 +42,14 @@ function fileChecks(entry: Entry): Check[] {
   const files = filesToSign(entry)
   const bad = files.filter((file) => file.state !== 'verified')
   if (files.length === 0) return [{ state: 'note', what: 'No file is attached' }]
-  if (bad.length === 0) return [{ state: 'ok', what: files.length === 1 ? 'The file matches its digest' : `${files.length} files match their digests` }]
+  if (bad.length === 0)
+    return [
+      {
+        state: 'ok',
+        what:
+          files.length === 1 ? 'The file matches its digest' : `${files.length} files match their digests`,
+      },
+    ]
   return bad.map((file) => ({
     state: file.state === 'stored' || file.state === 'receiving' ? 'note' : 'fault',
     what: `${file.name}: ${fileWords[file.state]}`,
@@ -58,12 +71,19 @@ function calculationChecks({ calculations }: Entry): Check[] {
     const labels = calculations.map((each) => each.label).join(', ')
     return [{ state: 'ok', what: `${labels} up to date with their inputs` }]
   }
-  return wrong.map((each) => ({ state: 'fault', what: `${each.label} is ${each.stale ? 'out of date' : each.status}` }))
+  return wrong.map((each) => ({
+    state: 'fault',
+    what: `${each.label} is ${each.stale ? 'out of date' : each.status}`,
+  }))
 }
 
 function noteChecks(calculations: readonly Calculation[]): Check[] {
   return calculations.flatMap((each) =>
-    each.notes.map((note): Check => ({ state: 'note', what: `${each.label}: ${note.detail || note.code}`, more: note.code })),
+    each.notes.map((note): Check => ({
+      state: 'note',
+      what: `${each.label}: ${note.detail || note.code}`,
+      more: note.code,
+    })),
   )
 }
 
@@ -94,7 +114,9 @@ export type QuestionCode = (typeof questions)[number]['code']
 /** Why countersigning is not yet offered, or null. */
 export function stillToDo(unopened: readonly Openable[], unanswered: number): string | null {
   const parts: string[] = []
-  if (unopened.length > 0) parts.push(`open ${unopened.map((each) => (each.kind === 'text' ? 'the text' : each.name)).join(', ')}`)
-  if (unanswered > 0) parts.push(unanswered === 1 ? 'answer the last question' : `answer the ${unanswered} questions`)
+  if (unopened.length > 0)
+    parts.push(`open ${unopened.map((each) => (each.kind === 'text' ? 'the text' : each.name)).join(', ')}`)
+  if (unanswered > 0)
+    parts.push(unanswered === 1 ? 'answer the last question' : `answer the ${unanswered} questions`)
   return parts.length === 0 ? null : `Still to do: ${parts.join('; ')}.`
 }

@@ -13,7 +13,8 @@ export function signingTrouble(error: unknown): SigningTrouble {
   if (!(error instanceof ApiProblem)) return { at: 'dialog', words: sentenceOf(error) }
   const { code, detail, extra } = error
   if (code === 'wrong-passphrase') return { at: 'passphrase', words: attemptsWords(extra.attemptsLeft) }
-  if (code === 'signing-locked') return { at: 'passphrase', words: lockedWords(typeof extra.until === 'string' ? extra.until : null) }
+  if (code === 'signing-locked')
+    return { at: 'passphrase', words: lockedWords(typeof extra.until === 'string' ? extra.until : null) }
   return { at: 'dialog', words: `${detail} Nothing was signed.`, code }
 }
 

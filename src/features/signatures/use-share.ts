@@ -8,6 +8,9 @@ const steps = 40
  */
 export function useShare() {
   const [share, setShare] = useState<number | null>(null)
-  const tell = useCallback((now: number | null) => setShare(now === null ? null : Math.floor(now * steps) / steps), [])
+  const tell = useCallback(
+    (now: number | null) => setShare(now === null ? null : Math.floor(now * steps) / steps),
+    [],
+  )
   return [share, tell] as const
 }

@@ -29,14 +29,30 @@ export type Preparation =
   | { state: 'ready'; entry: Entry; prepared: PreparedRecord; record: SignedRecord; at: number }
 
 /** Reads the entry and the key anew, fetches the bytes to sign and checks that they say what the screen shows. */
-async function prepare({ entryId, meaning, presence, shownContent, save, me, laboratoryId }: SigningSubject): Promise<Preparation> {
+async function prepare({
+  entryId,
+  meaning,
+  presence,
+  shownContent,
+  save,
+  me,
+  laboratoryId,
+}: SigningSubject): Promise<Preparation> {
   await save?.()
   const entry = await call('getEntry', { params: { id: entryId } })
   if (entry.blocks.length > 0) return { state: 'blocked', entry }
   const key = await call('getSigningKey', {})
   if (key.status !== 'active' && key.status !== 'locked') return { state: 'no-key', key }
   const prepared = await fetchRecord(entryId, meaning, presence)
-  const expected = { entry, content: shownContent(), laboratory: { id: laboratoryId }, meaning, signer: me, key, presence }
+  const expected = {
+    entry,
+    content: shownContent(),
+    laboratory: { id: laboratoryId },
+    meaning,
+    signer: me,
+    key,
+    presence,
+  }
   return { state: 'ready', entry, prepared, record: checkRecord(prepared.bytes, expected), at: Date.now() }
 }
 
@@ -44,7 +60,11 @@ async function prepare({ entryId, meaning, presence, shownContent, save, me, lab
  * Signing in two steps: the bytes are prepared, checked and shown; then the passphrase signs exactly these. `open` begins
  * the first step, each opening anew.
  */
-export function useSigning(subject: SigningSubject, open: boolean, onSigned: (signature: EntrySignature) => void) {
+export function useSigning(
+  subject: SigningSubject,
+  open: boolean,
+  onSigned: (signature: EntrySignature) => void,
+) {
   const client = useQueryClient()
   const { entryId, meaning, presence } = subject
   const preparation = useQuery({
@@ -61,7 +81,13 @@ export function useSigning(subject: SigningSubject, open: boolean, onSigned: (si
     refetchOnWindowFocus: false,
   })
   const signing = useMutation({
-    mutationFn: async ({ passphrase, onProgress }: { passphrase: string; onProgress: (share: number) => void }) => {
+    mutationFn: async ({
+      passphrase,
+      onProgress,
+    }: {
+      passphrase: string
+      onProgress: (share: number) => void
+    }) => {
       const ready = preparation.data
       if (ready?.state !== 'ready') throw new Error('The bytes to sign are not here yet.')
       const current = Date.now() - ready.at < freshForMs ? ready : await renewed(subject, ready.record)

@@ -23,5 +23,7 @@ export function deskSentence(submitted: readonly string[], now: Date): string {
   const first = `${countWord(waits.length)} ${waits.length === 1 ? 'sheet waits' : 'sheets wait'} for you`
   if (late === 0) return `${first}, none past the seven-day limit.`
   const past = `${countWord(late).toLowerCase()} past the seven-day limit`
-  return overdue === 0 ? `${first}, ${past}.` : `${first}, ${past}, ${countWord(overdue).toLowerCase()} overdue.`
+  return overdue === 0
+    ? `${first}, ${past}.`
+    : `${first}, ${past}, ${countWord(overdue).toLowerCase()} overdue.`
 }

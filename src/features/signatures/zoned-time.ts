@@ -16,7 +16,14 @@ function offsetMinutes(instant: number, zone: string): number {
     second: '2-digit',
   }).formatToParts(instant)
   const part = (type: string) => Number(parts.find((each) => each.type === type)?.value)
-  const wall = Date.UTC(part('year'), part('month') - 1, part('day'), part('hour'), part('minute'), part('second'))
+  const wall = Date.UTC(
+    part('year'),
+    part('month') - 1,
+    part('day'),
+    part('hour'),
+    part('minute'),
+    part('second'),
+  )
   return Math.round((wall - Math.floor(instant / 1000) * 1000) / 60_000)
 }
 
@@ -26,7 +33,12 @@ export function utcOfZoned(text: string, zone: string): string | null {
   if (!found) return null
   const [, year, month, day, hour, minute, second] = found.map(Number)
   const wall = Date.UTC(year ?? 0, (month ?? 1) - 1, day, hour, minute, Number.isNaN(second) ? 0 : second)
-  if (!new Date(wall).toISOString().startsWith(text.trim().slice(0, 10)) || (hour ?? 0) > 23 || (minute ?? 0) > 59) return null
+  if (
+    !new Date(wall).toISOString().startsWith(text.trim().slice(0, 10)) ||
+    (hour ?? 0) > 23 ||
+    (minute ?? 0) > 59
+  )
+    return null
   // The offset is looked up twice, since the first guess may stand on the other side of a change of clocks.
   const guess = wall - offsetMinutes(wall, zone) * 60_000
   return new Date(wall - offsetMinutes(guess, zone) * 60_000).toISOString()
@@ -35,5 +47,8 @@ export function utcOfZoned(text: string, zone: string): string | null {
 /** A UTC time as text in a zone: "2026-11-12 11:30:05". */
 export function zonedOfUtc(iso: string, zone: string): string {
   const instant = Date.parse(iso)
-  return new Date(instant + offsetMinutes(instant, zone) * 60_000).toISOString().slice(0, 19).replace('T', ' ')
+  return new Date(instant + offsetMinutes(instant, zone) * 60_000)
+    .toISOString()
+    .slice(0, 19)
+    .replace('T', ' ')
 }

@@ -13,12 +13,17 @@ export function BundleState({ bundle }: { bundle: BundleExport }) {
   if (bundle.status === 'failed')
     return (
       <Message kind="fault" title={`${bundleTitle(bundle)} was not exported.`} code={bundle.error?.code}>
-        {bundle.error?.detail ?? 'The worker gave no reason.'} Nothing in the notebook was changed; start the export again.
+        {bundle.error?.detail ?? 'The worker gave no reason.'} Nothing in the notebook was changed; start the
+        export again.
       </Message>
     )
   if (bundle.status !== 'done')
     return (
-      <Progress label={`Export of ${bundleTitle(bundle)}`} share={statusShare(bundle.status)} words={statusWords(bundle.status)} />
+      <Progress
+        label={`Export of ${bundleTitle(bundle)}`}
+        share={statusShare(bundle.status)}
+        words={statusWords(bundle.status)}
+      />
     )
   return <FinishedBundle bundle={bundle} />
 }
@@ -42,11 +47,13 @@ function FinishedBundle({ bundle }: { bundle: BundleExport }) {
         </div>
       )}
       <div>
-        <p className="mb-1">Check it on another machine, with anchors that came to you apart from the bundle:</p>
+        <p className="mb-1">
+          Check it on another machine, with anchors that came to you apart from the bundle:
+        </p>
         <pre className="hs-fig bg-well p-2 text-1 whitespace-pre-wrap break-all">{verifyCommand(name)}</pre>
         <p className="hs-hint">
-          Or open check.html inside the bundle: it runs from disk, without a network. VERIFY.md says how to do the same
-          with general tools.
+          Or open check.html inside the bundle: it runs from disk, without a network. VERIFY.md says how to do
+          the same with general tools.
         </p>
       </div>
     </div>
@@ -55,6 +62,7 @@ function FinishedBundle({ bundle }: { bundle: BundleExport }) {
 
 /** Name of the zip as the server gives it, or one made from the numbers. */
 export function bundleFileName(bundle: Pick<BundleExport, 'name' | 'entries' | 'notebookId'>): string {
-  const name = bundle.name ?? bundleTitle(bundle).replaceAll('/', '-').replaceAll(', ', '-').replaceAll(' ', '-')
+  const name =
+    bundle.name ?? bundleTitle(bundle).replaceAll('/', '-').replaceAll(', ', '-').replaceAll(' ', '-')
   return name.endsWith('.zip') ? name : `${name}.zip`
 }

@@ -36,9 +36,14 @@ function NotebookExport({ notebookId }: { notebookId: string }) {
   const [withRaw, setWithRaw] = useState(true)
   const sealed = entries.data?.filter((entry) => entry.state === 'sealed') ?? []
   const open = (entries.data?.length ?? 0) - sealed.length
-  const toggle = (id: string, on: boolean) => setChosen(on ? [...(chosen ?? []), id] : (chosen ?? []).filter((each) => each !== id))
+  const toggle = (id: string, on: boolean) =>
+    setChosen(on ? [...(chosen ?? []), id] : (chosen ?? []).filter((each) => each !== id))
   const nothing =
-    sealed.length === 0 ? 'No entry of this notebook is sealed yet.' : chosen?.length === 0 ? 'Choose at least one entry.' : null
+    sealed.length === 0
+      ? 'No entry of this notebook is sealed yet.'
+      : chosen?.length === 0
+        ? 'Choose at least one entry.'
+        : null
   return (
     <>
       <Select
@@ -67,12 +72,14 @@ function NotebookExport({ notebookId }: { notebookId: string }) {
       <RawChoice withRaw={withRaw} onChange={setWithRaw} />
       {chosen === null && open > 0 && (
         <p className="hs-message">
-          {open === 1 ? 'One entry is not sealed. It is' : `${open} entries are not sealed. They are`} named in the bundle
-          as left out, since only sealed ones can be proved.
+          {open === 1 ? 'One entry is not sealed. It is' : `${open} entries are not sealed. They are`} named
+          in the bundle as left out, since only sealed ones can be proved.
         </p>
       )}
       <ExportAct
-        choice={chosen === null ? { notebookId, withoutRaw: !withRaw } : { entryIds: chosen, withoutRaw: !withRaw }}
+        choice={
+          chosen === null ? { notebookId, withoutRaw: !withRaw } : { entryIds: chosen, withoutRaw: !withRaw }
+        }
         disabledReason={entries.data ? nothing : 'Reading the entries.'}
       />
     </>
@@ -95,7 +102,13 @@ export function RawChoice({ withRaw, onChange }: { withRaw: boolean; onChange: (
 }
 
 /** The button and what became of it, in the same place. */
-export function ExportAct({ choice, disabledReason }: { choice: ExportChoice; disabledReason: string | null }) {
+export function ExportAct({
+  choice,
+  disabledReason,
+}: {
+  choice: ExportChoice
+  disabledReason: string | null
+}) {
   const start = useStartExport()
   const id = start.data?.id
   const bundle = useQuery({ ...exportQuery(id ?? ''), enabled: id !== undefined })

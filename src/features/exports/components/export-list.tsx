@@ -33,10 +33,18 @@ function ExportItem({ bundle }: { bundle: BundleExport }) {
   const title = bundleTitle(bundle)
   return (
     <li>
-      {bundle.sha256 ? <FringeMark sha256={bundle.sha256} size={26} /> : <StateGlyph state={glyphOf(bundle)} wordless />}
+      {bundle.sha256 ? (
+        <FringeMark sha256={bundle.sha256} size={26} />
+      ) : (
+        <StateGlyph state={glyphOf(bundle)} wordless />
+      )}
       <span>
         {bundle.status === 'done' ? (
-          <a className="hs-link" href={urlOf('getBundle', { id: bundle.id })} download={bundleFileName(bundle)}>
+          <a
+            className="hs-link"
+            href={urlOf('getBundle', { id: bundle.id })}
+            download={bundleFileName(bundle)}
+          >
             {title}
           </a>
         ) : (

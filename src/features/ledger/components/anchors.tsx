@@ -17,8 +17,8 @@ export function AnchorsSection() {
   return (
     <Section title="Anchors">
       <p className="mb-2">
-        Keep these apart from any bundle, on paper or in a mail. A bundle remade with other keys agrees with itself; only
-        the anchors tell that the keys are not this laboratory’s.
+        Keep these apart from any bundle, on paper or in a mail. A bundle remade with other keys agrees with
+        itself; only the anchors tell that the keys are not this laboratory’s.
       </p>
       {anchors.error && <Message kind="warn">{sentenceOf(anchors.error)}</Message>}
       {anchors.data && <AnchorsShown anchors={anchors.data} />}
@@ -37,18 +37,30 @@ function AnchorsShown({ anchors }: { anchors: Anchors }) {
             { name: 'Laboratory', value: anchors.laboratory },
             { name: 'Authority', value: groupedDigest(anchors.caSha256) },
             { name: 'First manager', value: groupedDigest(anchors.rootEnrolmentSha256) },
-            ...anchors.ledgerKeysSha256.map((key, at) => ({ name: `Ledger key ${at + 1}`, value: groupedDigest(key) })),
-            ...anchors.tsaRootsSha256.map((root, at) => ({ name: `Time stamps ${at + 1}`, value: groupedDigest(root) })),
+            ...anchors.ledgerKeysSha256.map((key, at) => ({
+              name: `Ledger key ${at + 1}`,
+              value: groupedDigest(key),
+            })),
+            ...anchors.tsaRootsSha256.map((root, at) => ({
+              name: `Time stamps ${at + 1}`,
+              value: groupedDigest(root),
+            })),
           ]}
         />
       </div>
       <div className="hs-actions mt-3 print:hidden">
-        <Button size="small" icon="download" onClick={() => saveAsFile(bytes, 'anchors.json', 'application/json')}>
+        <Button
+          size="small"
+          icon="download"
+          onClick={() => saveAsFile(bytes, 'anchors.json', 'application/json')}
+        >
           Download anchors.json
         </Button>
         <Button
           size="small"
-          onClick={() => void navigator.clipboard.writeText(new TextDecoder().decode(bytes)).then(() => setCopied(true))}
+          onClick={() =>
+            void navigator.clipboard.writeText(new TextDecoder().decode(bytes)).then(() => setCopied(true))
+          }
         >
           {copied ? 'Copied' : 'Copy'}
         </Button>
@@ -70,8 +82,8 @@ export function HeadSection() {
         <>
           <p className="mb-2">
             Signed {dateAndTime(signed.data.head.time)},{' '}
-            {signed.data.timeStamp ? 'with a time stamp' : 'not yet time-stamped'}. A head kept outside shows a history
-            rewritten here.
+            {signed.data.timeStamp ? 'with a time stamp' : 'not yet time-stamped'}. A head kept outside shows
+            a history rewritten here.
           </p>
           <p className="hs-fig hs-digest-full mb-3 text-1">{groupedDigest(signed.data.head.rootHash)}</p>
           <Button

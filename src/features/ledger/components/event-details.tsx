@@ -39,12 +39,17 @@ export function EventDetails({
             value: `${name}, event ${eventNumber(event.subjectSequence)} of its own chain`,
             words: true,
           },
-          ...Object.entries(event.payload).map(([member, value]) => ({ name: member, value: payloadText(value) })),
+          ...Object.entries(event.payload).map(([member, value]) => ({
+            name: member,
+            value: payloadText(value),
+          })),
         ]}
       />
       <PlaceCheck event={event} head={head} />
       <p>
-        <TextButton onClick={() => onSubject({ id: event.subject.id, name })}>Show only events of {name}</TextButton>
+        <TextButton onClick={() => onSubject({ id: event.subject.id, name })}>
+          Show only events of {name}
+        </TextButton>
       </p>
     </div>
   )
@@ -60,21 +65,33 @@ function payloadText(value: unknown): ReactNode {
 function PlaceCheck({ event, head }: { event: ShownEvent; head: SignedHead | null }) {
   const covered = head !== null && event.sequence <= head.treeSize
   const proof = useQuery({ ...inclusionProofQuery(event.sequence, head?.treeSize ?? 1), enabled: covered })
-  if (!covered) return <Message>No signed head covers this event yet. The next seal or the end of the day brings one.</Message>
-  if (proof.error) return <Message kind="warn" title="The proof could not be fetched.">{sentenceOf(proof.error)}</Message>
+  if (!covered)
+    return (
+      <Message>No signed head covers this event yet. The next seal or the end of the day brings one.</Message>
+    )
+  if (proof.error)
+    return (
+      <Message kind="warn" title="The proof could not be fetched.">
+        {sentenceOf(proof.error)}
+      </Message>
+    )
   if (!proof.data) return <p className="hs-quiet">Fetching the proof</p>
   const check = checkEventHere(event, proof.data, head)
   if (check.digest && check.inclusion)
     return (
       <Message kind="good" title={`This event stands under head ${eventNumber(head.treeSize)}.`}>
-        Checked in this browser: its digest was computed from what is shown here, and {eventNumber(proof.data.path.length)}{' '}
-        hashes lead from it to the root {groupedDigest(head.rootHash.slice(0, 16))}…
+        Checked in this browser: its digest was computed from what is shown here, and{' '}
+        {eventNumber(proof.data.path.length)} hashes lead from it to the root{' '}
+        {groupedDigest(head.rootHash.slice(0, 16))}…
       </Message>
     )
   return (
-    <Message kind="fault" title={check.digest ? 'The proof does not lead to the head.' : 'The digest is not that of this event.'}>
-      Checked in this browser. Do not rely on this event; tell the laboratory manager and keep the newest head that you
-      have by mail.
+    <Message
+      kind="fault"
+      title={check.digest ? 'The proof does not lead to the head.' : 'The digest is not that of this event.'}
+    >
+      Checked in this browser. Do not rely on this event; tell the laboratory manager and keep the newest head
+      that you have by mail.
     </Message>
   )
 }

@@ -39,10 +39,19 @@ export function LedgerEvents({
           </span>
         )}
       </div>
-      {events.error && <Message kind="warn" title="The events could not be read.">{sentenceOf(events.error)}</Message>}
+      {events.error && (
+        <Message kind="warn" title="The events could not be read.">
+          {sentenceOf(events.error)}
+        </Message>
+      )}
       {events.data && shown.length === 0 && <p className="hs-quiet">No such event.</p>}
       {shown.length > 0 && (
-        <EventChain events={shown} verification={verification.data} head={head.data?.head ?? null} onSubject={onSubject} />
+        <EventChain
+          events={shown}
+          verification={verification.data}
+          head={head.data?.head ?? null}
+          onSubject={onSubject}
+        />
       )}
       {events.hasNextPage && (
         <div className="mt-3">

@@ -7,7 +7,15 @@ const width = 936
  * All events as one graduated bar, from the first to the newest. A break and the newest signed head are marked over it;
  * what stands after a break is drawn hollow, since nothing can be said of it.
  */
-export function RangeBar({ events, brokenAt, head }: { events: number; brokenAt: number | null; head: number | null }) {
+export function RangeBar({
+  events,
+  brokenAt,
+  head,
+}: {
+  events: number
+  brokenAt: number | null
+  head: number | null
+}) {
   const at = (sequence: number) => (Math.max(0, Math.min(events, sequence)) / Math.max(events, 1)) * width
   const major = ticks(0, events, 10).filter((tick) => Number.isInteger(tick) && tick > 0)
   const step = (major[1] ?? events) - (major[0] ?? 0)
@@ -47,8 +55,12 @@ export function RangeBar({ events, brokenAt, head }: { events: number; brokenAt:
         <text className="hs-axis-number" x={width} y="49" textAnchor="end">
           {eventNumber(events)}
         </text>
-        {head !== null && !close && <Mark x={at(head)} words={`head at ${eventNumber(head)}`} colour="var(--hs-ink2)" />}
-        {brokenAt !== null && <Mark x={at(brokenAt)} words={`breaks at ${eventNumber(brokenAt)}`} colour="var(--hs-fault)" />}
+        {head !== null && !close && (
+          <Mark x={at(head)} words={`head at ${eventNumber(head)}`} colour="var(--hs-ink2)" />
+        )}
+        {brokenAt !== null && (
+          <Mark x={at(brokenAt)} words={`breaks at ${eventNumber(brokenAt)}`} colour="var(--hs-fault)" />
+        )}
       </svg>
     </div>
   )
@@ -75,5 +87,7 @@ function Mark({ x, words, colour }: { x: number; words: string; colour: string }
 
 function describe(events: number, brokenAt: number | null, head: number | null): string {
   const heads = head === null ? 'no signed head yet' : `signed head at ${head}`
-  return brokenAt === null ? `All ${events} events checked, ${heads}` : `Checked up to event ${brokenAt - 1}, which is the last that holds; ${heads}`
+  return brokenAt === null
+    ? `All ${events} events checked, ${heads}`
+    : `Checked up to event ${brokenAt - 1}, which is the last that holds; ${heads}`
 }

@@ -24,7 +24,9 @@ export function VerificationResult() {
             {verification.isFetching ? 'Verifying the chain' : result ? resultWords(result) : 'Not verified'}
           </h2>
           {verification.isFetching ? (
-            <p className="mt-1">Every link, digest and root is computed again from the stored events. You may leave this page.</p>
+            <p className="mt-1">
+              Every link, digest and root is computed again from the stored events. You may leave this page.
+            </p>
           ) : (
             result && <ResultDetail result={result} />
           )}
@@ -62,8 +64,8 @@ function ResultDetail({ result }: { result: Verification }) {
   return (
     <>
       <p className="mt-1">
-        {eventNumber(result.events)} events checked in {result.durationS.toFixed(1)} s on {dateAndTime(result.checkedAt)}.{' '}
-        {result.firstBroken ? result.firstBroken.detail : result.detail}
+        {eventNumber(result.events)} events checked in {result.durationS.toFixed(1)} s on{' '}
+        {dateAndTime(result.checkedAt)}. {result.firstBroken ? result.firstBroken.detail : result.detail}
       </p>
       {result.rootHash && (
         <p className="hs-quiet mt-1 text-1">

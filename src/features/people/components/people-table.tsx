@@ -38,5 +38,13 @@ export function PeopleTable({
     },
     { head: <span className="hs-only-spoken">Act</span>, cell: act },
   ]
-  return <Table label="People of the laboratory" columns={columns} rows={people} keyOf={(person) => person.id} stackable />
+  return (
+    <Table
+      label="People of the laboratory"
+      columns={columns}
+      rows={people}
+      keyOf={(person) => person.id}
+      stackable
+    />
+  )
 }

@@ -6,7 +6,15 @@ import { LateRemark } from './late-remark.tsx'
 type Block = Entry['blocks'][number]
 
 /** What stands in the way of signing, a sentence each, with a way to the place on the sheet or the means to mend it here. */
-export function BlocksList({ entry, onGo, onMended }: { entry: Entry; onGo: () => void; onMended: () => void }) {
+export function BlocksList({
+  entry,
+  onGo,
+  onMended,
+}: {
+  entry: Entry
+  onGo: () => void
+  onMended: () => void
+}) {
   return (
     <ul className="hs-checks" aria-label="What stands in the way">
       {entry.blocks.map((block) => {
@@ -50,7 +58,8 @@ function placeOf(block: Block, entry: Entry): { anchor: string; name: string } |
   const pointer = block.pointer
   if (pointer === null) return null
   const calculation = entry.calculations.find((each) => pointer.includes(each.id))
-  if (calculation && document.getElementById(calculation.id)) return { anchor: calculation.id, name: calculation.label }
+  if (calculation && document.getElementById(calculation.id))
+    return { anchor: calculation.id, name: calculation.label }
   const file = filesToSign(entry).find((each) => pointer.includes(each.id))
   if (file && document.getElementById(file.id)) return { anchor: file.id, name: file.name }
   return null

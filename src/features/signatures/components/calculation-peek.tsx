@@ -42,7 +42,9 @@ function CalculationFacts({ calculation }: { calculation: Calculation }) {
       </DialogPart>
       <DialogPart>
         <p className="hs-label">Parameters</p>
-        <Facts facts={Object.entries(parameters).map(([name, value]) => ({ name, value: JSON.stringify(value) }))} />
+        <Facts
+          facts={Object.entries(parameters).map(([name, value]) => ({ name, value: JSON.stringify(value) }))}
+        />
       </DialogPart>
       <DialogPart>
         <p className="hs-label">Inputs</p>

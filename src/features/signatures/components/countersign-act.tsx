@@ -40,17 +40,34 @@ export function CountersignAct({
         <SignatureDialog
           key={meaning}
           onClose={() => setBegun(null)}
-          subject={{ ...sheet, entryId: entry.id, meaning, presence: present ? (presence ?? undefined) : undefined }}
+          subject={{
+            ...sheet,
+            entryId: entry.id,
+            meaning,
+            presence: present ? (presence ?? undefined) : undefined,
+          }}
           number={entry.number}
           title={entry.title}
           verb="Countersign"
           harmless="Keep reading"
           before={
-            <MeaningChoice entry={begun} zone={zone} meaning={meaning} onMeaning={setMeaning} presence={presence} onPresence={setPresence} />
+            <MeaningChoice
+              entry={begun}
+              zone={zone}
+              meaning={meaning}
+              onMeaning={setMeaning}
+              presence={presence}
+              onPresence={setPresence}
+            />
           }
           chosen={!present || presence !== null}
           onSigned={onSigned}
-          done={(signature) => <Countersigned signature={signature} more={begun.witnesses.required - begun.witnesses.given - 1} />}
+          done={(signature) => (
+            <Countersigned
+              signature={signature}
+              more={begun.witnesses.required - begun.witnesses.given - 1}
+            />
+          )}
         />
       )}
     </>

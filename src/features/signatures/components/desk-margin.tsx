@@ -22,7 +22,11 @@ export function DeskMargin({ entryId }: { entryId: string }) {
       <Section title="In it">
         <Facts
           facts={[
-            { name: 'Submitted', value: entry.submittedAt ? dateAndTime(entry.submittedAt) : 'not yet', words: true },
+            {
+              name: 'Submitted',
+              value: entry.submittedAt ? dateAndTime(entry.submittedAt) : 'not yet',
+              words: true,
+            },
             { name: 'Work done', value: longDate(entry.runAt), words: true },
             { name: 'Revision', value: entry.revision },
             { name: 'Runs', value: entry.runs.map((run) => run.number).join(', ') || 'none' },
@@ -52,7 +56,10 @@ export function DeskMargin({ entryId }: { entryId: string }) {
       {entry.returned && (
         <Section title="Returned before">
           <p>
-            “{entry.returned.reason}” <span className="hs-quiet">{entry.returned.by}, {longDate(entry.returned.at)}</span>
+            “{entry.returned.reason}”{' '}
+            <span className="hs-quiet">
+              {entry.returned.by}, {longDate(entry.returned.at)}
+            </span>
           </p>
         </Section>
       )}

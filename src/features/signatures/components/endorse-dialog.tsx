@@ -123,7 +123,9 @@ function EndorseForm({
           <div className="min-w-0 flex-1 basis-60">
             <p className="hs-quiet">Digits of the key, enrolled {dateAndTime(enrolment.time)}</p>
             <p className="hs-fig text-6">{digits}</p>
-            <p className="hs-hint">Checked here: the key has signed its own enrolment, and these are its digits.</p>
+            <p className="hs-hint">
+              Checked here: the key has signed its own enrolment, and these are its digits.
+            </p>
           </div>
         </div>
         <div className="mt-3">
@@ -145,7 +147,14 @@ function EndorseForm({
       </DialogPart>
       <DialogPart>
         <p className="hs-prose mb-3">
-          “{endorsementStatement({ endorser: me.name, person: enrolment.name, laboratory: laboratory.name, keyDigits: enrolmentSha256.slice(0, 16) })}”
+          “
+          {endorsementStatement({
+            endorser: me.name,
+            person: enrolment.name,
+            laboratory: laboratory.name,
+            keyDigits: enrolmentSha256.slice(0, 16),
+          })}
+          ”
         </p>
         <PassphraseField
           label={`Signing passphrase of ${me.name}`}
@@ -155,7 +164,11 @@ function EndorseForm({
           error={trouble?.at === 'passphrase' ? trouble.words : null}
           onChange={(event) => setPassphrase(event.target.value)}
         />
-        {share !== null && <div className="mt-3"><Progress label="Opening the key" share={share} words="The key is opened." /></div>}
+        {share !== null && (
+          <div className="mt-3">
+            <Progress label="Opening the key" share={share} words="The key is opened." />
+          </div>
+        )}
         {trouble?.at === 'dialog' && (
           <div className="mt-3">
             <Message kind="fault" code={trouble.code}>

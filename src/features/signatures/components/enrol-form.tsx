@@ -71,10 +71,16 @@ export function EnrolForm({
         error={tried ? differs : null}
         onChange={(event) => setAgain(event.target.value)}
       />
-      <blockquote className="hs-prose">“{enrolmentStatement({ name: me.name, laboratory: laboratory.name })}”</blockquote>
+      <blockquote className="hs-prose">
+        “{enrolmentStatement({ name: me.name, laboratory: laboratory.name })}”
+      </blockquote>
       <Checkbox
         label="I mean this, and the new key may sign it."
-        hint={replaces ? 'The key you have signs until the new one is endorsed, and stays valid for what it has signed.' : undefined}
+        hint={
+          replaces
+            ? 'The key you have signs until the new one is endorsed, and stays valid for what it has signed.'
+            : undefined
+        }
         checked={meant}
         onChange={setMeant}
       />
@@ -86,7 +92,11 @@ export function EnrolForm({
       </div>
       {share !== null && (
         <div role="status">
-          <Progress label="Making the key" share={share} words="The key is made and wrapped on this device, which takes a few seconds by design." />
+          <Progress
+            label="Making the key"
+            share={share}
+            words="The key is made and wrapped on this device, which takes a few seconds by design."
+          />
         </div>
       )}
       {enrol.error && (
@@ -98,16 +108,28 @@ export function EnrolForm({
   )
 }
 
-function Drawn({ phrase, onDraw, onTake }: { phrase: string | null; onDraw: () => void; onTake: (phrase: string) => void }) {
+function Drawn({
+  phrase,
+  onDraw,
+  onTake,
+}: {
+  phrase: string | null
+  onDraw: () => void
+  onTake: (phrase: string) => void
+}) {
   return (
     <div className="bg-well p-3">
       <p>
-        {numberWords} words drawn at random make a strong passphrase that can be remembered: {Math.round(phraseBits)} bits.
+        {numberWords} words drawn at random make a strong passphrase that can be remembered:{' '}
+        {Math.round(phraseBits)} bits.
       </p>
       {phrase !== null && (
         <>
           <p className="hs-fig my-2 text-4 whitespace-normal">{phrase}</p>
-          <p className="hs-hint">Write it on paper and keep that apart from this computer until you know it. It is shown nowhere else.</p>
+          <p className="hs-hint">
+            Write it on paper and keep that apart from this computer until you know it. It is shown nowhere
+            else.
+          </p>
         </>
       )}
       <div className="hs-actions mt-2">

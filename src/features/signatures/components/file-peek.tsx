@@ -53,7 +53,12 @@ export function FilePeek({ file, onOpened }: { file: RawFile; onOpened: () => vo
 
 function ReadingFacts({ reading }: { reading: RawFile['reading'] }) {
   if (reading.status !== 'ready')
-    return <p>{reading.detail ?? (reading.status === 'pending' ? 'Not read yet.' : 'It cannot be read as time tags or a table.')}</p>
+    return (
+      <p>
+        {reading.detail ??
+          (reading.status === 'pending' ? 'Not read yet.' : 'It cannot be read as time tags or a table.')}
+      </p>
+    )
   return (
     <Facts
       facts={[
@@ -82,8 +87,12 @@ function Beginning({ file, onOpened }: { file: RawFile; onOpened: () => void }) 
   return (
     <DialogPart>
       <p className="hs-label">{lines ? 'How it begins' : 'Not text; it begins with these bytes'}</p>
-      <pre className={`hs-fig max-h-60 overflow-auto bg-well p-2.5 text-1 ${lines ? 'whitespace-pre' : 'whitespace-pre-wrap'}`}>
-        {lines ? lines.join('\n') : [...first.data.slice(0, 256)].map((byte) => byte.toString(16).padStart(2, '0')).join(' ')}
+      <pre
+        className={`hs-fig max-h-60 overflow-auto bg-well p-2.5 text-1 ${lines ? 'whitespace-pre' : 'whitespace-pre-wrap'}`}
+      >
+        {lines
+          ? lines.join('\n')
+          : [...first.data.slice(0, 256)].map((byte) => byte.toString(16).padStart(2, '0')).join(' ')}
       </pre>
     </DialogPart>
   )

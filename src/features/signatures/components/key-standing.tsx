@@ -47,8 +47,8 @@ function standingSentence({ status, enrolmentSha256 }: SigningKey): ReactNode {
     case 'awaiting-endorsement':
       return (
         <>
-          Go to a manager or a supervisor. That person checks who you are, compares these digits with you and endorses the
-          key: {enrolmentSha256 && <Digest sha256={enrolmentSha256} />}
+          Go to a manager or a supervisor. That person checks who you are, compares these digits with you and
+          endorses the key: {enrolmentSha256 && <Digest sha256={enrolmentSha256} />}
         </>
       )
     case 'active':

@@ -132,7 +132,12 @@ function AddendumAct({ entry }: { entry: Entry }) {
         }
       >
         <DialogPart>
-          <TextField label="Title" value={title} maxLength={300} onChange={(event) => setTitle(event.target.value)} />
+          <TextField
+            label="Title"
+            value={title}
+            maxLength={300}
+            onChange={(event) => setTitle(event.target.value)}
+          />
         </DialogPart>
         {create.error && <Message kind="fault">{sentenceOf(create.error)}</Message>}
       </Dialog>

@@ -43,7 +43,9 @@ export function MeaningChoice({
         />
       )}
       {meaning === 'witness-read' ? (
-        <p className="hs-quiet">It says that this page existed when you signed, not that its statements are true.</p>
+        <p className="hs-quiet">
+          It says that this page existed when you signed, not that its statements are true.
+        </p>
       ) : (
         <PresenceTimes runs={entry.runs} zone={zone} presence={presence} onPresence={onPresence} />
       )}
@@ -90,12 +92,19 @@ function PresenceTimes({
     <>
       <Select
         label="Run you saw"
-        choices={runs.map((each) => ({ value: each.id, label: `${each.number}, ${zonedOfUtc(each.startedAt, zone)}` }))}
+        choices={runs.map((each) => ({
+          value: each.id,
+          label: `${each.number}, ${zonedOfUtc(each.startedAt, zone)}`,
+        }))}
         value={runId}
         onChange={chooseRun}
       />
       <div className="grid gap-3 mid:grid-cols-2">
-        <TextField label="Present from" value={from} onChange={(event) => changed(setFrom)(event.target.value)} />
+        <TextField
+          label="Present from"
+          value={from}
+          onChange={(event) => changed(setFrom)(event.target.value)}
+        />
         <TextField label="to" value={to} onChange={(event) => changed(setTo)(event.target.value)} />
       </div>
       <p className="hs-hint">Year-month-day and time, {zoneInWords()}. The times must overlap the run.</p>

@@ -7,7 +7,14 @@ import { StateGlyph } from '../../../ui/state-glyph.tsx'
 import { waitingWords } from '../../../ui/waiting-scale.tsx'
 import { filesToSign } from '../entry-files.ts'
 import { calculationQuery } from '../queries.ts'
-import { checksOf, openablesOf, questions, stillToDo, type Openable, type QuestionCode } from '../review-checks.ts'
+import {
+  checksOf,
+  openablesOf,
+  questions,
+  stillToDo,
+  type Openable,
+  type QuestionCode,
+} from '../review-checks.ts'
 import { daysSince, dueDays } from '../waiting.ts'
 import { CalculationPeek } from './calculation-peek.tsx'
 import { ChecksList } from './checks-list.tsx'
@@ -50,7 +57,10 @@ export function ReviewPanel({
         ? openedFiles.includes(each.id)
         : calculations.some((calculation) => calculation.id === each.id)
   const openables = openablesOf(entry)
-  const reason = stillToDo(openables.filter((each) => !isOpened(each)), questions.length - answered.length)
+  const reason = stillToDo(
+    openables.filter((each) => !isOpened(each)),
+    questions.length - answered.length,
+  )
   const mayWitness = entry.allowed.includes('witness:read')
 
   return (
@@ -58,7 +68,8 @@ export function ReviewPanel({
       <h2>Your review</h2>
       {entry.submittedAt && (
         <p className="hs-quiet mt-0.5">
-          Submitted {dateAndTime(entry.submittedAt)}. Waiting {waitingWords(daysSince(entry.submittedAt, now), dueDays)}.
+          Submitted {dateAndTime(entry.submittedAt)}. Waiting{' '}
+          {waitingWords(daysSince(entry.submittedAt, now), dueDays)}.
         </p>
       )}
       <h3>Checked by Halfsilver</h3>
@@ -121,7 +132,13 @@ function Opening({
   )
 }
 
-function Questions({ answered, onAnswered }: { answered: QuestionCode[]; onAnswered: (answered: QuestionCode[]) => void }) {
+function Questions({
+  answered,
+  onAnswered,
+}: {
+  answered: QuestionCode[]
+  onAnswered: (answered: QuestionCode[]) => void
+}) {
   return (
     <fieldset>
       <legend className="contents">
@@ -147,7 +164,9 @@ function Questions({ answered, onAnswered }: { answered: QuestionCode[]; onAnswe
 }
 
 function CannotWitness({ sheet: { entry, me } }: { sheet: SheetOnScreen }) {
-  const signed = entry.signatures.some((each) => !each.voided && each.signer.personId === me.id && each.meaning !== 'authorship')
+  const signed = entry.signatures.some(
+    (each) => !each.voided && each.signer.personId === me.id && each.meaning !== 'authorship',
+  )
   const words = signed
     ? 'You have countersigned this sheet.'
     : entry.phase === 'with-witness'
@@ -155,4 +174,3 @@ function CannotWitness({ sheet: { entry, me } }: { sheet: SheetOnScreen }) {
       : 'This sheet does not wait for a witness.'
   return <p className="mt-4">{words}</p>
 }
-

@@ -19,7 +19,13 @@ export interface SheetOnScreen {
  * The author's act, where it is open to the person. With one author left it submits the sheet to the witness, else the
  * others sign after this. To be kept on the page: its result outlives the right to sign.
  */
-export function SignAct({ sheet, onSigned }: { sheet: SheetOnScreen; onSigned?: (signature: EntrySignature) => void }) {
+export function SignAct({
+  sheet,
+  onSigned,
+}: {
+  sheet: SheetOnScreen
+  onSigned?: (signature: EntrySignature) => void
+}) {
   // The entry as it was when the dialog opened; the act itself changes what the page has.
   const [begun, setBegun] = useState<Entry | null>(null)
   const { entry, me } = sheet
@@ -50,7 +56,9 @@ export function SignAct({ sheet, onSigned }: { sheet: SheetOnScreen; onSigned?: 
 
 /** Who must sign after me, and what the act is called accordingly. */
 function authorshipOf(entry: Entry, myId: string) {
-  const others = entry.authors.filter((author) => !author.signed && author.personId !== myId).map((author) => author.name)
+  const others = entry.authors
+    .filter((author) => !author.signed && author.personId !== myId)
+    .map((author) => author.name)
   return { others, verb: others.length === 0 ? 'Sign and submit' : 'Sign' }
 }
 

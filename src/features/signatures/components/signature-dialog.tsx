@@ -50,12 +50,25 @@ export function SignatureDialog(props: SignatureDialogProps) {
     event.preventDefault()
     if (signing.isPending || passphrase === '') return
     setShare(0)
-    signing.mutate({ passphrase, onProgress: setShare }, { onSettled: () => setShare(null), onSuccess: () => setPassphrase('') })
+    signing.mutate(
+      { passphrase, onProgress: setShare },
+      { onSettled: () => setShare(null), onSuccess: () => setPassphrase('') },
+    )
   }
 
   if (signed)
     return (
-      <Dialog open onClose={onClose} title={number} about={title} actions={<Button kind="primary" onClick={onClose}>Close</Button>}>
+      <Dialog
+        open
+        onClose={onClose}
+        title={number}
+        about={title}
+        actions={
+          <Button kind="primary" onClick={onClose}>
+            Close
+          </Button>
+        }
+      >
         <DialogPart>
           <Message kind="good">{props.done(signed)}</Message>
         </DialogPart>
@@ -110,7 +123,11 @@ export function SignatureDialog(props: SignatureDialogProps) {
                 </form>
                 {share !== null && (
                   <div className="mt-3" role="status">
-                    <Progress label="Opening the key" share={share} words="The key is opened, which takes a few seconds by design." />
+                    <Progress
+                      label="Opening the key"
+                      share={share}
+                      words="The key is opened, which takes a few seconds by design."
+                    />
                   </div>
                 )}
               </DialogPart>
@@ -155,7 +172,15 @@ interface PreparationQuery {
   refetch: () => Promise<unknown>
 }
 
-function Prepared({ preparation, onGo, children }: { preparation: PreparationQuery; onGo: () => void; children: ReactNode }) {
+function Prepared({
+  preparation,
+  onGo,
+  children,
+}: {
+  preparation: PreparationQuery
+  onGo: () => void
+  children: ReactNode
+}) {
   const { data, error, isFetching } = preparation
   if (error)
     return (
@@ -165,7 +190,12 @@ function Prepared({ preparation, onGo, children }: { preparation: PreparationQue
         </Message>
       </DialogPart>
     )
-  if (!data || (isFetching && data.state !== 'ready')) return <DialogPart><p role="status">Saving, and preparing what is signed</p></DialogPart>
+  if (!data || (isFetching && data.state !== 'ready'))
+    return (
+      <DialogPart>
+        <p role="status">Saving, and preparing what is signed</p>
+      </DialogPart>
+    )
   if (data.state === 'blocked')
     return (
       <DialogPart>
@@ -173,20 +203,33 @@ function Prepared({ preparation, onGo, children }: { preparation: PreparationQue
         <BlocksList entry={data.entry} onGo={onGo} onMended={() => void preparation.refetch()} />
       </DialogPart>
     )
-  if (data.state === 'no-key') return <DialogPart><NoKey status={data.key.status} /></DialogPart>
+  if (data.state === 'no-key')
+    return (
+      <DialogPart>
+        <NoKey status={data.key.status} />
+      </DialogPart>
+    )
   return <>{children}</>
 }
 
 const keyWords: Record<string, string> = {
   none: 'You have no signing key yet.',
-  'awaiting-endorsement': 'Your signing key is not endorsed yet. A manager or a supervisor checks who you are and endorses it.',
+  'awaiting-endorsement':
+    'Your signing key is not endorsed yet. A manager or a supervisor checks who you are and endorses it.',
   expired: 'The certificate of your signing key has ended.',
   revoked: 'Your signing key was revoked.',
 }
 
 function NoKey({ status }: { status: string }) {
   return (
-    <Message kind="warn" actions={<ButtonLink to="/keys" size="small">Signing key</ButtonLink>}>
+    <Message
+      kind="warn"
+      actions={
+        <ButtonLink to="/keys" size="small">
+          Signing key
+        </ButtonLink>
+      }
+    >
       {keyWords[status] ?? 'Your signing key cannot be used now.'} What you wrote is safe.
     </Message>
   )

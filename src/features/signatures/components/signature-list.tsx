@@ -16,8 +16,9 @@ export function SignatureList({ signatures }: { signatures: EntrySignature[] }) 
         {signatures.map((each) => (
           <li key={each.id}>
             <p>
-              <StateGlyph state={each.voided ? 'withdrawn' : 'ok'} wordless /> <b>{each.signer.name}</b>, {each.signer.role}.{' '}
-              {meaningWords[each.meaning]}.{each.voided && ' Void: the sheet was reopened or returned after it.'}
+              <StateGlyph state={each.voided ? 'withdrawn' : 'ok'} wordless /> <b>{each.signer.name}</b>,{' '}
+              {each.signer.role}. {meaningWords[each.meaning]}.
+              {each.voided && ' Void: the sheet was reopened or returned after it.'}
             </p>
             <p className="hs-quiet text-2">
               {stampTime(each.time)}, {zoneInWords(new Date(each.time))}; {stampWords(each.timeStamp)}; record{' '}

@@ -9,8 +9,9 @@ export function WaitingSuccessor({ myId, currentSha256 }: { myId: string; curren
   if (!data || data.status !== 'awaiting-endorsement' || data.enrolmentSha256 === currentSha256) return null
   return (
     <Message kind="warn" title="Your new key waits for endorsement.">
-      Read these digits to a manager or a supervisor: <span className="hs-fig">{checkedEnrolment(data).digits}</span>. Until
-      then the key you have goes on signing, with its own passphrase.
+      Read these digits to a manager or a supervisor:{' '}
+      <span className="hs-fig">{checkedEnrolment(data).digits}</span>. Until then the key you have goes on
+      signing, with its own passphrase.
     </Message>
   )
 }

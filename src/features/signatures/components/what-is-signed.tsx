@@ -27,7 +27,9 @@ export function SignedDigest({ record }: { record: SignedRecord }) {
 
 /** Everything the signature binds, read out of the bytes themselves: files, calculations, quoted results, notes. */
 export function WhatIsSigned({ record }: { record: SignedRecord }) {
-  const notes = record.calculations.flatMap((each) => each.notes.map((note) => ({ ...note, label: each.label })))
+  const notes = record.calculations.flatMap((each) =>
+    each.notes.map((note) => ({ ...note, label: each.label })),
+  )
   return (
     <div className="grid gap-4">
       <Part title="Text" count={record.entry.revision} counted="revision">
@@ -84,11 +86,21 @@ export function WhatIsSigned({ record }: { record: SignedRecord }) {
   )
 }
 
-function Opened({ record, opened }: { record: SignedRecord; opened: NonNullable<SignedRecord['signing']['opened']> }) {
+function Opened({
+  record,
+  opened,
+}: {
+  record: SignedRecord
+  opened: NonNullable<SignedRecord['signing']['opened']>
+}) {
   const names = opened.map((each) => {
     if (each.kind === 'text') return 'the text'
-    if (each.kind === 'file') return record.files.find((file) => file.id === each.id)?.name ?? 'a file no longer here'
-    return record.calculations.find((calculation) => calculation.id === each.id)?.label ?? 'a calculation no longer placed'
+    if (each.kind === 'file')
+      return record.files.find((file) => file.id === each.id)?.name ?? 'a file no longer here'
+    return (
+      record.calculations.find((calculation) => calculation.id === each.id)?.label ??
+      'a calculation no longer placed'
+    )
   })
   return (
     <Part title="You opened" count={opened.length}>
@@ -97,7 +109,17 @@ function Opened({ record, opened }: { record: SignedRecord; opened: NonNullable<
   )
 }
 
-function Part({ title, count, counted, children }: { title: string; count: number; counted?: string; children: ReactNode }) {
+function Part({
+  title,
+  count,
+  counted,
+  children,
+}: {
+  title: string
+  count: number
+  counted?: string
+  children: ReactNode
+}) {
   return (
     <section>
       <h3 className="mb-1 flex items-baseline gap-2 text-3 font-semibold">

@@ -22,11 +22,26 @@ export function WitnessQueue({
   onSelect: (id: string) => void
 }) {
   const columns: Column<DeskEntry>[] = [
-    { head: 'Waiting / days', cell: (entry) => <Waiting since={entry.submittedAt ?? entry.updatedAt} now={now} /> },
-    { head: 'Sheet', cell: (entry) => <SheetCell entry={entry} selected={selected === entry.id} onSelect={onSelect} /> },
+    {
+      head: 'Waiting / days',
+      cell: (entry) => <Waiting since={entry.submittedAt ?? entry.updatedAt} now={now} />,
+    },
+    {
+      head: 'Sheet',
+      cell: (entry) => <SheetCell entry={entry} selected={selected === entry.id} onSelect={onSelect} />,
+    },
     { head: 'Author', cell: authorsOf },
-    { head: 'Notebook', cell: (entry) => `${entry.number.split('/')[0]} ${entry.notebookTitle}`, deskOnly: true },
-    { head: 'Submitted', cell: (entry) => entry.submittedAt && nearTime(entry.submittedAt, now), nowrap: true, deskOnly: true },
+    {
+      head: 'Notebook',
+      cell: (entry) => `${entry.number.split('/')[0]} ${entry.notebookTitle}`,
+      deskOnly: true,
+    },
+    {
+      head: 'Submitted',
+      cell: (entry) => entry.submittedAt && nearTime(entry.submittedAt, now),
+      nowrap: true,
+      deskOnly: true,
+    },
   ]
   return (
     <div className={asLines}>
@@ -61,7 +76,15 @@ function Waiting({ since, now }: { since: string; now: Date }) {
   )
 }
 
-function SheetCell({ entry, selected, onSelect }: { entry: DeskEntry; selected: boolean; onSelect: (id: string) => void }) {
+function SheetCell({
+  entry,
+  selected,
+  onSelect,
+}: {
+  entry: DeskEntry
+  selected: boolean
+  onSelect: (id: string) => void
+}) {
   return (
     <>
       <TextLink className="hs-fig" to={`/entries/${entry.id}/review`}>
@@ -96,9 +119,17 @@ export function OtherSheets({ label, entries, now }: { label: string; entries: D
       ),
     },
     { head: 'Author', cell: authorsOf },
-    { head: 'Notebook', cell: (entry) => `${entry.number.split('/')[0]} ${entry.notebookTitle}`, deskOnly: true },
+    {
+      head: 'Notebook',
+      cell: (entry) => `${entry.number.split('/')[0]} ${entry.notebookTitle}`,
+      deskOnly: true,
+    },
     { head: 'Last change', cell: (entry) => nearTime(entry.updatedAt, now), nowrap: true },
-    { head: 'Standing', cell: (entry) => <StateGlyph state={entry.phase === 'sealed' ? 'sealed' : 'returned'} />, nowrap: true },
+    {
+      head: 'Standing',
+      cell: (entry) => <StateGlyph state={entry.phase === 'sealed' ? 'sealed' : 'returned'} />,
+      nowrap: true,
+    },
   ]
   return (
     <div className={asLines}>

@@ -29,7 +29,8 @@ function costOfPiece(piece: string): number | null {
   if (words.has(piece)) return 11
   if (piece.length < 3) return null
   if (/^(19|20)\d\d$/.test(piece)) return 7
-  if ([...piece].every((each) => each === piece[0])) return costOfCharacter(piece[0] ?? '') + Math.log2(piece.length)
+  if ([...piece].every((each) => each === piece[0]))
+    return costOfCharacter(piece[0] ?? '') + Math.log2(piece.length)
   if (runs.some((run) => run.includes(piece))) return 5 + Math.log2(piece.length)
   return null
 }
@@ -55,7 +56,8 @@ export function passphraseBits(passphrase: string): number {
       if (cost !== null) least[at + length] = Math.min(least[at + length] ?? 0, before + cost)
     }
   }
-  const capitals = given === text ? 0 : Math.min(6, [...given].filter((each) => each !== each.toLowerCase()).length)
+  const capitals =
+    given === text ? 0 : Math.min(6, [...given].filter((each) => each !== each.toLowerCase()).length)
   return (least[text.length] ?? 0) + capitals
 }
 
@@ -83,7 +85,8 @@ function refusalOf(passphrase: string, bits: number): string | null {
   const length = [...passphrase.normalize('NFKC')].length
   if (length < leastLength) return `${length} of at least ${leastLength} characters.`
   if (isCommon(passphrase)) return 'This passphrase is among those that are tried first. Take another one.'
-  if (bits < 30) return 'This is put together from parts that are tried first, and would fall in a day. Take another one.'
+  if (bits < 30)
+    return 'This is put together from parts that are tried first, and would fall in a day. Take another one.'
   return null
 }
 
@@ -91,7 +94,10 @@ function refusalOf(passphrase: string, bits: number): string | null {
 function meaningOf(bits: number): string {
   const years = 2 ** (bits - 1) / guessesPerSecond / 3.156e7
   if (years > 1e6) return 'out of reach of guessing, even for whoever stole all that is stored'
-  if (years >= 1) return `about ${years < 10 ? Math.round(years) : Number(years.toPrecision(1))} years of guessing for whoever stole all that is stored`
+  if (years >= 1)
+    return `about ${years < 10 ? Math.round(years) : Number(years.toPrecision(1))} years of guessing for whoever stole all that is stored`
   const days = years * 365
-  return days >= 1 ? `about ${Number(days.toPrecision(1))} days of guessing for whoever stole all that is stored` : 'hours of guessing for whoever stole all that is stored'
+  return days >= 1
+    ? `about ${Number(days.toPrecision(1))} days of guessing for whoever stole all that is stored`
+    : 'hours of guessing for whoever stole all that is stored'
 }
