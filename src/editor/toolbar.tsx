@@ -7,7 +7,7 @@ import { LinkDialog } from './link-dialog.tsx'
 import { TableTools } from './table-tools.tsx'
 
 /** Tools above the text. Each has its key; Tab goes past them, arrows go along them. */
-export function Toolbar({ editor }: { editor: Editor }) {
+export function Toolbar({ editor, end }: { editor: Editor; end?: ReactNode }) {
   const parts = useEditorParts()
   const [linking, setLinking] = useState(false)
   const now = useEditorState({ editor, selector: ({ editor: at }) => activeIn(at) })
@@ -64,6 +64,7 @@ export function Toolbar({ editor }: { editor: Editor }) {
         words="Result"
       />
       <span className="hs-toolbar-end">
+        {end}
         <Tool label="Undo" keys="Ctrl Z" off={!now.undo} run={() => run().undo().run()} words="Undo" />
         <Tool label="Redo" keys="Ctrl Shift Z" off={!now.redo} run={() => run().redo().run()} words="Redo" />
       </span>

@@ -1,7 +1,7 @@
 import { extent } from 'd3-array'
 import { scaleLinear, scaleLog, type ScaleLinear, type ScaleLogarithmic } from 'd3-scale'
 import type { Figure, FigureAxis, FigurePanel } from '../../server/contract/figure.ts'
-import { powerOfTen } from './numbers.ts'
+import { axisNumber, powerOfTen } from './numbers.ts'
 
 export type Scale = ScaleLinear<number, number> | ScaleLogarithmic<number, number>
 
@@ -111,7 +111,7 @@ function linearTicks(scale: Scale, wanted: number): Tick[] {
     .ticks(wanted * 5)
     .filter((at) => !major.some((each) => Math.abs(each - at) < 1e-9 * (1 + Math.abs(at))))
   return [
-    ...major.map((at) => ({ at, major: true, text: format(at) })),
+    ...major.map((at) => ({ at, major: true, text: axisNumber(format(at).replaceAll(',', '')) })),
     ...(minor.length <= 60 ? minor.map((at) => ({ at, major: false, text: null })) : []),
   ]
 }

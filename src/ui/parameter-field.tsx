@@ -43,7 +43,10 @@ export function ParameterField({
     const trimmed = text.trim()
     const wrong = check?.(trimmed) ?? null
     setRefused(wrong)
-    if (wrong === null && trimmed !== value) onCommit(trimmed)
+    if (wrong !== null || trimmed === value) return
+    // The owner says how the value reads now ("1 ns" may come back as "1"); until then it reads as before.
+    setText(value)
+    onCommit(trimmed)
   }
 
   function onKeyDown(event: KeyboardEvent<HTMLInputElement>) {

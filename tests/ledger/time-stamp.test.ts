@@ -83,7 +83,6 @@ describe('RFC 3161 time stamps', () => {
         continue
       }
     }
-    // Bytes that nothing signs: they cannot change what the stamp says.
-    expect(taken.length).toBeLessThan(4)
+    expect(taken).toEqual([])
   })
 })

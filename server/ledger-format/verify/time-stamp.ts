@@ -1,6 +1,5 @@
-import { OctetString, Sequence } from 'asn1js'
+import { fromBER, OctetString, Sequence, type AsnType } from 'asn1js'
 import {
-  Certificate as ParsedCertificate,
   ContentInfo,
   IssuerAndSerialNumber,
   SignedData,
@@ -13,8 +12,9 @@ import { sha1 } from '@noble/hashes/legacy.js'
 import { sha256 } from '@noble/hashes/sha2.js'
 import { sameBytes } from '../bytes.ts'
 import { toHex } from '../digest.ts'
+import { checkDer } from './der.ts'
 import { need, Wrong } from './report.ts'
-import { checkPath, checkWholeDer, keyUsageBit, oid, readCertificate, type Certificate } from './x509.ts'
+import { checkPath, keyUsageBit, oid, readCertificate, type Certificate } from './x509.ts'
 import { digestAlgorithms, signatureHolds } from './x509-signature.ts'
 
 const tstInfoType = '1.2.840.113549.1.9.16.1.4'
@@ -46,7 +46,7 @@ export function checkTimeStamp(
   const content = signed.encapContentInfo
   need(content.eContentType === tstInfoType && content.eContent !== undefined, 'time stamp holds no time')
   const tst = new Uint8Array(content.eContent.getValue())
-  checkWholeDer(tst)
+  checkDer(tst)
   const info = TSTInfo.fromBER(tst)
   const imprint = digestAlgorithms[info.messageImprint.hashAlgorithm.algorithmId]
   if (!imprint) throw new Wrong('time stamp uses a weak digest')
@@ -56,7 +56,7 @@ export function checkTimeStamp(
   )
   const [signerInfo, ...more] = signed.signerInfos
   if (!signerInfo || more.length > 0) throw new Wrong('time stamp has not one signer')
-  const certificates = embeddedCertificates(signed)
+  const certificates = embeddedCertificates(response)
   const signer = certificates.find((certificate) => isNamed(signerInfo, certificate))
   if (!signer) throw new Wrong('the signer’s certificate is not in the time stamp')
   checkSignature(signerInfo, signer, tst)
@@ -66,7 +66,7 @@ export function checkTimeStamp(
 }
 
 function readToken(response: Uint8Array): SignedData {
-  checkWholeDer(response)
+  checkDer(response)
   const answer = TimeStampResp.fromBER(response.slice())
   need(answer.status.status === 0 || answer.status.status === 1, 'time stamp was not granted')
   const token: ContentInfo | undefined = answer.timeStampToken
@@ -74,10 +74,26 @@ function readToken(response: Uint8Array): SignedData {
   return new SignedData({ schema: token.content })
 }
 
-function embeddedCertificates(signed: SignedData): Certificate[] {
-  return (signed.certificates ?? [])
-    .filter((item) => item instanceof ParsedCertificate)
-    .map((item) => readCertificate(new Uint8Array(item.toSchema().toBER())))
+/** Certificates of the token, from its own bytes: writing them anew could mend what is damaged. */
+function embeddedCertificates(response: Uint8Array): Certificate[] {
+  const { result } = fromBER(response.slice())
+  const token = childOf(result, 1)
+  const signedData = childOf(childOf(token, 1), 0)
+  const set = childrenOf(signedData).find(
+    (item) => item.idBlock.tagClass === 3 && item.idBlock.tagNumber === 0,
+  )
+  return childrenOf(set)
+    .filter((item) => item.idBlock.tagClass === 1 && item.idBlock.tagNumber === 16)
+    .map((item) => readCertificate(item.valueBeforeDecodeView.slice()))
+}
+
+function childrenOf(value: AsnType | undefined): AsnType[] {
+  const children: unknown = (value?.valueBlock as { value?: unknown } | undefined)?.value
+  return Array.isArray(children) ? (children as AsnType[]) : []
+}
+
+function childOf(value: AsnType | undefined, index: number): AsnType | undefined {
+  return childrenOf(value)[index]
 }
 
 function isNamed(info: SignerInfo, certificate: Certificate): boolean {

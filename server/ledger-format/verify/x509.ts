@@ -3,6 +3,7 @@ import { Certificate as ParsedCertificate, CertificateRevocationList, ExtKeyUsag
 import { sameBytes } from '../bytes.ts'
 import { sha256Hex, toHex } from '../digest.ts'
 import { rawKeyOf } from '../ed25519.ts'
+import { checkDer } from './der.ts'
 import { pemBlock, pemBlocks } from './pem.ts'
 import { need, Wrong } from './report.ts'
 import { signatureHolds, type CertifiedKey } from './x509-signature.ts'
@@ -53,15 +54,6 @@ export function readCertificates(pem: Uint8Array): Certificate[] {
   return pemBlocks(pem, 'CERTIFICATE').map(readCertificate)
 }
 
-/** Throws unless the bytes are exactly one value by their outermost length (X.690 section 8.1.3); parsers ignore what follows. */
-export function checkWholeDer(der: Uint8Array): void {
-  const first = der[1] ?? 0
-  const count = first < 0x80 ? 0 : first & 0x7f
-  need(der.length >= 2 + count && first !== 0x80 && count <= 4, 'not one DER value')
-  const long = der.subarray(2, 2 + count).reduce((n, byte) => n * 256 + byte, 0)
-  need(der.length === 2 + count + (count === 0 ? first : long), 'not one DER value')
-}
-
 /** The same few certificates stand beside every signature and stamp: each is read once, each issuance checked once. */
 const certificatesRead = new Map<string, Certificate>()
 const issuancesChecked = new Map<string, boolean>()
@@ -82,7 +74,7 @@ export function readCertificate(der: Uint8Array): Certificate {
 }
 
 function parseCertificate(der: Uint8Array): Certificate {
-  checkWholeDer(der)
+  checkDer(der)
   const parsed = ParsedCertificate.fromBER(der.slice())
   const extensions = new Map((parsed.extensions ?? []).map((extension) => [extension.extnID, extension]))
   need(extensions.size === (parsed.extensions ?? []).length, 'an extension stands twice')
@@ -245,7 +237,7 @@ export interface RevocationList {
 /** Reads a PEM revocation list that the authority signed. */
 export function readRevocationList(pem: Uint8Array, authority: Certificate): RevocationList {
   const der = pemBlock(pem, 'X509 CRL')
-  checkWholeDer(der)
+  checkDer(der)
   const parsed = CertificateRevocationList.fromBER(der.slice())
   checkIssuedBy(
     {

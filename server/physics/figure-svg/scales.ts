@@ -27,10 +27,19 @@ export interface Ticks {
   minor: number[]
 }
 
+/** Thin spaces in thousands from five digits on, where d3 puts commas. */
+function spaced(label: string): string {
+  const plain = label.replaceAll(',', '')
+  return plain.replace(
+    /^(−?)(\d{5,})/,
+    (_, minus: string, digits: string) => minus + digits.replace(/(?<=\d)(?=(\d{3})+$)/g, '\u2009'),
+  )
+}
+
 /** About `count` labelled ticks, and unlabelled ones between them. */
 export function ticksOf(scale: Scale, count: number): Ticks {
   const format = scale.tickFormat(count)
-  const major = scale.ticks(count).map((at) => ({ at, label: format(at) }))
+  const major = scale.ticks(count).map((at) => ({ at, label: spaced(format(at)) }))
   const known = new Set(major.map(({ at }) => at))
   return {
     major: major.filter(({ label }) => label !== ''),

@@ -1,5 +1,5 @@
 import compression from 'compression'
-import express, { Router, type Express } from 'express'
+import express, { Router, type Express, type Response } from 'express'
 import { fileURLToPath } from 'node:url'
 import path from 'node:path'
 import { loadVisitor } from './access.ts'
@@ -37,11 +37,7 @@ export function buildHttp(services: Services, { routes, sessions, signIn }: AppP
   app.use(securityHeaders(config, inlineScriptHashes(path.join(clientFolder, 'index.html'))))
   app.use(allowedHosts(config))
   app.use(healthRoutes(services))
-  app.use(
-    compression({
-      filter: (req, res) => !isStream(res.getHeader('Content-Type')) && compression.filter(req, res),
-    }),
-  )
+  app.use(compression({ filter: (req, res) => mayBeCompressed(res) && compression.filter(req, res) }))
   app.use('/api/v1', interfaceOf(services, routes, sessions))
   app.use('/api', nothingHere)
   app.use(
@@ -76,6 +72,10 @@ function interfaceOf(services: Services, routes: Route[], sessions: SessionStore
   return router
 }
 
-function isStream(type: unknown): boolean {
-  return typeof type === 'string' && type.startsWith('text/event-stream')
+/** Not a stream of events, which must leave at once, nor bytes whose digest or range the answer states. */
+function mayBeCompressed(res: Response): boolean {
+  const type = String(res.getHeader('Content-Type') ?? '')
+  return (
+    !type.startsWith('text/event-stream') && !res.hasHeader('Content-Range') && !res.hasHeader('Repr-Digest')
+  )
 }

@@ -23,13 +23,11 @@ export function openEventStream<E extends Endpoint>(
   { req, res, actor }: Context<E>,
 ): EventStream {
   const ended = new AbortController()
-  res
-    .status(200)
-    .set({
-      'Content-Type': 'text/event-stream',
-      'Cache-Control': 'no-store, no-transform',
-      'X-Accel-Buffering': 'no',
-    })
+  res.status(200).set({
+    'Content-Type': 'text/event-stream',
+    'Cache-Control': 'no-store, no-transform',
+    'X-Accel-Buffering': 'no',
+  })
   res.flushHeaders()
 
   async function maySee(): Promise<boolean> {

@@ -1,5 +1,6 @@
 import type { ErrorRequestHandler, RequestHandler, Response } from 'express'
 import { MulterError } from 'multer'
+import { ConnectionAcquireTimeoutError, ConnectionError } from 'sequelize'
 import { Problem, problemBody, problemTable } from '../../contract/problems.ts'
 import type { Services } from '../services.ts'
 
@@ -19,7 +20,8 @@ export function sendProblem(res: Response, problem: Problem): void {
 export function answerProblems({ log }: Services): ErrorRequestHandler {
   return (error, req, res, next) => {
     const problem = asProblem(error)
-    if (!problem) (req.log ?? log).error({ err: error as unknown, request: req.id }, 'request failed')
+    if (!problem || problem.code === 'service-unavailable')
+      (req.log ?? log).error({ err: error as unknown, request: req.id }, 'request failed')
     if (res.headersSent) {
       next(error)
       return
@@ -52,6 +54,11 @@ function asProblem(error: unknown): Problem | null {
     )
   if (type === 'request.aborted')
     return new Problem('invalid-values', 'The request broke off; nothing was changed.')
+  if (error instanceof ConnectionError || error instanceof ConnectionAcquireTimeoutError)
+    return new Problem(
+      'service-unavailable',
+      'The database does not answer. Try again in a minute; nothing was changed.',
+    )
   if (error instanceof URIError) return new Problem('not-found', 'The address cannot be read.')
   return null
 }

@@ -74,7 +74,7 @@ function buildRequest(imprint: Uint8Array, nonce: Uint8Array): Uint8Array {
 }
 
 /** Checks a response over `data`; the nonce is compared when one is given. */
-export async function checkResponse(
+async function checkResponse(
   response: Uint8Array,
   data: Uint8Array,
   chainPem: string,
@@ -153,7 +153,7 @@ function namesCertificate(signedData: pkijs.SignedData, certificate: pkijs.Certi
 }
 
 /** Certificates of a PEM file. */
-export function certificatesIn(pem: string): pkijs.Certificate[] {
+function certificatesIn(pem: string): pkijs.Certificate[] {
   return pemBlocks(pem).map((der) => pkijs.Certificate.fromBER(ownBuffer(der)))
 }
 

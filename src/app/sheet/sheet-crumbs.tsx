@@ -3,7 +3,6 @@ import type { Notebook } from '../../../server/contract/notebooks.ts'
 import type { Session } from '../../../server/contract/people.ts'
 import type { ContentSaver, SaveState } from '../../features/entries/content-saver.ts'
 import { glyphOf, sheetNumber } from '../../features/entries/entry-state.ts'
-import { SaveStateLine } from '../../features/entries/save-state.tsx'
 import { ExportEntryButton } from '../../features/exports/index.ts'
 import { LifeActs, SignAct } from '../../features/signatures/index.ts'
 import { Button, ButtonLink, TextLink } from '../../ui/button.tsx'
@@ -16,14 +15,13 @@ interface SheetCrumbsProps {
   notebook: Notebook
   session: Session
   state: SaveState
-  editable: boolean
   saver: ContentSaver
   /** The text as it stands on the screen. */
   text: () => unknown
 }
 
 /** Where the sheet stands: notebook, number, state, saved or not, and the acts open to this person. */
-export function SheetCrumbs({ entry, notebook, session, state, editable, saver, text }: SheetCrumbsProps) {
+export function SheetCrumbs({ entry, notebook, session, state, saver, text }: SheetCrumbsProps) {
   const me = { id: session.person.id, name: session.person.name }
   const unsafe = state.name === 'offline' || state.name === 'conflict' || state.name === 'refused'
   return (
@@ -40,10 +38,7 @@ export function SheetCrumbs({ entry, notebook, session, state, editable, saver, 
         </b>,
       ]}
       beside={
-        <>
-          <StateGlyph state={glyphOf(entry.phase)} />
-          {editable && <SaveStateLine state={state} />}
-        </>
+        <StateGlyph state={glyphOf(entry.phase)} />
       }
       acts={
         <>

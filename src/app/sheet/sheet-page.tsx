@@ -13,6 +13,7 @@ import { InsertCalculation } from '../../features/calculations/insert-calculatio
 import { useStartCalculations } from '../../features/calculations/mutations.ts'
 import { standardSet } from '../../features/calculations/standard-set.ts'
 import { experimentNames } from '../../features/entries/experiments.ts'
+import { SaveStateLine } from '../../features/entries/save-state.tsx'
 import { SaveTrouble } from '../../features/entries/save-trouble.tsx'
 import { SealFoot } from '../../features/entries/seal-foot.tsx'
 import { Spine } from '../../features/entries/spine.tsx'
@@ -99,7 +100,7 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
   return (
     <EditorPartsProvider value={parts}>
       <Ground>
-        <SheetCrumbs {...{ entry, notebook, session, state, editable, saver, text }} />
+        <SheetCrumbs {...{ entry, notebook, session, state, saver, text }} />
         <div className="hs-with-spine">
           <Spine
             notebook={notebook}
@@ -121,7 +122,7 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
               <Sheet>
                 <SheetHeading {...{ entry, notebook, editable }} />
                 <BeamStrip entry={entry} experimentName={experimentNames[entry.experiment]} />
-                {editable && editor && <Toolbar editor={editor} />}
+                {editable && editor && <Toolbar editor={editor} end={<SaveStateLine state={state} />} />}
                 <SheetBody>
                   <SheetRow
                     margin={

@@ -6,7 +6,7 @@ import { queryKeys } from '../../lib/query-keys.ts'
 const pollMs = 1500
 
 /** True when nothing more happens to an export by itself. */
-export function isSettled(bundle: Pick<BundleExport, 'status'>): boolean {
+function isSettled(bundle: Pick<BundleExport, 'status'>): boolean {
   return bundle.status === 'done' || bundle.status === 'failed'
 }
 

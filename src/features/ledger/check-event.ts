@@ -19,7 +19,7 @@ export interface EventCheck {
 }
 
 /** The members of an event that are hashed (shapes 3), without what the interface adds. */
-export function eventOf(view: LedgerEventView): LedgerEvent {
+function eventOf(view: LedgerEventView): LedgerEvent {
   const {
     schema,
     epoch,

@@ -100,7 +100,7 @@ function checkParties({ laboratory, signing }: SignedRecord, expected: Expected)
 }
 
 /** SHA-256 (hex) of the DER inside a PEM certificate. */
-export function certificateSha256(pem: string): string {
+function certificateSha256(pem: string): string {
   const base64 = pem.replace(/-----(BEGIN|END) CERTIFICATE-----/g, '').replace(/\s/g, '')
   return sha256Hex(Uint8Array.from(atob(base64), (character) => character.charCodeAt(0)))
 }

@@ -10,7 +10,7 @@ export function daysSince(iso: string, now: Date): number {
 const numbers = ['No', 'One', 'Two', 'Three', 'Four', 'Five', 'Six', 'Seven', 'Eight', 'Nine', 'Ten']
 
 /** A count at the beginning of a sentence, as a word up to ten. */
-export function countWord(count: number): string {
+function countWord(count: number): string {
   return numbers[count] ?? String(count)
 }
 

@@ -28,7 +28,7 @@ singlephotonsingle singlephotonsource photonphotonphoton laboratorylaboratory
 const list: ReadonlySet<string> = new Set(refused.trim().split(/\s+/))
 
 /** What is left when only what a guesser does not vary is kept: lower case, letters and digits, usual swaps undone. */
-export function plainForm(passphrase: string): string {
+function plainForm(passphrase: string): string {
   return passphrase
     .normalize('NFKC')
     .toLowerCase()
