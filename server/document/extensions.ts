@@ -34,7 +34,12 @@ export const drawnNodes = { Image, MathInline, MathBlock, Calculation, QuotedRes
 /** What the text of a sheet is made of, without the nodes of `drawnNodes`. */
 export const plainExtensions: Extensions = [
   // No trailing node: opening a sheet must never change its text.
-  StarterKit.configure({ link: false, heading: { levels: [1, 2, 3] }, dropcursor: { color: false }, trailingNode: false }),
+  StarterKit.configure({
+    link: false,
+    heading: { levels: [1, 2, 3] },
+    dropcursor: { color: false },
+    trailingNode: false,
+  }),
   TableKit.configure({ table: { resizable: false } }),
   Link,
   Subscript,

@@ -3,7 +3,7 @@ import { pino, type DestinationStream, type Logger } from 'pino'
 export type { Logger }
 
 /** What must never reach a log: cookies, tokens, proofs and whatever wraps a key (threat B6). */
-export const redacted = [
+const redacted = [
   'req.headers.cookie',
   'req.headers.authorization',
   'res.headers["set-cookie"]',

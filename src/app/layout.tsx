@@ -71,7 +71,13 @@ export function Layout() {
         <Outlet />
       </Suspense>
       <SignInAgain />
-      <KeysHelp open={help} onClose={() => setHelp(false)} keys={keyHelp} single={single} onSingle={chooseSingle} />
+      <KeysHelp
+        open={help}
+        onClose={() => setHelp(false)}
+        keys={keyHelp}
+        single={single}
+        onSingle={chooseSingle}
+      />
       <ScrollRestoration />
     </>
   )

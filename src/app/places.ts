@@ -25,7 +25,13 @@ const places: Place[] = [
     roles: everyone,
     also: /^\/(notebooks|entries\/[^/]+$)/,
   },
-  { path: paths.witness, label: 'Witness desk', icon: 'eye', roles: ['supervisor'], also: /^\/entries\/[^/]+\/review/ },
+  {
+    path: paths.witness,
+    label: 'Witness desk',
+    icon: 'eye',
+    roles: ['supervisor'],
+    also: /^\/entries\/[^/]+\/review/,
+  },
   { path: paths.ledger, label: 'Ledger', icon: 'chain', roles: everyone },
   { path: paths.people, label: 'People', icon: 'people', roles: everyone },
 ]

@@ -9,7 +9,11 @@ import { page, pages } from './pages.ts'
 import { paths } from './paths.ts'
 
 export const router = createBrowserRouter([
-  { ...page(paths.signIn, () => import('./pages/sign-in-page.tsx')), HydrateFallback: LoadingPage, ErrorBoundary: ErrorPage },
+  {
+    ...page(paths.signIn, () => import('./pages/sign-in-page.tsx')),
+    HydrateFallback: LoadingPage,
+    ErrorBoundary: ErrorPage,
+  },
   page('/signed-in', () => import('./pages/signed-in-page.tsx')),
   {
     id: 'signed-in',

@@ -10,6 +10,8 @@ export interface QuotableFigure {
   name: string
   /** 0.083 ± 0.011 */
   text: string
+  /** Written into the sentence after the figure; empty for pure numbers. */
+  unit: string
 }
 
 /** What the editor shows and asks for but does not fetch itself; the page gives it. */

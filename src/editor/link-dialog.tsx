@@ -36,7 +36,9 @@ export function LinkDialog({ editor, onClose }: { editor: Editor; onClose: () =>
           label="Address"
           value={address}
           placeholder="https://"
-          error={wrong ? 'Links lead to http, https or mailto addresses, or to an entry of this laboratory.' : null}
+          error={
+            wrong ? 'Links lead to http, https or mailto addresses, or to an entry of this laboratory.' : null
+          }
           onChange={(event) => setAddress(event.target.value)}
         />
         <div className="hs-actions">

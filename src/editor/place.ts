@@ -9,7 +9,10 @@ function afterCurrentBlock(state: EditorState): number {
 }
 
 /** Puts blocks after the one with the cursor, or in place of it when it is an empty paragraph; a line to go on follows. */
-export function insertBlocks(editor: Editor, nodes: { type: string; attrs: Record<string, unknown> }[]): void {
+export function insertBlocks(
+  editor: Editor,
+  nodes: { type: string; attrs: Record<string, unknown> }[],
+): void {
   const { state, view } = editor
   const { $from } = state.selection
   const blocks = nodes.map((node) => state.schema.nodeFromJSON(node))
@@ -21,7 +24,9 @@ export function insertBlocks(editor: Editor, nodes: { type: string; attrs: Recor
   const size = Fragment.from(content).size
   const transaction = state.tr.replaceWith(from, to, content)
   const next = Math.min(from + size - (atEnd ? 1 : 0), transaction.doc.content.size)
-  view.dispatch(transaction.setSelection(TextSelection.near(transaction.doc.resolve(next), -1)).scrollIntoView())
+  view.dispatch(
+    transaction.setSelection(TextSelection.near(transaction.doc.resolve(next), -1)).scrollIntoView(),
+  )
 }
 
 /** Moves the block at a position over its neighbour; null when there is none on that side. */
@@ -44,10 +49,15 @@ function siblingOf(parent: Node, index: number, by: -1 | 1): Node | null {
  * Puts a successor in the place of a calculation: in its block and in every figure quoted from it. One edit, so that one
  * undo takes the curve and the figures back together.
  */
-export function succeedCalculation(state: EditorState, calculationId: string, successorId: string): Transaction {
+export function succeedCalculation(
+  state: EditorState,
+  calculationId: string,
+  successorId: string,
+): Transaction {
   const transaction = state.tr
   state.doc.descendants((node, pos) => {
-    if (node.attrs.calculationId === calculationId) transaction.setNodeAttribute(pos, 'calculationId', successorId)
+    if (node.attrs.calculationId === calculationId)
+      transaction.setNodeAttribute(pos, 'calculationId', successorId)
   })
   return transaction
 }

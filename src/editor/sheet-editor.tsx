@@ -32,7 +32,12 @@ export function SheetEditor({ initial, editable, label, onChange, onReady }: She
       injectCSS: false,
       shouldRerenderOnTransaction: false,
       editorProps: {
-        attributes: { class: 'hs-prose hs-editor', role: 'textbox', 'aria-multiline': 'true', 'aria-label': label },
+        attributes: {
+          class: 'hs-prose hs-editor',
+          role: 'textbox',
+          'aria-multiline': 'true',
+          'aria-label': label,
+        },
         handleClick: (view, _pos, event) => {
           const link = (event.target as HTMLElement).closest('a')
           const href = link?.getAttribute('href')
@@ -56,7 +61,13 @@ export function SheetEditor({ initial, editable, label, onChange, onReady }: She
     <>
       <EditorContent editor={editor} />
       {editable && (
-        <button type="button" className="hs-editor-end" onClick={() => continueAtEnd(editor)} tabIndex={-1} aria-hidden />
+        <button
+          type="button"
+          className="hs-editor-end"
+          onClick={() => continueAtEnd(editor)}
+          tabIndex={-1}
+          aria-hidden
+        />
       )}
       {editable && <TriggerMenu editor={editor} />}
     </>

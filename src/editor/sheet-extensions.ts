@@ -17,13 +17,19 @@ const MathsRules = Extension.create({
       new InputRule({
         find: /(?:^|\s)\$\$([^$]+)\$\$\s$/,
         handler: ({ chain, range, match }) => {
-          chain().deleteRange(range).insertContent({ type: 'mathBlock', attrs: { latex: match[1] } }).run()
+          chain()
+            .deleteRange(range)
+            .insertContent({ type: 'mathBlock', attrs: { latex: match[1] } })
+            .run()
         },
       }),
       new InputRule({
         find: /(^|\s)\$([^$\s](?:[^$]*[^$\s])?)\$\s$/,
         handler: ({ chain, range, match }) => {
-          const content = [{ type: 'mathInline', attrs: { latex: match[2] } }, { type: 'text', text: ' ' }]
+          const content = [
+            { type: 'mathInline', attrs: { latex: match[2] } },
+            { type: 'text', text: ' ' },
+          ]
           chain()
             .insertContentAt(range, match[1] ? [{ type: 'text', text: match[1] }, ...content] : content)
             .run()

@@ -14,29 +14,74 @@ export function Toolbar({ editor, end }: { editor: Editor; end?: ReactNode }) {
   const run = () => editor.chain().focus()
   return (
     <div className="hs-toolbar" role="toolbar" aria-label="Text" onKeyDown={alongTools}>
-      <Tool label="Bold" keys="Ctrl B" on={now.bold} run={() => run().toggleBold().run()} text={<b>B</b>} first />
-      <Tool label="Italic" keys="Ctrl I" on={now.italic} run={() => run().toggleItalic().run()} text={<i>I</i>} />
-      <Tool label="Underlined" keys="Ctrl U" on={now.underline} run={() => run().toggleUnderline().run()} text={<u>U</u>} />
-      <Tool label="Struck out" keys="Ctrl Shift S" on={now.strike} run={() => run().toggleStrike().run()} text={<s>S</s>} />
+      <Tool
+        label="Bold"
+        keys="Ctrl B"
+        on={now.bold}
+        run={() => run().toggleBold().run()}
+        text={<b>B</b>}
+        first
+      />
+      <Tool
+        label="Italic"
+        keys="Ctrl I"
+        on={now.italic}
+        run={() => run().toggleItalic().run()}
+        text={<i>I</i>}
+      />
+      <Tool
+        label="Underlined"
+        keys="Ctrl U"
+        on={now.underline}
+        run={() => run().toggleUnderline().run()}
+        text={<u>U</u>}
+      />
+      <Tool
+        label="Struck out"
+        keys="Ctrl Shift S"
+        on={now.strike}
+        run={() => run().toggleStrike().run()}
+        text={<s>S</s>}
+      />
       <Tool
         label="Lowered"
         keys="Ctrl ,"
         on={now.subscript}
         run={() => run().toggleMark('subscript').run()}
-        text={<span>x<sub>2</sub></span>}
+        text={
+          <span>
+            x<sub>2</sub>
+          </span>
+        }
       />
       <Tool
         label="Raised"
         keys="Ctrl ."
         on={now.superscript}
         run={() => run().toggleMark('superscript').run()}
-        text={<span>x<sup>2</sup></span>}
+        text={
+          <span>
+            x<sup>2</sup>
+          </span>
+        }
       />
       <Tool label="Link" on={now.link} run={() => setLinking(true)} icon="link" />
       <Gap />
-      <Tool label="Section head" keys="##" on={now.head} run={() => run().toggleHeading({ level: 2 }).run()} text="H" />
+      <Tool
+        label="Section head"
+        keys="##"
+        on={now.head}
+        run={() => run().toggleHeading({ level: 2 }).run()}
+        text="H"
+      />
       <Tool label="List" keys="-" on={now.bullets} run={() => run().toggleBulletList().run()} text="•" />
-      <Tool label="Numbered list" keys="1." on={now.numbers} run={() => run().toggleOrderedList().run()} text="1." />
+      <Tool
+        label="Numbered list"
+        keys="1."
+        on={now.numbers}
+        run={() => run().toggleOrderedList().run()}
+        text="1."
+      />
       <Tool
         label="Table"
         run={() => run().insertTable({ rows: 3, cols: 3, withHeaderRow: true }).run()}
@@ -46,19 +91,31 @@ export function Toolbar({ editor, end }: { editor: Editor; end?: ReactNode }) {
       <Tool
         label="Formula"
         keys="$x$"
-        run={() => run().insertContent({ type: 'mathInline', attrs: { latex: '' } }).run()}
+        run={() =>
+          run()
+            .insertContent({ type: 'mathInline', attrs: { latex: '' } })
+            .run()
+        }
         text={<i className="hs-var">ƒ</i>}
       />
       <Tool label="Picture" run={() => parts.askForPicture()} icon="image" />
       <Gap />
-      <Tool label="Calculation" keys="/" run={() => parts.askForCalculation()} icon="trace" words="Calculation" />
+      <Tool
+        label="Calculation"
+        keys="/"
+        run={() => parts.askForCalculation()}
+        icon="trace"
+        words="Calculation"
+      />
       <Tool
         label="Quoted result"
         keys="="
         run={() => {
           const before = editor.state.selection.$from.nodeBefore
           const glued = before?.isText && !/\s$/.test(before.text ?? '')
-          run().insertContent(glued ? ' =' : '=').run()
+          run()
+            .insertContent(glued ? ' =' : '=')
+            .run()
         }}
         text="="
         words="Result"

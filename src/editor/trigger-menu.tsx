@@ -15,7 +15,9 @@ export function TriggerMenu({ editor }: { editor: Editor }) {
   })
   const [closedAt, setClosedAt] = useState<number | null>(null)
   const [chosen, setChosen] = useState(0)
-  const items = trigger ? matching(trigger.kind === 'insert' ? insertItems(parts) : figureItems(parts), trigger.query) : []
+  const items = trigger
+    ? matching(trigger.kind === 'insert' ? insertItems(parts) : figureItems(parts), trigger.query)
+    : []
   const open = trigger !== null && trigger.from !== closedAt && (items.length > 0 || trigger.query === '')
   const query = trigger?.query
   useEffect(() => setChosen(0), [query])

@@ -15,9 +15,19 @@ export interface Trigger {
 export function triggerAt(state: EditorState): Trigger | null {
   const { $from, empty } = state.selection
   if (!empty || !$from.parent.isTextblock || $from.parent.type.spec.code) return null
-  const before = $from.parent.textBetween(Math.max(0, $from.parentOffset - 40), $from.parentOffset, undefined, '\ufffc')
+  const before = $from.parent.textBetween(
+    Math.max(0, $from.parentOffset - 40),
+    $from.parentOffset,
+    undefined,
+    '\ufffc',
+  )
   const found = /(?:^|[\s\ufffc(])([/=])([^\s/=][^\s/=]*|)$/u.exec(before)
   if (!found) return null
   const [, sign, query = ''] = found
-  return { kind: sign === '/' ? 'insert' : 'figure', from: $from.pos - query.length - 1, to: $from.pos, query }
+  return {
+    kind: sign === '/' ? 'insert' : 'figure',
+    from: $from.pos - query.length - 1,
+    to: $from.pos,
+    query,
+  }
 }

@@ -10,7 +10,10 @@ export class ApiProblem extends Error {
   /** Members that belong to the code, for example `attemptsLeft`. */
   readonly extra: Record<string, unknown>
 
-  constructor(body: Pick<ProblemBody, 'code' | 'status' | 'title' | 'detail' | 'errors'>, extra: Record<string, unknown> = {}) {
+  constructor(
+    body: Pick<ProblemBody, 'code' | 'status' | 'title' | 'detail' | 'errors'>,
+    extra: Record<string, unknown> = {},
+  ) {
     super(body.detail)
     this.name = 'ApiProblem'
     this.code = body.code
@@ -43,7 +46,8 @@ export function unreachable(): ApiProblem {
     code: 'unreachable',
     title: 'The notebook server does not answer',
     status: 0,
-    detail: 'The notebook server does not answer. What is on this screen is safe as long as the window stays open.',
+    detail:
+      'The notebook server does not answer. What is on this screen is safe as long as the window stays open.',
   })
 }
 

@@ -29,7 +29,10 @@ export interface Answer<T> {
 }
 
 /** Calls an endpoint of the table and gives its reply, parsed. @throws {ApiProblem} */
-export async function call<N extends EndpointName>(name: N, options: CallOptions<N>): Promise<ReplyOf<Table[N]>> {
+export async function call<N extends EndpointName>(
+  name: N,
+  options: CallOptions<N>,
+): Promise<ReplyOf<Table[N]>> {
   return (await callForAnswer(name, options)).reply
 }
 

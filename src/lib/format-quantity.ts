@@ -52,7 +52,8 @@ export function sizeText(bytes: number): string {
 export function waitText(seconds: number): string {
   const whole = Math.max(0, Math.round(seconds))
   if (whole < 60) return `${whole} s`
-  if (whole < 3600) return whole % 60 === 0 ? `${whole / 60} min` : `${Math.floor(whole / 60)} min ${whole % 60} s`
+  if (whole < 3600)
+    return whole % 60 === 0 ? `${whole / 60} min` : `${Math.floor(whole / 60)} min ${whole % 60} s`
   return `${Math.floor(whole / 3600)} h ${Math.round((whole % 3600) / 60)} min`
 }
 

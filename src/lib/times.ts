@@ -9,7 +9,9 @@ export function setLaboratoryZone(name: string): void {
 }
 
 function format(iso: string | Date, parts: Intl.DateTimeFormatOptions): string {
-  return new Intl.DateTimeFormat('en-GB', { timeZone: zone, hourCycle: 'h23', ...parts }).format(new Date(iso))
+  return new Intl.DateTimeFormat('en-GB', { timeZone: zone, hourCycle: 'h23', ...parts }).format(
+    new Date(iso),
+  )
 }
 
 const clock = { hour: '2-digit', minute: '2-digit' } as const
@@ -58,7 +60,10 @@ export function age(iso: string, now = new Date()): string {
 
 /** Name of the zone with its offset now: Europe/Berlin, UTC+1. */
 export function zoneInWords(now = new Date()): string {
-  const parts = new Intl.DateTimeFormat('en-GB', { timeZone: zone, timeZoneName: 'shortOffset' }).formatToParts(now)
+  const parts = new Intl.DateTimeFormat('en-GB', {
+    timeZone: zone,
+    timeZoneName: 'shortOffset',
+  }).formatToParts(now)
   const offset = parts.find((part) => part.type === 'timeZoneName')?.value.replace('GMT', 'UTC') ?? ''
   return zone === 'UTC' ? 'UTC' : `${zone}, ${offset}`
 }

@@ -17,7 +17,10 @@ interface UploadOptions {
 }
 
 /** Sends one file as multipart, telling how far it is. XMLHttpRequest, because fetch tells nothing of what it sent. */
-export async function upload(name: 'uploadToEntry' | 'uploadToRun', options: UploadOptions): Promise<RawFile> {
+export async function upload(
+  name: 'uploadToEntry' | 'uploadToRun',
+  options: UploadOptions,
+): Promise<RawFile> {
   try {
     return await sendOnce(name, options)
   } catch (error) {
@@ -34,11 +37,13 @@ function sendOnce(name: 'uploadToEntry' | 'uploadToRun', { id, file, signal, onP
     request.responseType = 'json'
     request.setRequestHeader('Accept', 'application/json')
     request.setRequestHeader('X-File-Size', String(file.size))
-    request.upload.onprogress = ({ loaded }) => onProgress({ sent: Math.min(loaded, file.size), total: file.size })
+    request.upload.onprogress = ({ loaded }) =>
+      onProgress({ sent: Math.min(loaded, file.size), total: file.size })
     request.onerror = () => reject(unreachable())
     request.onabort = () => reject(new DOMException('The upload was stopped.', 'AbortError'))
     request.onload = () => {
-      if (request.status !== endpoints[name].status) return reject(problemFrom(request.status, request.response))
+      if (request.status !== endpoints[name].status)
+        return reject(problemFrom(request.status, request.response))
       const parsed = endpoints[name].reply.safeParse(request.response)
       if (parsed.success) resolve(parsed.data)
       else reject(problemFrom(502, null))

@@ -22,7 +22,10 @@ function answers(...responses: (Response | Error)[]) {
 const json = (body: unknown, status = 200, headers: Record<string, string> = {}) =>
   new Response(JSON.stringify(body), { status, headers: { 'Content-Type': 'application/json', ...headers } })
 const problem = (code: keyof typeof problemTable, more: object = {}) =>
-  json({ type: `urn:halfsilver:problem:${code}`, code, ...problemTable[code], detail: 'In words.', ...more }, problemTable[code].status)
+  json(
+    { type: `urn:halfsilver:problem:${code}`, code, ...problemTable[code], detail: 'In words.', ...more },
+    problemTable[code].status,
+  )
 
 afterEach(() => void vi.unstubAllGlobals())
 
@@ -30,7 +33,9 @@ describe('addresses', () => {
   test('path parameters are filled in and encoded, queries appended, absent ones left out', () => {
     expect(urlOf('getRevision', { id, n: 3 })).toBe(`/api/v1/entries/${id}/revisions/3`)
     expect(urlOf('getEntry', { id: 'a/b' })).toBe('/api/v1/entries/a%2Fb')
-    expect(urlOf('listEntries', { id }, { limit: 20, cursor: undefined })).toBe(`/api/v1/notebooks/${id}/entries?limit=20`)
+    expect(urlOf('listEntries', { id }, { limit: 20, cursor: undefined })).toBe(
+      `/api/v1/notebooks/${id}/entries?limit=20`,
+    )
     expect(() => urlOf('getEntry')).toThrow('id')
   })
 })
@@ -59,7 +64,9 @@ describe('calls', () => {
 describe('problems', () => {
   test('code, words, fields and members of the code are kept (RFC 9457)', async () => {
     answers(problem('wrong-passphrase', { attemptsLeft: 3, errors: [{ pointer: '/proof', detail: 'no' }] }))
-    const error = await call('unlockSigningKey', { body: { proof: 'AAAA' } }).catch((thrown: unknown) => thrown)
+    const error = await call('unlockSigningKey', { body: { proof: 'AAAA' } }).catch(
+      (thrown: unknown) => thrown,
+    )
     expect(error).toBeInstanceOf(ApiProblem)
     expect(error).toMatchObject({
       code: 'wrong-passphrase',
@@ -72,7 +79,10 @@ describe('problems', () => {
 
   test('a page of a proxy becomes a sentence, not a parse error', async () => {
     answers(new Response('<html>Bad gateway</html>', { status: 502 }))
-    await expect(call('getEntry', { params: { id } })).rejects.toMatchObject({ status: 502, code: 'service-unavailable' })
+    await expect(call('getEntry', { params: { id } })).rejects.toMatchObject({
+      status: 502,
+      code: 'service-unavailable',
+    })
   })
 
   test('no answer at all is `unreachable`, and only such problems may pass by waiting', async () => {
@@ -80,7 +90,12 @@ describe('problems', () => {
     const error = await call('getEntry', { params: { id } }).catch((thrown: unknown) => thrown)
     expect(error).toMatchObject({ status: 0, code: 'unreachable' })
     expect(mayPass(error)).toBe(true)
-    expect([412, 409, 422, 403].map((status) => mayPass(problemFrom(status, null)))).toEqual([false, false, false, false])
+    expect([412, 409, 422, 403].map((status) => mayPass(problemFrom(status, null)))).toEqual([
+      false,
+      false,
+      false,
+      false,
+    ])
   })
 
   test('before anyone has signed in a 401 is thrown at once', async () => {

@@ -3,8 +3,18 @@ import { emptyDocument } from '../../server/document/index.ts'
 import { ContentSaver, type SaverPorts } from '../../src/features/entries/content-saver.ts'
 import { ApiProblem, unreachable } from '../../src/lib/api-problem.ts'
 
-const stale = new ApiProblem({ code: 'stale-content', status: 412, title: 'Someone else saved first', detail: 'x' })
-const sealed = new ApiProblem({ code: 'wrong-state', status: 409, title: 'Not possible', detail: 'The entry is sealed.' })
+const stale = new ApiProblem({
+  code: 'stale-content',
+  status: 412,
+  title: 'Someone else saved first',
+  detail: 'x',
+})
+const sealed = new ApiProblem({
+  code: 'wrong-state',
+  status: 409,
+  title: 'Not possible',
+  detail: 'The entry is sealed.',
+})
 
 /** A server that keeps one text under If-Match, as HTTP says (RFC 9110, 13.1.1). */
 function server() {
@@ -52,7 +62,10 @@ describe('autosave', () => {
     const { saver, ports } = server()
     let answer = () => {}
     ports.put.mockImplementationOnce(
-      () => new Promise((resolve) => (answer = () => resolve({ etag: '"0"', savedAt: '2026-11-12T13:58:31.000Z' }))),
+      () =>
+        new Promise(
+          (resolve) => (answer = () => resolve({ etag: '"0"', savedAt: '2026-11-12T13:58:31.000Z' })),
+        ),
     )
     saver.changed()
     await vi.advanceTimersByTimeAsync(1500)

@@ -4,7 +4,12 @@ import { z } from 'zod'
 import { coincidences } from '../../server/physics/kinds/coincidences/definition.ts'
 import { singles } from '../../server/physics/kinds/singles/definition.ts'
 import type { JsonSchema } from '../../src/features/calculations/json-schema.ts'
-import { parameterForm, pointerOf, withValue, type ParameterLeaf } from '../../src/features/calculations/parameter-fields.ts'
+import {
+  parameterForm,
+  pointerOf,
+  withValue,
+  type ParameterLeaf,
+} from '../../src/features/calculations/parameter-fields.ts'
 import { shifted, textOf, valueOf } from '../../src/features/calculations/parameter-text.ts'
 
 const jsonSchemaOf = (schema: z.ZodType) => z.toJSONSchema(schema, { io: 'input' }) as JsonSchema
@@ -25,7 +30,14 @@ const leaf = (form: ParameterLeaf['form'], value: unknown, unit?: string): Param
 describe('fields from the schema of a kind', () => {
   test('given and defaulted values become fields with their titles, in the order of the schema', () => {
     const labels = parameterForm(pairs, pairParameters).given.map((field) => field.label)
-    expect(labels.slice(0, 6)).toEqual(['Channel A', 'Channel B', 'Window', 'Delay', 'Off-peak windows', 'Off-peak step'])
+    expect(labels.slice(0, 6)).toEqual([
+      'Channel A',
+      'Channel B',
+      'Window',
+      'Delay',
+      'Off-peak windows',
+      'Off-peak step',
+    ])
     expect(labels).toContain('Dark rate A')
   })
 
@@ -53,7 +65,10 @@ describe('fields from the schema of a kind', () => {
       z.strictObject({
         fit: z
           .union([
-            z.strictObject({ model: z.literal('two-level'), level: z.enum(['fixed', 'free']).default('fixed') }),
+            z.strictObject({
+              model: z.literal('two-level'),
+              level: z.enum(['fixed', 'free']).default('fixed'),
+            }),
             z.strictObject({ model: z.literal('decay'), from: z.number() }),
           ])
           .optional()
@@ -61,7 +76,9 @@ describe('fields from the schema of a kind', () => {
       }),
     )
     expect(parameterForm(schema, {}).absent[0]?.start).toEqual({ model: 'two-level' })
-    expect(parameterForm(schema, { fit: { model: 'decay', from: 3 } }).given.map((field) => field.path)).toEqual([['fit', 'from']])
+    expect(
+      parameterForm(schema, { fit: { model: 'decay', from: 3 } }).given.map((field) => field.path),
+    ).toEqual([['fit', 'from']])
   })
 })
 
@@ -91,13 +108,17 @@ describe('times', () => {
   })
 
   test('parts of a picosecond and words are refused with a sentence', () => {
-    expect(valueOf(leaf('whole-time', 2000, 'ps'), '0.0005')).toEqual({ refusal: 'Times are whole picoseconds.' })
+    expect(valueOf(leaf('whole-time', 2000, 'ps'), '0.0005')).toEqual({
+      refusal: 'Times are whole picoseconds.',
+    })
     expect(valueOf(leaf('whole-time', 2000, 'ps'), 'wide')).toHaveProperty('refusal')
     expect(valueOf(leaf('time', 350, 'ps'), '350.5 ps')).toEqual({ value: 350.5 })
   })
 
   test('beyond 2^53 they stay exact, as text', () => {
-    expect(valueOf(leaf('whole-time', 1e15, 'ps'), '9007.199254740993 s')).toEqual({ value: '9007199254740993' })
+    expect(valueOf(leaf('whole-time', 1e15, 'ps'), '9007.199254740993 s')).toEqual({
+      value: '9007199254740993',
+    })
   })
 
   test('any whole time survives being shown and read', () => {
@@ -111,13 +132,13 @@ describe('times', () => {
   })
 
   test('moving the point loses nothing', () => {
-    expect([shifted('2.5', 3), shifted('500', -3), shifted('1e-3', 3), shifted('-0.25', 2), shifted('0', -3)]).toEqual([
-      '2500',
-      '0.5',
-      '1',
-      '-25',
-      '0',
-    ])
+    expect([
+      shifted('2.5', 3),
+      shifted('500', -3),
+      shifted('1e-3', 3),
+      shifted('-0.25', 2),
+      shifted('0', -3),
+    ]).toEqual(['2500', '0.5', '1', '-25', '0'])
   })
 })
 
@@ -132,9 +153,15 @@ describe('other values', () => {
     ['json', 'plain words', { value: 'plain words' }],
     ['yes-no', 'yes', { value: true }],
   ] as const)('%s %s', (form, text, expected) =>
-    expect(valueOf(leaf(form, { unit: 'cps' }), text)).toEqual(expected))
+    expect(valueOf(leaf(form, { unit: 'cps' }), text)).toEqual(expected),
+  )
 
-  test.each([['integer', '1.5'], ['number', 'many'], ['integers', '1, two'], ['quantity', '87 ± 4 ± 1']] as const)('%s refuses %s', (form, text) => {
+  test.each([
+    ['integer', '1.5'],
+    ['number', 'many'],
+    ['integers', '1, two'],
+    ['quantity', '87 ± 4 ± 1'],
+  ] as const)('%s refuses %s', (form, text) => {
     expect(valueOf(leaf(form, null), text)).toHaveProperty('refusal')
   })
 })

@@ -7,8 +7,8 @@ import { visitorOf } from './access.ts'
  * Per person, or per address where nobody is signed in. A script that starts calculations and asks for each ten times a
  * second makes some 1200 calls a minute.
  */
-export const CALLS_PER_MINUTE = 3000
-export const SIGN_INS_PER_MINUTE = 120
+const CALLS_PER_MINUTE = 3000
+const SIGN_INS_PER_MINUTE = 120
 
 export function limitCalls(): RequestHandler {
   return limiter(CALLS_PER_MINUTE, true)

@@ -17,12 +17,12 @@ declare module 'express-session' {
 }
 
 /** However active somebody is, after this a session ends. */
-export const SESSION_HOURS = 12
+const SESSION_HOURS = 12
 /** Without a sign of the person for this long a session ends. */
-export const IDLE_MINUTES = 30
+const IDLE_MINUTES = 30
 
 /** The port is in the name because cookies ignore ports: two copies side by side would sign each other out. */
-export function sessionCookieName(port: number): string {
+function sessionCookieName(port: number): string {
   return `__Host-hs-${port}`
 }
 
@@ -105,7 +105,7 @@ export async function sessionActor(services: Services, req: Request): Promise<Ac
   return actor
 }
 
-export function hasEnded(startedAt: string, activeAt: string, now: Date): boolean {
+function hasEnded(startedAt: string, activeAt: string, now: Date): boolean {
   return now.getTime() >= endsAt(startedAt).getTime() || now.getTime() > idleEndsAt(activeAt).getTime()
 }
 

@@ -13,7 +13,4 @@ export const queueNames = [
 
 export type QueueName = (typeof queueNames)[number]
 
-/** Queues that worker processes serve, under the role hs_worker; all others are served beside the API, under hs_app. */
-export const workerQueues: readonly QueueName[] = ['read-file', 'calculate']
-
 export const queueSchema = 'queue'

@@ -127,6 +127,6 @@ export function openObjectStore({
 const missingCodes = ['NotFound', 'NoSuchKey', 'NoSuchVersion', 'NoSuchBucket']
 
 /** True for the error that an absent object gives. */
-export function isMissing(error: unknown): boolean {
+function isMissing(error: unknown): boolean {
   return error instanceof Error && 'code' in error && missingCodes.includes(String(error.code))
 }

@@ -8,5 +8,11 @@ export function CurvePreview({ calculationId }: { calculationId: string }) {
   const panel = figure?.panels[0]
   const series = panel?.series.find((each) => each.mark === 'points') ?? panel?.series[0]
   if (!panel || !series) return null
-  return <Preview x={series.x} y={series.y} reference={panel.references.find(({ axis }) => axis === 'y')?.at ?? null} />
+  return (
+    <Preview
+      x={series.x}
+      y={series.y}
+      reference={panel.references.find(({ axis }) => axis === 'y')?.at ?? null}
+    />
+  )
 }

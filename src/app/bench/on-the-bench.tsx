@@ -15,7 +15,10 @@ import { entryPath } from '../paths.ts'
 export function OnTheBench({ entry, run }: { entry: Entry | undefined; run: Run | undefined }) {
   const variant = run && variantOf(run.experiment)
   const curve = entry?.calculations.findLast((each) => each.status === 'done' && each.figures.length > 0)
-  const { data: figure } = useQuery({ ...figureQuery(curve?.id ?? '', 'latest'), enabled: curve !== undefined })
+  const { data: figure } = useQuery({
+    ...figureQuery(curve?.id ?? '', 'latest'),
+    enabled: curve !== undefined,
+  })
   if (!run || !entry || !variant) return null
   const nodes = beamNodes(entry, run, variant)
   const lit = hasFigures(nodes)

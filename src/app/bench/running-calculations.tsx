@@ -10,7 +10,9 @@ import { entryPath } from '../paths.ts'
 /** Calculations under way on the person's sheets; the section is there only while there are any. */
 export function RunningCalculations({ entries }: { entries: Entry[] }) {
   const going = entries.flatMap((entry) =>
-    entry.calculations.filter(({ status }) => isGoingOn(status)).map((calculation) => ({ entry, calculation })),
+    entry.calculations
+      .filter(({ status }) => isGoingOn(status))
+      .map((calculation) => ({ entry, calculation })),
   )
   const details = useQueries({ queries: going.map(({ calculation }) => calculationQuery(calculation.id)) })
   if (going.length === 0) return null

@@ -12,7 +12,10 @@ import { CurvePreview } from './curve-preview.tsx'
 const shown = 6
 
 /** The latest runs over all notebooks, with the last finished calculation of their sheet. */
-export function useRecentRuns(notebooks: Notebook[], entries: EntrySummary[]): (ShownRun & { entry: Entry | undefined })[] {
+export function useRecentRuns(
+  notebooks: Notebook[],
+  entries: EntrySummary[],
+): (ShownRun & { entry: Entry | undefined })[] {
   const runs = useQueries({
     queries: notebooks.map((notebook) => latestRunsQuery(notebook.id)),
     combine: (answers) => answers.flatMap(({ data }) => data?.items ?? []),
@@ -26,7 +29,9 @@ export function useRecentRuns(notebooks: Notebook[], entries: EntrySummary[]): (
   return latest.map((run) => {
     const entry = full.find((each) => each.id === run.entryId)
     const summary = entry ?? entries.find((each) => each.id === run.entryId)
-    const last = entry?.calculations.findLast((each) => each.status === 'done' && !each.stale && each.figures.length > 0)
+    const last = entry?.calculations.findLast(
+      (each) => each.status === 'done' && !each.stale && each.figures.length > 0,
+    )
     const figure = last?.figures[0]
     return {
       run,
@@ -36,7 +41,8 @@ export function useRecentRuns(notebooks: Notebook[], entries: EntrySummary[]): (
       preview: last ? <CurvePreview calculationId={last.id} /> : null,
       result: figure ? (
         <>
-          <FigureName label={figure.label} equals /> <Quantity value={figure.value} u={figure.u} unit={figure.unit ?? ''} />
+          <FigureName label={figure.label} equals />{' '}
+          <Quantity value={figure.value} u={figure.u} unit={figure.unit ?? ''} />
         </>
       ) : (
         <span className="hs-quiet">not computed</span>

@@ -101,7 +101,8 @@ function Empty({ notebook }: { notebook: Notebook }) {
         templates={here.possible && <Templates here={here} withAbout />}
         actions={here.possible && <BlankSheetButton here={here} />}
       >
-        A sheet holds one piece of work: what you set out to do, the runs, the calculations and the signatures.
+        A sheet holds one piece of work: what you set out to do, the runs, the calculations and the
+        signatures.
         {here.possible && ' Pick the experiment that is on the table; its beam path comes with it.'}
       </EmptyState>
       <section className="hs-sheet hs-empty" aria-label="People">

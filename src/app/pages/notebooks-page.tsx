@@ -34,7 +34,8 @@ export function Component() {
     <Ground holes={empty}>
       {empty ? (
         <EmptyState picture={<ClosedSetUp variant="hbt" />} title="No notebooks yet" actions={create}>
-          A notebook holds the sheets of one piece of research. Those that you write, witness or read in appear here.
+          A notebook holds the sheets of one piece of research. Those that you write, witness or read in
+          appear here.
         </EmptyState>
       ) : (
         <>

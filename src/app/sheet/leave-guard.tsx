@@ -7,7 +7,8 @@ import { Dialog } from '../../ui/dialog.tsx'
 /** Going to another place saves first. Where that is not possible, it asks, and the harmless choice is to stay. */
 export function LeaveGuard({ saver }: { saver: ContentSaver }) {
   const blocker = useBlocker(
-    ({ currentLocation, nextLocation }) => currentLocation.pathname !== nextLocation.pathname && saver.hasUnsaved(),
+    ({ currentLocation, nextLocation }) =>
+      currentLocation.pathname !== nextLocation.pathname && saver.hasUnsaved(),
   )
   const [asking, setAsking] = useState(false)
 

@@ -37,9 +37,7 @@ export function SheetCrumbs({ entry, notebook, session, state, saver, text }: Sh
           {sheetNumber(entry.number)}
         </b>,
       ]}
-      beside={
-        <StateGlyph state={glyphOf(entry.phase)} />
-      }
+      beside={<StateGlyph state={glyphOf(entry.phase)} />}
       acts={
         <>
           <LifeActs entry={entry} me={me} />
@@ -55,7 +53,13 @@ export function SheetCrumbs({ entry, notebook, session, state, saver, text }: Sh
             </Button>
           ) : (
             <SignAct
-              sheet={{ entry, me, laboratoryId: session.laboratory.id, shownContent: text, save: () => saver.flush() }}
+              sheet={{
+                entry,
+                me,
+                laboratoryId: session.laboratory.id,
+                shownContent: text,
+                save: () => saver.flush(),
+              }}
             />
           )}
         </>

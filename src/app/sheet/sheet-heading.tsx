@@ -18,7 +18,10 @@ interface SheetHeadingProps {
 export function SheetHeading({ entry, notebook, editable }: SheetHeadingProps) {
   const { amends, amendedBy } = entry
   const witnesses = notebook.members
-    .filter((member) => member.role === 'supervisor' && !entry.authors.some((author) => author.personId === member.personId))
+    .filter(
+      (member) =>
+        member.role === 'supervisor' && !entry.authors.some((author) => author.personId === member.personId),
+    )
     .map((member) => member.name)
   return (
     <SheetHead
@@ -29,7 +32,9 @@ export function SheetHeading({ entry, notebook, editable }: SheetHeadingProps) {
         </>,
         authorsInWords(entry.authors),
         `begun ${dateAndTime(entry.createdAt)}`,
-        ...(amends ? [<AmendsLink key="amends" words="Amends" entryId={amends.entryId} number={amends.number} />] : []),
+        ...(amends
+          ? [<AmendsLink key="amends" words="Amends" entryId={amends.entryId} number={amends.number} />]
+          : []),
         ...amendedBy.map((by) => <AmendsLink key={by.entryId} words="Amended by" {...by} />),
       ]}
       facts={

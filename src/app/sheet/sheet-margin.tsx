@@ -24,7 +24,7 @@ export function SheetMargin({ entry, editable, onStandardSet }: SheetMarginProps
         <RunPart key={run.id} run={run} entryId={entry.id} editable={editable} />
       ))}
       {filesOf(entry).map((file) => (
-        <div key={file.id} id={file.id} tabIndex={-1}>
+        <div key={file.id} id={file.id} tabIndex={-1} data-beside={used.get(file.id)?.join(' ')}>
           <FileChip
             file={file}
             editable={editable}

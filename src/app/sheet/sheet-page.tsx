@@ -35,6 +35,7 @@ import { SheetCrumbs } from './sheet-crumbs.tsx'
 import { SheetHeading } from './sheet-heading.tsx'
 import { SheetMargin } from './sheet-margin.tsx'
 import { StandingMessage } from './standing-message.tsx'
+import { useBeside } from './use-beside.ts'
 import { useFollowServer } from './use-follow-server.ts'
 import { useNewAuthor } from './use-new-author.ts'
 import { filesOf } from './use-open-entry.ts'
@@ -55,9 +56,13 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
   const editable = entry.allowed.includes('edit')
   const [editor, setEditor] = useState<Editor | null>(null)
   const [asking, setAsking] = useState(false)
+  const body = useRef<HTMLDivElement>(null)
   const fileField = useRef<HTMLInputElement>(null)
   const pictureField = useRef<HTMLInputElement>(null)
-  const text = useCallback(() => (editor ? (editor.getJSON() as NormalDocument) : content.document), [editor, content])
+  const text = useCallback(
+    () => (editor ? (editor.getJSON() as NormalDocument) : content.document),
+    [editor, content],
+  )
   const { saver, state } = useContentSaver(entry.id, content.etag, text)
   const asks = useMemo(
     () => ({ calculation: () => setAsking(true), picture: () => pictureField.current?.click() }),
@@ -66,6 +71,7 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
   const { parts, leaving, stay } = useSheetParts(entry, editable, asks)
   const start = useStartCalculations(entry.id)
   useFollowServer(entry.id, editor, saver)
+  useBeside(body)
   useEffect(() => () => void saver.leave(), [saver])
   useNewAuthor(entry, state)
   useKeys({ e: () => editable && editor?.commands.focus('end') })
@@ -74,17 +80,25 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
   const addFiles = useCallback((files: File[]) => list.add(files), [list])
 
   function placePicture(file: RawFile) {
-    if (editor && isPicture(file.name)) insertBlocks(editor, [{ type: 'image', attrs: { fileId: file.id, alt: '', caption: '' } }])
+    if (editor && isPicture(file.name))
+      insertBlocks(editor, [{ type: 'image', attrs: { fileId: file.id, alt: '', caption: '' } }])
   }
 
   function placeCalculations(ids: string[]) {
     setAsking(false)
-    if (editor) insertBlocks(editor, ids.map((calculationId) => ({ type: 'calculation', attrs: { calculationId } })))
+    if (editor)
+      insertBlocks(
+        editor,
+        ids.map((calculationId) => ({ type: 'calculation', attrs: { calculationId } })),
+      )
   }
 
   function startStandardSet(fileId: string) {
     const file = filesOf(entry).find((each) => each.id === fileId)
-    if (file) start.mutate(standardSet(file), { onSuccess: (started) => placeCalculations(started.map(({ id }) => id)) })
+    if (file)
+      start.mutate(standardSet(file), {
+        onSuccess: (started) => placeCalculations(started.map(({ id }) => id)),
+      })
   }
 
   function takeTheirs(document: NormalDocument, etag: string) {
@@ -123,34 +137,39 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
                 <SheetHeading {...{ entry, notebook, editable }} />
                 <BeamStrip entry={entry} experimentName={experimentNames[entry.experiment]} />
                 {editable && editor && <Toolbar editor={editor} end={<SaveStateLine state={state} />} />}
-                <SheetBody>
-                  <SheetRow
-                    margin={
-                      <>
-                        <SheetMargin {...{ entry, editable }} onStandardSet={editable ? startStandardSet : null} />
-                        {uploads.length > 0 && <UploadLines list={list} uploads={uploads} />}
-                        {editable && (
-                          <div className="hs-attach">
-                            <Button size="small" icon="upload" onClick={() => fileField.current?.click()}>
-                              Attach files
-                            </Button>
-                            <span className="hs-quiet">or drop them anywhere on the sheet</span>
-                          </div>
-                        )}
-                      </>
-                    }
-                  >
-                    <StandingMessage entry={entry} editable={editable} />
-                    {start.isError && <Message kind="fault">{sentenceOf(start.error)}</Message>}
-                    <SheetEditor
-                      initial={content.document}
-                      editable={editable}
-                      label={`Text of ${entry.number}`}
-                      onChange={() => saver.changed()}
-                      onReady={setEditor}
-                    />
-                  </SheetRow>
-                </SheetBody>
+                <div ref={body}>
+                  <SheetBody>
+                    <SheetRow
+                      margin={
+                        <>
+                          <SheetMargin
+                            {...{ entry, editable }}
+                            onStandardSet={editable ? startStandardSet : null}
+                          />
+                          {uploads.length > 0 && <UploadLines list={list} uploads={uploads} />}
+                          {editable && (
+                            <div className="hs-attach">
+                              <Button size="small" icon="upload" onClick={() => fileField.current?.click()}>
+                                Attach files
+                              </Button>
+                              <span className="hs-quiet">or drop them anywhere on the sheet</span>
+                            </div>
+                          )}
+                        </>
+                      }
+                    >
+                      <StandingMessage entry={entry} editable={editable} />
+                      {start.isError && <Message kind="fault">{sentenceOf(start.error)}</Message>}
+                      <SheetEditor
+                        initial={content.document}
+                        editable={editable}
+                        label={`Text of ${entry.number}`}
+                        onChange={() => saver.changed()}
+                        onReady={setEditor}
+                      />
+                    </SheetRow>
+                  </SheetBody>
+                </div>
                 <SealFoot entry={entry}>
                   <SignatureList signatures={entry.signatures} />
                 </SealFoot>

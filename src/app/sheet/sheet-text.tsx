@@ -20,7 +20,13 @@ export function SheetText({ entry, content, onReady = nothing }: SheetTextProps)
   const { parts, leaving, stay } = useSheetParts(entry, false)
   return (
     <EditorPartsProvider value={parts}>
-      <SheetEditor initial={content} editable={false} label={`Text of ${entry.number}`} onChange={nothing} onReady={onReady} />
+      <SheetEditor
+        initial={content}
+        editable={false}
+        label={`Text of ${entry.number}`}
+        onChange={nothing}
+        onReady={onReady}
+      />
       <OutsideLink href={leaving} onClose={stay} />
     </EditorPartsProvider>
   )

@@ -16,7 +16,8 @@ export function StandingMessage({ entry, editable }: { entry: Entry; editable: b
     const missing = entry.authors.filter((author) => !author.signed).map((author) => author.name)
     return (
       <Message title="Locked while the authors sign.">
-        {missing.join(' and ')} must still sign. To change the text it must be reopened, which voids the signatures given.
+        {missing.join(' and ')} must still sign. To change the text it must be reopened, which voids the
+        signatures given.
       </Message>
     )
   }
@@ -27,8 +28,11 @@ export function StandingMessage({ entry, editable }: { entry: Entry; editable: b
       </Message>
     )
   }
-  if (phase === 'sealed' && seal) return <Message title="Sealed.">Nothing here can change; an addendum can amend it.</Message>
-  if (phase === 'withdrawn') return <Message title="Withdrawn.">It keeps its number and stays readable for ever.</Message>
-  if (!editable) return <Message title="You read this sheet.">Those who write in this notebook can change it.</Message>
+  if (phase === 'sealed' && seal)
+    return <Message title="Sealed.">Nothing here can change; an addendum can amend it.</Message>
+  if (phase === 'withdrawn')
+    return <Message title="Withdrawn.">It keeps its number and stays readable for ever.</Message>
+  if (!editable)
+    return <Message title="You read this sheet.">Those who write in this notebook can change it.</Message>
   return null
 }

@@ -10,6 +10,7 @@ export function useNewAuthor(entry: Entry, state: SaveState): void {
   const savedAt = state.name === 'saved' ? state.at : null
   const maySign = entry.allowed.includes('sign:authorship')
   useEffect(() => {
-    if (savedAt !== null && !maySign) void client.invalidateQueries({ queryKey: queryKeys.entry(entry.id), exact: true })
+    if (savedAt !== null && !maySign)
+      void client.invalidateQueries({ queryKey: queryKeys.entry(entry.id), exact: true })
   }, [client, entry.id, savedAt, maySign])
 }

@@ -22,7 +22,8 @@ export function filesOf(entry: Entry): RawFile[] {
 
 function isGoingOn(entry: Entry): boolean {
   return (
-    filesOf(entry).some(({ reading, state }) => reading.status === 'pending' || state === 'receiving' || state === 'stored') ||
-    entry.calculations.some(({ status }) => status === 'queued' || status === 'running')
+    filesOf(entry).some(
+      ({ reading, state }) => reading.status === 'pending' || state === 'receiving' || state === 'stored',
+    ) || entry.calculations.some(({ status }) => status === 'queued' || status === 'running')
   )
 }

@@ -5,7 +5,7 @@ import type { EditorParts, QuotableFigure } from '../../editor/editor-parts.ts'
 import { CalculationBlock } from '../../features/calculations/calculation-block.tsx'
 import { QuotedFigure } from '../../features/calculations/quoted-figure.tsx'
 import '../../features/calculations/calculations.css'
-import { figureInFull } from '../../lib/format-quantity.ts'
+import { figureWithoutUnit, unitText } from '../../lib/format-quantity.ts'
 import { urlOf } from '../../lib/url-of.ts'
 
 interface Asks {
@@ -33,7 +33,8 @@ export function useSheetParts(entry: Entry, editable: boolean, asks: Asks = noth
       askForCalculation: asks.calculation,
       askForPicture: asks.picture,
       openLink: (href) => {
-        if (href.startsWith('#')) document.querySelector(`[data-id="${CSS.escape(href.slice(1))}"]`)?.scrollIntoView()
+        if (href.startsWith('#'))
+          document.querySelector(`[data-id="${CSS.escape(href.slice(1))}"]`)?.scrollIntoView()
         else if (href.startsWith('/')) void navigate(href)
         else setLeaving(href)
       },
@@ -52,7 +53,8 @@ function figuresOf(entry: Entry): QuotableFigure[] {
       pointer: figure.pointer,
       calculation: label,
       name: figure.label,
-      text: figureInFull(figure),
+      text: figureWithoutUnit(figure),
+      unit: unitText(figure.unit),
     })),
   )
 }

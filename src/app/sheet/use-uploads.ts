@@ -37,7 +37,9 @@ export function useUploads(entry: Entry, onStored: (file: RawFile) => void) {
 
   async function runTarget(now: Entry): Promise<UploadTarget> {
     const open = now.runs.findLast((run) => !run.frozen)
-    const run = open ?? (await call('createRunInEntry', { params: { id: now.id }, body: { experiment: now.experiment } }))
+    const run =
+      open ??
+      (await call('createRunInEntry', { params: { id: now.id }, body: { experiment: now.experiment } }))
     if (!open) await client.invalidateQueries({ queryKey: queryKeys.entry(now.id), exact: true })
     return { name: 'uploadToRun', id: run.id }
   }

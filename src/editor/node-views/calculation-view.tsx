@@ -29,7 +29,9 @@ export function CalculationView({ node, editor, getPos, deleteNode }: ReactNodeV
   )
   return (
     <NodeViewWrapper className="hs-block-place" contentEditable={false} data-node-id={node.attrs.id}>
-      {parts.calculation(id, acts, (successorId) => editor.view.dispatch(succeedCalculation(editor.state, id, successorId)))}
+      {parts.calculation(id, acts, (successorId) =>
+        editor.view.dispatch(succeedCalculation(editor.state, id, successorId)),
+      )}
     </NodeViewWrapper>
   )
 }

@@ -5,7 +5,12 @@ import { useEditorParts } from '../editor-parts.ts'
 /** A picture with its caption; what it shows is also said in words for those who cannot see it. */
 export function ImageView({ node, editor, selected, updateAttributes, deleteNode }: ReactNodeViewProps) {
   const parts = useEditorParts()
-  const { fileId, alt, caption, width } = node.attrs as { fileId: string; alt: string; caption: string; width: number | null }
+  const { fileId, alt, caption, width } = node.attrs as {
+    fileId: string
+    alt: string
+    caption: string
+    width: number | null
+  }
   return (
     <NodeViewWrapper className="hs-picture" contentEditable={false} data-selected={selected ? '' : undefined}>
       <img src={parts.imageAddress(fileId)} alt={alt} width={width ?? undefined} />

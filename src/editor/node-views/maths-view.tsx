@@ -6,7 +6,15 @@ export const MathInlineView = (props: ReactNodeViewProps) => <MathsView {...prop
 export const MathBlockView = (props: ReactNodeViewProps) => <MathsView {...props} display />
 
 /** A formula; pressing it, or reaching it with the keys and pressing Enter, opens its LaTeX under it. */
-function MathsView({ node, editor, selected, display, getPos, updateAttributes, deleteNode }: ReactNodeViewProps & { display: boolean }) {
+function MathsView({
+  node,
+  editor,
+  selected,
+  display,
+  getPos,
+  updateAttributes,
+  deleteNode,
+}: ReactNodeViewProps & { display: boolean }) {
   const latex = String(node.attrs.latex)
   const [editing, setEditing] = useState(latex === '' && editor.isEditable)
 
@@ -33,7 +41,11 @@ function MathsView({ node, editor, selected, display, getPos, updateAttributes, 
 
   const Tag = display ? 'div' : 'span'
   return (
-    <NodeViewWrapper as={Tag} className={display ? 'hs-maths-block' : 'hs-maths-inline'} contentEditable={false}>
+    <NodeViewWrapper
+      as={Tag}
+      className={display ? 'hs-maths-block' : 'hs-maths-inline'}
+      contentEditable={false}
+    >
       <span onClick={() => editor.isEditable && setEditing(true)} data-selected={selected ? '' : undefined}>
         {latex !== '' && !editing && <Maths latex={latex} display={display} />}
       </span>
@@ -42,7 +54,15 @@ function MathsView({ node, editor, selected, display, getPos, updateAttributes, 
   )
 }
 
-function LatexField({ latex, display, onClose }: { latex: string; display: boolean; onClose: (latex: string) => void }) {
+function LatexField({
+  latex,
+  display,
+  onClose,
+}: {
+  latex: string
+  display: boolean
+  onClose: (latex: string) => void
+}) {
   const [text, setText] = useState(latex)
   const field = useRef<HTMLTextAreaElement>(null)
   useEffect(() => {

@@ -13,7 +13,9 @@ export function Maths({ latex, display }: { latex: string; display: boolean }) {
       setWrong(null)
     } catch (error) {
       place.current.textContent = latex
-      setWrong(error instanceof Error ? error.message.replace(/^KaTeX parse error: /, '') : 'It cannot be set.')
+      setWrong(
+        error instanceof Error ? error.message.replace(/^KaTeX parse error: /, '') : 'It cannot be set.',
+      )
     }
   }, [latex, display])
   return (

@@ -61,7 +61,7 @@ function toWitness(entry: Waiting): Need {
 
 function outOfDate(entry: Entry): Need[] {
   if (!entry.allowed.includes('edit')) return []
-  return entry.calculations
+  return newest(entry)
     .filter((calculation) => calculation.stale || calculation.status === 'failed')
     .map((calculation) => ({
       key: `calculation-${calculation.id}`,
@@ -69,7 +69,9 @@ function outOfDate(entry: Entry): Need[] {
       title: calculation.stale
         ? `Recompute ${calculation.label} on sheet ${entry.number}`
         : `${calculation.label} failed on sheet ${entry.number}`,
-      detail: calculation.stale ? 'An input changed, so its figures are out of date.' : 'The block says what is wrong and what to do.',
+      detail: calculation.stale
+        ? 'An input changed, so its figures are out of date.'
+        : 'The block says what is wrong and what to do.',
       since: entry.updatedAt,
       act: 'Open the sheet',
       entryId: entry.id,
@@ -77,12 +79,17 @@ function outOfDate(entry: Entry): Need[] {
     }))
 }
 
+/** Of each label the last: it took the place of those before. */
+function newest(entry: Entry): Entry['calculations'] {
+  return [...new Map(entry.calculations.map((calculation) => [calculation.label, calculation])).values()]
+}
+
 function toSign(entry: Entry, personId: string): Need[] {
   const signed = entry.authors.some((author) => author.personId === personId && author.signed)
   const collecting = entry.phase === 'collecting' && !signed
   const ready = entry.phase === 'writing' && entry.blocks.length === 0 && entry.calculations.length > 0
   if (!entry.allowed.includes('sign:authorship') || !(collecting || ready)) return []
-  const count = entry.calculations.length
+  const count = newest(entry).length
   return [
     {
       key: `sign-${entry.id}`,

@@ -23,8 +23,18 @@ export function RecentRuns({ runs, pathOf }: { runs: ShownRun[]; pathOf: (entryI
       keyOf={({ run }) => run.id}
       stackable
       columns={[
-        { head: 'Run', heads: true, nowrap: true, cell: ({ run }) => <span className="hs-fig">{run.number}</span> },
-        { head: 'Started', nowrap: true, deskOnly: true, cell: ({ run }) => <span className="hs-quiet">{nearTime(run.startedAt)}</span> },
+        {
+          head: 'Run',
+          heads: true,
+          nowrap: true,
+          cell: ({ run }) => <span className="hs-fig">{run.number}</span>,
+        },
+        {
+          head: 'Started',
+          nowrap: true,
+          deskOnly: true,
+          cell: ({ run }) => <span className="hs-quiet">{nearTime(run.startedAt)}</span>,
+        },
         { head: 'Experiment', deskOnly: true, nowrap: true, cell: ({ experiment }) => experiment },
         { head: 'Duration', figure: true, cell: ({ run }) => durationOf(run) },
         { head: 'Preview', cell: ({ preview }) => preview },

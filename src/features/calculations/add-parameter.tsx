@@ -4,7 +4,13 @@ import { ParameterChoice, ParameterField } from '../../ui/parameter-field.tsx'
 import { pointerOf, type AbsentParameter, type Path } from './parameter-fields.ts'
 
 /** Adds a parameter that is not given; those by channel ask for the channel first. */
-export function AddParameter({ absent, onAdd }: { absent: AbsentParameter[]; onAdd: (path: Path, value: unknown) => void }) {
+export function AddParameter({
+  absent,
+  onAdd,
+}: {
+  absent: AbsentParameter[]
+  onAdd: (path: Path, value: unknown) => void
+}) {
   const [asking, setAsking] = useState<AbsentParameter | null>(null)
   if (absent.length === 0) return null
 

@@ -75,7 +75,8 @@ function Loaded(props: { calculation: Calculation } & Omit<CalculationBlockProps
       {goingOn && <ProgressPart calculation={calculation} editable={editable} />}
       {state === 'stale' && (
         <Message kind="warn" title="Out of date.">
-          An input was read anew or has changed since this was computed. Recompute to bring the figures up to date.
+          An input was read anew or has changed since this was computed. Recompute to bring the figures up to
+          date.
         </Message>
       )}
       <FailureMessage calculation={calculation} />
@@ -96,9 +97,13 @@ function Loaded(props: { calculation: Calculation } & Omit<CalculationBlockProps
 }
 
 function Inputs({ calculation }: { calculation: Calculation }) {
-  if (calculation.inputs.length === 0) return <span className="hs-quiet">no input: computed from the parameters alone</span>
+  if (calculation.inputs.length === 0)
+    return <span className="hs-quiet">no input: computed from the parameters alone</span>
   return calculation.inputs.map((input) => (
-    <span className="hs-input-name" key={'fileId' in input ? input.fileId : input.calculationId + input.pointer}>
+    <span
+      className="hs-input-name"
+      key={'fileId' in input ? input.fileId : input.calculationId + input.pointer}
+    >
       <Icon name="trace" size={15} />
       {'fileId' in input ? input.name : `result ${input.pointer} of another calculation`}
     </span>

@@ -30,7 +30,9 @@ export function CalculationFigure({ calculation }: { calculation: Calculation })
 export function FigureLegend({ calculation }: { calculation: Calculation }) {
   const { data: figure } = useQuery(figureQuery(calculation.id, calculation.resultSha256))
   const series = figure?.panels.flatMap((panel) => panel.series) ?? []
-  const channels = series.filter(({ role }, at) => isChannel(role) && series.findIndex((each) => each.role === role) === at)
+  const channels = series.filter(
+    ({ role }, at) => isChannel(role) && series.findIndex((each) => each.role === role) === at,
+  )
   if (channels.length < 2) return null
   return channels.map(({ role, label }) => (
     <RoleKey key={role} role={role}>

@@ -14,14 +14,19 @@ export function FailureMessage({ calculation }: { calculation: Calculation }) {
   if (status !== 'failed') return null
   const named = error?.errors ?? []
   return (
-    <Message kind="fault" title={`${error?.title ?? 'It could not be computed'}.`} code={error?.code ?? 'internal'}>
+    <Message
+      kind="fault"
+      title={`${error?.title ?? 'It could not be computed'}.`}
+      code={error?.code ?? 'internal'}
+    >
       {error?.detail ?? 'No reason was given.'}
       {named.map(({ pointer, detail }) => (
         <span className="hs-failure-field" key={pointer}>
           {detail}
         </span>
       ))}{' '}
-      The file is untouched. Change a parameter above, or correct how the file is read, and it is computed again.
+      The file is untouched. Change a parameter above, or correct how the file is read, and it is computed
+      again.
     </Message>
   )
 }

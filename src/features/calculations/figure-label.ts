@@ -1,4 +1,12 @@
-const greek: Record<string, string> = { eta: 'η', tau: 'τ', chi: 'χ', beta: 'β', gamma: 'γ', sigma: 'σ', rho: 'ρ' }
+const greek: Record<string, string> = {
+  eta: 'η',
+  tau: 'τ',
+  chi: 'χ',
+  beta: 'β',
+  gamma: 'γ',
+  sigma: 'σ',
+  rho: 'ρ',
+}
 
 export interface LabelParts {
   /** In the notation of symbols, "g^(2)(0)"; null where the label is words alone. */

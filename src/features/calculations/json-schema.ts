@@ -55,9 +55,7 @@ export function startValue(given: JsonSchema, root: JsonSchema): unknown {
   if (schema.anyOf ?? schema.oneOf) return startValue((schema.anyOf ?? schema.oneOf)![0]!, root)
   if (schema.type === 'object') {
     const required = schema.required ?? []
-    return Object.fromEntries(
-      required.map((key) => [key, startValue(schema.properties?.[key] ?? {}, root)]),
-    )
+    return Object.fromEntries(required.map((key) => [key, startValue(schema.properties?.[key] ?? {}, root)]))
   }
   if (schema.type === 'array') return []
   if (schema.type === 'boolean') return false

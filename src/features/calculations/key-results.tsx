@@ -10,9 +10,21 @@ export function KeyResults({ figures, stale }: { figures: FigureText[]; stale: b
   if (!key) return null
   return (
     <BlockResult>
-      <KeyResult symbol={<FigureName label={key.label} />} value={key.value} u={key.u} unit={key.unit ?? ''} stale={stale} />
+      <KeyResult
+        symbol={<FigureName label={key.label} />}
+        value={key.value}
+        u={key.u}
+        unit={key.unit ?? ''}
+        stale={stale}
+      />
       {others.map(({ pointer, label, value, u, unit }) => (
-        <OtherResult key={pointer} name={<FigureName label={label} equals />} value={value} u={u} unit={unit ?? ''} />
+        <OtherResult
+          key={pointer}
+          name={<FigureName label={label} equals />}
+          value={value}
+          u={u}
+          unit={unit ?? ''}
+        />
       ))}
     </BlockResult>
   )

@@ -34,7 +34,8 @@ export function useStartCalculations(entryId: string) {
 export function useRecompute(id: string, onSuccessor: (successorId: string) => void) {
   const client = useQueryClient()
   return useMutation({
-    mutationFn: (parameters: Record<string, unknown>) => call('recompute', { params: { id }, body: { parameters } }),
+    mutationFn: (parameters: Record<string, unknown>) =>
+      call('recompute', { params: { id }, body: { parameters } }),
     onSuccess: (calculation) => {
       keep(client, calculation)
       onSuccessor(calculation.id)

@@ -57,7 +57,13 @@ function readObject(place: Place, form: ParameterForm, root: JsonSchema): void {
     const value = held ?? (required.has(key) ? startValue(schema, root) : schema.default)
     if (value === undefined || value === null) {
       const label = (schema.title ?? key) + place.suffix
-      form.absent.push({ path, label, help: schema.description, start: startValue(schema, root), keyed: isMap(schema) })
+      form.absent.push({
+        path,
+        label,
+        help: schema.description,
+        start: startValue(schema, root),
+        keyed: isMap(schema),
+      })
     } else {
       const optional = !required.has(key) && schema.default === undefined
       readValue({ schema, value, path, suffix: place.suffix, optional }, form, root)
@@ -72,7 +78,8 @@ function readValue(place: Place, form: ParameterForm, root: JsonSchema): void {
   const actual = isUnion && schema.unit !== 'ps' ? alternativeFor(schema, value, root) : schema
   if (isMap(actual)) return readMap({ ...place, schema: actual }, form, root)
   const quantity = isQuantity(actual)
-  if (actual.properties && isRecord(value) && !quantity) return readObject({ ...place, schema: actual }, form, root)
+  if (actual.properties && isRecord(value) && !quantity)
+    return readObject({ ...place, schema: actual }, form, root)
   form.given.push({
     path,
     label: (schema.title ?? String(path.at(-1))) + suffix,
@@ -89,7 +96,11 @@ function readValue(place: Place, form: ParameterForm, root: JsonSchema): void {
 function readMap({ schema, value, path }: Place, form: ParameterForm, root: JsonSchema): void {
   const inner = plain(schema.additionalProperties as JsonSchema, root)
   for (const [key, each] of Object.entries(value as Record<string, unknown>)) {
-    readValue({ schema: inner, value: each, path: [...path, key], suffix: ` ${key}`, optional: true }, form, root)
+    readValue(
+      { schema: inner, value: each, path: [...path, key], suffix: ` ${key}`, optional: true },
+      form,
+      root,
+    )
   }
   const label = schema.title ?? String(path.at(-1))
   form.absent.push({ path, label, help: schema.description, start: startValue(inner, root), keyed: true })
@@ -97,7 +108,11 @@ function readMap({ schema, value, path }: Place, form: ParameterForm, root: Json
 
 /** A value with its uncertainty is one field, not three. */
 function isQuantity(schema: JsonSchema): boolean {
-  return Object.keys(schema.properties ?? {}).sort().join() === 'u,unit,value'
+  return (
+    Object.keys(schema.properties ?? {})
+      .sort()
+      .join() === 'u,unit,value'
+  )
 }
 
 function isMap(schema: JsonSchema): boolean {
@@ -120,7 +135,11 @@ function formOf(schema: JsonSchema): ParameterLeaf['form'] {
 }
 
 /** The parameters with one value changed; with `undefined`, left out. The original stays as it is. */
-export function withValue(parameters: Record<string, unknown>, path: Path, value: unknown): Record<string, unknown> {
+export function withValue(
+  parameters: Record<string, unknown>,
+  path: Path,
+  value: unknown,
+): Record<string, unknown> {
   const [key, ...rest] = path
   if (key === undefined) return parameters
   const inner = parameters[key]

@@ -37,7 +37,9 @@ export function ParameterRow({ schema, parameters, disabled, errors, onChange }:
           disabled={disabled}
           error={errors.find((each) => each.pointer === pointerOf(leaf.path))?.detail ?? null}
           onCommit={(text) => commit(leaf, text)}
-          onRemove={more && leaf.optional ? () => onChange(withValue(parameters, leaf.path, undefined)) : undefined}
+          onRemove={
+            more && leaf.optional ? () => onChange(withValue(parameters, leaf.path, undefined)) : undefined
+          }
         />
       ))}
       {more && !disabled && (
@@ -96,7 +98,9 @@ function LeafField({ leaf, disabled, error, onCommit, onRemove }: LeafFieldProps
 
 /** A name of the interface as words: offPeak and off-peak become "off peak". */
 function inWords(name: string): string {
-  return name.replace(/([a-z])([A-Z])/g, (_, before: string, after: string) => `${before} ${after.toLowerCase()}`).replaceAll('-', ' ')
+  return name
+    .replace(/([a-z])([A-Z])/g, (_, before: string, after: string) => `${before} ${after.toLowerCase()}`)
+    .replaceAll('-', ' ')
 }
 
 function refusalOf(leaf: ParameterLeaf, typed: string): string | null {

@@ -33,7 +33,9 @@ export function valueOf(leaf: ParameterLeaf, text: string): Parsed {
     case 'quantity':
       return quantityFrom(leaf, text)
     case 'integer':
-      return /^[-−]?\d+$/.test(text) ? { value: Number(text.replace('−', '-')) } : { refusal: 'A whole number is needed.' }
+      return /^[-−]?\d+$/.test(text)
+        ? { value: Number(text.replace('−', '-')) }
+        : { refusal: 'A whole number is needed.' }
     case 'number':
       return isNumber(text) ? { value: Number(plainNumber(text)) } : { refusal: 'A number is needed.' }
     case 'integers':
@@ -64,9 +66,12 @@ function timeFrom(leaf: ParameterLeaf, text: string): Parsed {
 /** A value with or without uncertainty: "87", "87 ± 4". */
 function quantityFrom(leaf: ParameterLeaf, text: string): Parsed {
   const [value = '', u = '0', ...more] = text.split(/±|\+\/?-/).map((part) => part.trim())
-  if (!isNumber(value) || !isNumber(u) || more.length > 0) return { refusal: 'A value is needed, for example 87 or 87 ± 4.' }
+  if (!isNumber(value) || !isNumber(u) || more.length > 0)
+    return { refusal: 'A value is needed, for example 87 or 87 ± 4.' }
   const known = leaf.value as { unit?: string }
-  return { value: { value: Number(plainNumber(value)), u: Number(plainNumber(u)), unit: known.unit ?? leaf.unit } }
+  return {
+    value: { value: Number(plainNumber(value)), u: Number(plainNumber(u)), unit: known.unit ?? leaf.unit },
+  }
 }
 
 function exponentOf(unit: TimeUnit): number {

@@ -6,7 +6,8 @@ import { queryKeys } from '../../lib/query-keys.ts'
 /** Events tell of progress at once; this look now and then is for when they do not come through. */
 const pollMs = 2500
 
-export const isGoingOn = (status: Calculation['status']): boolean => status === 'queued' || status === 'running'
+export const isGoingOn = (status: Calculation['status']): boolean =>
+  status === 'queued' || status === 'running'
 
 export const calculationQuery = (id: string) =>
   queryOptions({

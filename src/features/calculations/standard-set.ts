@@ -31,7 +31,9 @@ export function standardSet(file: RawFile): NewCalculation[] {
 
 /** Channel numbers, the one with most counts first. */
 function byCounts(file: RawFile): number[] {
-  return [...(file.reading.channels ?? [])].sort((one, two) => two.counts - one.counts).map(({ channel }) => channel)
+  return [...(file.reading.channels ?? [])]
+    .sort((one, two) => two.counts - one.counts)
+    .map(({ channel }) => channel)
 }
 
 /** Whether the set can be computed from this file. */

@@ -13,7 +13,9 @@ export function startParameters(kind: CalculationKind, file: RawFile | undefined
   const parameters = structuredClone(example.parameters ?? (kind.example as Record<string, unknown>))
   const present = [...(file?.reading.channels ?? [])].sort((one, two) => two.counts - one.counts)
   const properties = (kind.parameters as JsonSchema).properties ?? {}
-  const named = Object.keys(properties).filter((key) => properties[key]?.maximum === lastChannel && key in parameters)
+  const named = Object.keys(properties).filter(
+    (key) => properties[key]?.maximum === lastChannel && key in parameters,
+  )
   const inExample = [...new Set(named.map((key) => parameters[key]))]
   for (const key of named) {
     const channel = present[inExample.indexOf(parameters[key])]?.channel

@@ -10,12 +10,14 @@ export function useWatchCalculation(id: string, entryId: string | undefined, goi
     if (!goingOn) return
     const source = new EventSource(urlOf('watchCalculation', { id }))
     const look = () => void client.invalidateQueries({ queryKey: queryKeys.calculation(id), exact: true })
-    for (const name of ['message', 'progress', 'outcome', 'done', 'failed', 'cancelled']) source.addEventListener(name, look)
+    for (const name of ['message', 'progress', 'outcome', 'done', 'failed', 'cancelled'])
+      source.addEventListener(name, look)
     return () => source.close()
   }, [client, id, goingOn])
 
   useEffect(() => {
     // The entry tells what blocks signing: it is out of date once a calculation has ended.
-    if (!goingOn && entryId) void client.invalidateQueries({ queryKey: queryKeys.entry(entryId), exact: true })
+    if (!goingOn && entryId)
+      void client.invalidateQueries({ queryKey: queryKeys.entry(entryId), exact: true })
   }, [client, entryId, goingOn])
 }

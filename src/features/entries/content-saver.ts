@@ -21,7 +21,11 @@ export type SaveState =
 export interface SaverPorts {
   /** The text as it stands on the screen. */
   document(): NormalDocument
-  put(document: NormalDocument, ifMatch: string, keepalive: boolean): Promise<{ etag: string; savedAt: string }>
+  put(
+    document: NormalDocument,
+    ifMatch: string,
+    keepalive: boolean,
+  ): Promise<{ etag: string; savedAt: string }>
   /** ETag of what the server has now. */
   currentEtag(): Promise<string>
   cutRevision(cause: 'leaving' | 'pause', keepalive: boolean): Promise<void>

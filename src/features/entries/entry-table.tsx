@@ -15,12 +15,29 @@ export function EntryTable({ entries, pathOf }: { entries: EntrySummary[]; pathO
       keyOf={(entry) => entry.id}
       stackable
       columns={[
-        { head: 'Sheet', nowrap: true, cell: (entry) => <span className="hs-fig">{sheetNumber(entry.number)}</span> },
-        { head: 'Title', heads: true, cell: (entry) => <TextLink to={pathOf(entry.id)}>{entry.title}</TextLink> },
-        { head: 'Experiment', deskOnly: true, nowrap: true, cell: (entry) => experimentNames[entry.experiment] },
+        {
+          head: 'Sheet',
+          nowrap: true,
+          cell: (entry) => <span className="hs-fig">{sheetNumber(entry.number)}</span>,
+        },
+        {
+          head: 'Title',
+          heads: true,
+          cell: (entry) => <TextLink to={pathOf(entry.id)}>{entry.title}</TextLink>,
+        },
+        {
+          head: 'Experiment',
+          deskOnly: true,
+          nowrap: true,
+          cell: (entry) => experimentNames[entry.experiment],
+        },
         { head: 'Written by', deskOnly: true, cell: (entry) => authorsInWords(entry.authors) },
         { head: 'State', nowrap: true, cell: (entry) => <StateGlyph state={glyphOf(entry.phase)} /> },
-        { head: 'Changed', nowrap: true, cell: (entry) => <span className="hs-quiet">{nearTime(entry.updatedAt)}</span> },
+        {
+          head: 'Changed',
+          nowrap: true,
+          cell: (entry) => <span className="hs-quiet">{nearTime(entry.updatedAt)}</span>,
+        },
       ]}
     />
   )

@@ -12,7 +12,8 @@ export const entryQuery = (id: string) =>
 export const entriesOfNotebookQuery = (notebookId: string) =>
   queryOptions({
     queryKey: queryKeys.entriesOf(notebookId),
-    queryFn: ({ signal }) => call('listEntries', { params: { id: notebookId }, query: { limit: 200 }, signal }),
+    queryFn: ({ signal }) =>
+      call('listEntries', { params: { id: notebookId }, query: { limit: 200 }, signal }),
   })
 
 /** Entries the person may read, newest change first: all, those written by the person, or those to be witnessed. */
@@ -21,7 +22,11 @@ export const myEntriesQuery = (which: 'all' | 'mine' | 'waiting') =>
     queryKey: queryKeys.myEntries(which),
     queryFn: ({ signal }) =>
       call('listMyEntries', {
-        query: { limit: 50, ...(which === 'mine' ? { mine: true } : {}), ...(which === 'waiting' ? { waiting: true } : {}) },
+        query: {
+          limit: 50,
+          ...(which === 'mine' ? { mine: true } : {}),
+          ...(which === 'waiting' ? { waiting: true } : {}),
+        },
         signal,
       }),
   })

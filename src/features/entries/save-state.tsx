@@ -20,7 +20,9 @@ function SaveWords({ state }: { state: SaveState }) {
     case 'saving':
       return 'saving'
     case 'offline':
-      return <StateGlyph state="fault">Not saved since {clockTimeWithSeconds(new Date(state.since))}</StateGlyph>
+      return (
+        <StateGlyph state="fault">Not saved since {clockTimeWithSeconds(new Date(state.since))}</StateGlyph>
+      )
     case 'conflict':
       return <StateGlyph state="fault">Not saved: someone else saved first</StateGlyph>
     case 'refused':

@@ -22,12 +22,14 @@ interface TroubleProps {
 export function SaveTrouble(props: TroubleProps) {
   const { state, saver } = props
   const copy = <CopyButton document={props.document} name={props.copyName} />
-  if (state.name === 'offline') return <Offline state={state} onTry={() => void saver.retryNow()} copy={copy} />
+  if (state.name === 'offline')
+    return <Offline state={state} onTry={() => void saver.retryNow()} copy={copy} />
   if (state.name === 'conflict') return <Conflict {...props} copy={copy} />
   if (state.name === 'refused') {
     return (
       <Alert title="This text was not accepted" code={state.problem.code} actions={copy}>
-        {state.problem.detail} Your text is still on the screen; nothing of it was saved since the last time shown.
+        {state.problem.detail} Your text is still on the screen; nothing of it was saved since the last time
+        shown.
       </Alert>
     )
   }
@@ -57,7 +59,13 @@ function Offline({ state, onTry, copy }: { state: OfflineState; onTry: () => voi
   )
 }
 
-function Conflict({ saver, entryId, onTakeTheirs, document, copy }: TroubleProps & { copy: React.ReactNode }) {
+function Conflict({
+  saver,
+  entryId,
+  onTakeTheirs,
+  document,
+  copy,
+}: TroubleProps & { copy: React.ReactNode }) {
   const [comparing, setComparing] = useState(false)
   const [busy, setBusy] = useState(false)
 
@@ -82,8 +90,8 @@ function Conflict({ saver, entryId, onTakeTheirs, document, copy }: TroubleProps
           </>
         }
       >
-        This sheet was saved from another window since you opened it. Your text is on the screen and nothing was
-        overwritten. Compare the two, then choose which goes on; the other stays in the history.
+        This sheet was saved from another window since you opened it. Your text is on the screen and nothing
+        was overwritten. Compare the two, then choose which goes on; the other stays in the history.
       </Alert>
       {comparing && (
         <TheirText
@@ -101,7 +109,9 @@ function Conflict({ saver, entryId, onTakeTheirs, document, copy }: TroubleProps
 
 function CopyButton({ document, name }: { document: () => NormalDocument; name: string }) {
   return (
-    <Button onClick={() => saveAsFile(plainText(document()), `${name}.txt`, 'text/plain')}>Keep a copy as a file</Button>
+    <Button onClick={() => saveAsFile(plainText(document()), `${name}.txt`, 'text/plain')}>
+      Keep a copy as a file
+    </Button>
   )
 }
 

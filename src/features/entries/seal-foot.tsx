@@ -4,10 +4,22 @@ import { SealLine, type Station } from '../../ui/seal-line.tsx'
 import { SheetFoot } from '../../ui/sheet.tsx'
 
 /** How far a sheet has come: signed, submitted, countersigned, sealed; who and when at each station. */
-export function SealFoot({ entry, children, justSealed }: { entry: Entry; children?: React.ReactNode; justSealed?: boolean }) {
+export function SealFoot({
+  entry,
+  children,
+  justSealed,
+}: {
+  entry: Entry
+  children?: React.ReactNode
+  justSealed?: boolean
+}) {
   return (
     <SheetFoot>
-      <SealLine label={`How far ${entry.number} has come`} stations={stationsOf(entry)} justDone={justSealed} />
+      <SealLine
+        label={`How far ${entry.number} has come`}
+        stations={stationsOf(entry)}
+        justDone={justSealed}
+      />
       {children}
     </SheetFoot>
   )
@@ -23,7 +35,8 @@ function stationsOf(entry: Entry): Station[] {
   const done = [authors.length > 0, submitted, witnessed, sealed !== null]
   const returned = entry.phase === 'returned' && entry.returned
   const current = done.indexOf(false)
-  const named = (signatures: typeof living) => signatures.map(({ signer, time }) => `${signer.name}, ${stampTime(time)}`)
+  const named = (signatures: typeof living) =>
+    signatures.map(({ signer, time }) => `${signer.name}, ${stampTime(time)}`)
   const stations: Station[] = [
     {
       name: 'Signed by author',
@@ -47,7 +60,9 @@ function stationsOf(entry: Entry): Station[] {
       name: 'Sealed in the ledger',
       state: sealed ? 'done' : 'todo',
       drawing: 'full',
-      lines: sealed ? [`event ${sealed.sequence}`, stampTime(sealed.time)] : ['nothing can change afterwards'],
+      lines: sealed
+        ? [`event ${sealed.sequence}`, stampTime(sealed.time)]
+        : ['nothing can change afterwards'],
       sha256: sealed?.digest,
     },
   ]
@@ -55,7 +70,8 @@ function stationsOf(entry: Entry): Station[] {
 }
 
 function submittedLines({ phase, returned, submittedAt, state }: Entry): string[] {
-  if (phase === 'returned' && returned) return [`by ${returned.by}, ${stampTime(returned.at)}`, returned.reason]
+  if (phase === 'returned' && returned)
+    return [`by ${returned.by}, ${stampTime(returned.at)}`, returned.reason]
   if (submittedAt !== null) return [stampTime(submittedAt)]
   return [state === 'sealed' ? 'to the witness' : 'to a witness who is not an author']
 }

@@ -3,7 +3,15 @@ import { sentenceOf } from '../../lib/api-problem.ts'
 import { useChangeEntry } from './mutations.ts'
 
 /** The title of a sheet; in a draft it is written in place. Enter or leaving keeps it, Esc restores it. */
-export function SheetTitle({ entryId, title, editable }: { entryId: string; title: string; editable: boolean }) {
+export function SheetTitle({
+  entryId,
+  title,
+  editable,
+}: {
+  entryId: string
+  title: string
+  editable: boolean
+}) {
   const change = useChangeEntry(entryId)
   const field = useRef<HTMLTextAreaElement>(null)
   const [text, setText] = useState(title)

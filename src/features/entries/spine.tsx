@@ -16,7 +16,10 @@ const shown = 12
 
 /** Sheets of the notebook beside the open one, newest first; the open one is always among them. */
 export function Spine({ notebook, notebookPath, entries, currentId, pathOf }: SpineProps) {
-  const at = Math.max(0, entries.findIndex((entry) => entry.id === currentId))
+  const at = Math.max(
+    0,
+    entries.findIndex((entry) => entry.id === currentId),
+  )
   const from = Math.max(0, Math.min(at - 3, entries.length - shown))
   const near = entries.slice(from, from + shown)
   const others = entries.length - near.length

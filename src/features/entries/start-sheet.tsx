@@ -59,7 +59,10 @@ export function StartSheet({ start, notebooks, onStarted, onClose }: StartSheetP
         <Select label="Experiment" choices={experimentChoices} value={experiment} onChange={setExperiment} />
         <Select
           label="Notebook"
-          choices={notebooks.map(({ id, number, title: name }) => ({ value: id, label: `${number} ${name}` }))}
+          choices={notebooks.map(({ id, number, title: name }) => ({
+            value: id,
+            label: `${number} ${name}`,
+          }))}
           value={notebookId}
           onChange={setNotebookId}
         />

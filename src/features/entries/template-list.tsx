@@ -11,7 +11,12 @@ interface TemplateListProps {
 /** Templates as cards with their set-up. Put them into a grid. */
 export function TemplateList({ onChoose, picture, withAbout = false }: TemplateListProps) {
   return templates.map((template) => (
-    <button type="button" className="hs-template" key={template.experiment} onClick={() => onChoose(template)}>
+    <button
+      type="button"
+      className="hs-template"
+      key={template.experiment}
+      onClick={() => onChoose(template)}
+    >
       {picture(template)}
       {withAbout ? <b>{template.name}</b> : <span>{template.name}</span>}
       {withAbout && <span className="hs-quiet">{template.about}</span>}

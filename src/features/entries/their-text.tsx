@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query'
 import { plainText, type NormalDocument } from '../../../server/document/index.ts'
 import { sentenceOf } from '../../lib/api-problem.ts'
+import { saveAsFile } from '../../lib/save-as-file.ts'
 import { Button } from '../../ui/button.tsx'
 import { Dialog } from '../../ui/dialog.tsx'
 import { Message } from '../../ui/message.tsx'
@@ -25,7 +26,7 @@ export function TheirText({ entryId, mine, busy, onSaveMine, onTakeTheirs, onClo
       locked={busy}
       onClose={onClose}
       title="Two texts of this sheet"
-      about="Choose which one goes on. Both stay in the history of the sheet."
+      about="Saving yours makes theirs a revision of its own, so both stay in the history. Taking theirs drops what you wrote since the last save; keep a copy first if you need it."
       actions={
         <>
           <Button busy={busy} onClick={onSaveMine}>
@@ -34,6 +35,7 @@ export function TheirText({ entryId, mine, busy, onSaveMine, onTakeTheirs, onClo
           <Button busy={busy || !theirs} onClick={() => theirs && onTakeTheirs(theirs.document, theirs.etag)}>
             Take theirs
           </Button>
+          <CopyOfMine mine={mine} />
           <Button kind="quiet" onClick={onClose}>
             Decide later
           </Button>
@@ -49,15 +51,33 @@ export function TheirText({ entryId, mine, busy, onSaveMine, onTakeTheirs, onClo
   )
 }
 
+function CopyOfMine({ mine }: { mine: NormalDocument }) {
+  return (
+    <Button onClick={() => saveAsFile(plainText(mine), 'my-text.txt', 'text/plain')}>
+      Keep a copy of mine
+    </Button>
+  )
+}
+
 /** Lines of a text; those that the other text does not have are marked. */
-function TextColumn({ title, document, other }: { title: string; document: NormalDocument | null; other: NormalDocument | null }) {
+function TextColumn({
+  title,
+  document,
+  other,
+}: {
+  title: string
+  document: NormalDocument | null
+  other: NormalDocument | null
+}) {
   const known = new Set(other ? plainText(other).split('\n') : [])
   const lines = document ? plainText(document).split('\n') : []
   return (
     <section>
       <h3>{title}</h3>
       <div className="hs-two-texts-body" tabIndex={0}>
-        {lines.map((line, at) => (other !== null && !known.has(line) ? <ins key={at}>{line}</ins> : <p key={at}>{line}</p>))}
+        {lines.map((line, at) =>
+          other !== null && !known.has(line) ? <ins key={at}>{line}</ins> : <p key={at}>{line}</p>,
+        )}
       </div>
     </section>
   )

@@ -17,7 +17,8 @@ export function useContentSaver(entryId: string, etag: string, document: () => N
     const gone = () => saver.pageHides()
     const warn = (event: BeforeUnloadEvent) => {
       const name = saver.getState().name
-      if (saver.hasUnsaved() && (name === 'offline' || name === 'conflict' || name === 'refused')) event.preventDefault()
+      if (saver.hasUnsaved() && (name === 'offline' || name === 'conflict' || name === 'refused'))
+        event.preventDefault()
     }
     window.document.addEventListener('visibilitychange', hide)
     window.addEventListener('pagehide', gone)
@@ -37,7 +38,12 @@ function createSaver(id: string, etag: string, document: () => NormalDocument): 
     {
       document,
       put: async (content, ifMatch, keepalive) => {
-        const answer = await callForAnswer('putContent', { params: { id }, body: { ...content }, ifMatch, keepalive })
+        const answer = await callForAnswer('putContent', {
+          params: { id },
+          body: { ...content },
+          ifMatch,
+          keepalive,
+        })
         return { etag: answer.etag ?? '*', savedAt: answer.reply.savedAt }
       },
       currentEtag: async () => (await callForAnswer('getContent', { params: { id } })).etag ?? '*',

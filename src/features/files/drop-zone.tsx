@@ -1,7 +1,15 @@
 import { useEffect, useState, type ReactNode } from 'react'
 
 /** Lets files be dropped anywhere on what it holds; the button elsewhere does the same without dragging. */
-export function DropZone({ enabled, onFiles, children }: { enabled: boolean; onFiles: (files: File[]) => void; children: ReactNode }) {
+export function DropZone({
+  enabled,
+  onFiles,
+  children,
+}: {
+  enabled: boolean
+  onFiles: (files: File[]) => void
+  children: ReactNode
+}) {
   const [over, setOver] = useState(false)
 
   useEffect(() => {

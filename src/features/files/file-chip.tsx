@@ -18,7 +18,8 @@ interface FileChipProps {
 
 /** A file in the margin: what it is, how it was read, and the mark of its bytes. */
 export function FileChip({ file, editable, acts }: FileChipProps) {
-  const needsLook = file.reading.status === 'unreadable' || (file.reading.status === 'ready' && file.reading.detail !== null)
+  const needsLook =
+    file.reading.status === 'unreadable' || (file.reading.status === 'ready' && file.reading.detail !== null)
   const [open, setOpen] = useState(false)
   const shown = open || (needsLook && editable)
   return (
@@ -56,13 +57,15 @@ function noteOf({ reading, size }: RawFile): string {
   const parts = [sizeText(size)]
   if (reading.status === 'pending') parts.unshift('being read')
   if (reading.status === 'unreadable') parts.unshift('cannot be read')
-  if (reading.kind === 'tags' && reading.tags !== null) parts.unshift(`${roughCount(reading.tags)} time stamps`)
+  if (reading.kind === 'tags' && reading.tags !== null)
+    parts.unshift(`${roughCount(reading.tags)} time stamps`)
   if (reading.durationPs !== null) parts.push(durationText(reading.durationPs))
   return parts.join(', ')
 }
 
 function StorageState({ file }: { file: RawFile }) {
-  if (file.state === 'mismatch') return <StateGlyph state="fault">The store’s copy differs from what was uploaded</StateGlyph>
+  if (file.state === 'mismatch')
+    return <StateGlyph state="fault">The store’s copy differs from what was uploaded</StateGlyph>
   if (file.state === 'missing') return <StateGlyph state="fault">The store has lost this file</StateGlyph>
   const same = file.sameBytesAs[0]
   if (same) return <p className="hs-note hs-quiet">The same bytes are here already as {same.name}.</p>

@@ -9,7 +9,12 @@ import { useSetReading } from './queries.ts'
 
 const units = ['ps', 'ns', 'us', 'ticks'] as const
 type Unit = (typeof units)[number]
-const unitNames: Record<Unit, string> = { ps: 'picoseconds', ns: 'nanoseconds', us: 'microseconds', ticks: 'ticks of a clock' }
+const unitNames: Record<Unit, string> = {
+  ps: 'picoseconds',
+  ns: 'nanoseconds',
+  us: 'microseconds',
+  ticks: 'ticks of a clock',
+}
 
 /** Says by hand which columns hold time and channel, and in which unit: for text whose header does not tell. */
 export function ReadingForm({ file }: { file: RawFile }) {

@@ -36,7 +36,10 @@ function factsOf({ reading }: RawFile) {
     { name: 'Duration', value: durationPs === null ? null : durationText(durationPs) },
     { name: 'Resolution', value: resolutionPs === null ? null : durationText(resolutionPs) },
     { name: 'Out of order', value: outOfOrder ? countText(outOfOrder) : null },
-    ...(channels ?? []).map(({ channel, counts }) => ({ name: `Channel ${channel}`, value: countText(counts) })),
+    ...(channels ?? []).map(({ channel, counts }) => ({
+      name: `Channel ${channel}`,
+      value: countText(counts),
+    })),
   ]
   return all.filter((fact): fact is typeof fact & { value: string } => fact.value !== null)
 }

@@ -28,7 +28,11 @@ function UploadLine({ upload, list }: { upload: Upload; list: UploadList }) {
         {name} <span className="hs-quiet">{sizeText(size)}</span>{' '}
         {state !== 'checking' && <TextButton onClick={() => list.stop(key)}>Stop</TextButton>}
       </p>
-      <Progress label={`Upload of ${name}`} share={state === 'waiting' ? null : sent / size} words={words(upload)} />
+      <Progress
+        label={`Upload of ${name}`}
+        share={state === 'waiting' ? null : sent / size}
+        words={words(upload)}
+      />
     </div>
   )
 }

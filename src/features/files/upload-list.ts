@@ -50,9 +50,14 @@ export class UploadList {
     for (const file of files) {
       const key = ++this.count
       const empty = file.size === 0
-      const sentence = empty ? `${file.name} is empty: it holds not a single byte. Nothing was uploaded.` : null
+      const sentence = empty
+        ? `${file.name} is empty: it holds not a single byte. Nothing was uploaded.`
+        : null
       const state = empty ? 'refused' : 'waiting'
-      this.uploads = [...this.uploads, { key, name: file.name, size: file.size, sent: 0, rate: null, state, sentence }]
+      this.uploads = [
+        ...this.uploads,
+        { key, name: file.name, size: file.size, sent: 0, rate: null, state, sentence },
+      ]
       if (!empty) this.waiting.push({ key, file })
     }
     this.tell()
@@ -78,7 +83,8 @@ export class UploadList {
   private async work(): Promise<void> {
     if (this.busy) return
     this.busy = true
-    for (let next = this.waiting.shift(); next; next = this.waiting.shift()) await this.sendOne(next.key, next.file)
+    for (let next = this.waiting.shift(); next; next = this.waiting.shift())
+      await this.sendOne(next.key, next.file)
     this.busy = false
   }
 
@@ -90,7 +96,12 @@ export class UploadList {
       const target = await this.ports.target(file)
       stop.signal.throwIfAborted()
       const onProgress = this.measure(key)
-      const stored = await (this.ports.send ?? upload)(target.name, { id: target.id, file, signal: stop.signal, onProgress })
+      const stored = await (this.ports.send ?? upload)(target.name, {
+        id: target.id,
+        file,
+        signal: stop.signal,
+        onProgress,
+      })
       this.dismiss(key)
       this.ports.stored(stored)
     } catch (error) {

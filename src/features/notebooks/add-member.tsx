@@ -50,7 +50,11 @@ export function AddMember({ notebook }: { notebook: Notebook }) {
     <div className="hs-form">
       <Select
         label="Person"
-        choices={strangers.map((person) => ({ value: person.id, label: person.name, note: person.roles.join(', ') }))}
+        choices={strangers.map((person) => ({
+          value: person.id,
+          label: person.name,
+          note: person.roles.join(', '),
+        }))}
         value={personId}
         onChange={choosePerson}
       />

@@ -26,7 +26,10 @@ export function Members({ notebook }: { notebook: Notebook }) {
               </small>
             </span>
             {keeps && !member.keeper && ending !== member.personId && (
-              <TextButton onClick={() => setEnding(member.personId)} aria-label={`End the membership of ${member.name}`}>
+              <TextButton
+                onClick={() => setEnding(member.personId)}
+                aria-label={`End the membership of ${member.name}`}
+              >
                 End
               </TextButton>
             )}

@@ -6,7 +6,13 @@ import { TextField } from '../../ui/field.tsx'
 import { useCreateNotebook } from './mutations.ts'
 
 /** Asks for the title of a new notebook. */
-export function NewNotebook({ onCreated, onClose }: { onCreated: (id: string) => void; onClose: () => void }) {
+export function NewNotebook({
+  onCreated,
+  onClose,
+}: {
+  onCreated: (id: string) => void
+  onClose: () => void
+}) {
   const [title, setTitle] = useState('')
   const create = useCreateNotebook()
 

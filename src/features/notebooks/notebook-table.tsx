@@ -11,7 +11,8 @@ interface NotebookTableProps {
 
 /** Notebooks the person may read. */
 export function NotebookTable({ notebooks, personId, pathOf }: NotebookTableProps) {
-  const roleIn = (notebook: Notebook) => notebook.members.find((member) => member.personId === personId)?.role ?? 'reads'
+  const roleIn = (notebook: Notebook) =>
+    notebook.members.find((member) => member.personId === personId)?.role ?? 'reads'
   return (
     <Table
       label="Notebooks"
@@ -19,8 +20,16 @@ export function NotebookTable({ notebooks, personId, pathOf }: NotebookTableProp
       keyOf={(notebook) => notebook.id}
       stackable
       columns={[
-        { head: 'Number', nowrap: true, cell: (notebook) => <span className="hs-fig">{notebook.number}</span> },
-        { head: 'Title', heads: true, cell: (notebook) => <TextLink to={pathOf(notebook.id)}>{notebook.title}</TextLink> },
+        {
+          head: 'Number',
+          nowrap: true,
+          cell: (notebook) => <span className="hs-fig">{notebook.number}</span>,
+        },
+        {
+          head: 'Title',
+          heads: true,
+          cell: (notebook) => <TextLink to={pathOf(notebook.id)}>{notebook.title}</TextLink>,
+        },
         { head: 'Sheets', figure: true, cell: (notebook) => notebook.entries },
         { head: 'You', nowrap: true, cell: roleIn },
         {

@@ -36,7 +36,8 @@ export function beamNodes(entry: Entry, run: Run | undefined, variant: BeamVaria
     .flatMap((calculation) => calculation.figures)
   const latest = (label: RegExp) => figures.findLast((figure) => label.test(figure.label))
   const channels = channelsIn(figures)
-  const slots: NodeId[] = variant === 'her' ? ['herald', 'detector-1', 'detector-2'] : ['detector-1', 'detector-2']
+  const slots: NodeId[] =
+    variant === 'her' ? ['herald', 'detector-1', 'detector-2'] : ['detector-1', 'detector-2']
   const nodes: BeamNodes = { source: pieceNode(run, 'source', 'Source') ?? { label: 'Source' } }
   const filter = pieceNode(run, 'filter', 'Filter')
   const splitter = pieceNode(run, 'splitter', 'Splitter')
@@ -45,7 +46,11 @@ export function beamNodes(entry: Entry, run: Run | undefined, variant: BeamVaria
   slots.forEach((slot, at) => {
     const channel = channels[at]
     const rate = channel === undefined ? undefined : latest(rateOf(channel))
-    nodes[slot] = { label: `${detectorName(run, channel) ?? `Channel ${channel ?? at + 1}`}, W`, sub: '1', ...withFigure(rate) }
+    nodes[slot] = {
+      label: `${detectorName(run, channel) ?? `Channel ${channel ?? at + 1}`}, W`,
+      sub: '1',
+      ...withFigure(rate),
+    }
   })
   nodes.coincidence = { label: 'Coincidence W', sub: '2', ...withFigure(latest(/^W2\b/)) }
   const accidentals = latest(/^accidentals/i)
@@ -65,7 +70,10 @@ function pieceNode(run: Run | undefined, kind: string, word: string): BeamNode |
   const piece = run?.apparatus.find((each) => each.kind === kind)
   if (!piece) return null
   const figure = piece.figures[0]
-  return { label: `${word} ${piece.name}`, ...withFigure(figure && { ...figure, pointer: '', label: figure.name }) }
+  return {
+    label: `${word} ${piece.name}`,
+    ...withFigure(figure && { ...figure, pointer: '', label: figure.name }),
+  }
 }
 
 function detectorName(run: Run | undefined, channel: number | undefined): string | undefined {
@@ -77,6 +85,8 @@ function withFigure(figure: FigureText | undefined): Pick<BeamNode, 'figure' | '
   const unit = unitText(figure.unit)
   return {
     figure: figureWithoutUnit({ value: figure.value, u: null }),
-    more: [figure.u !== null && `± ${figureWithoutUnit({ value: figure.u, u: null })}`, unit].filter(Boolean).join(' '),
+    more: [figure.u !== null && `± ${figureWithoutUnit({ value: figure.u, u: null })}`, unit]
+      .filter(Boolean)
+      .join(' '),
   }
 }

@@ -24,7 +24,12 @@ export function BeamStrip({ entry, experimentName }: { entry: Entry; experimentN
       }
       end={lit ? null : <span>The figures appear when singles and coincidences are computed.</span>}
     >
-      <BeamPath variant={variant} nodes={nodes} state={lit ? 'frozen' : 'no-light'} label={`Beam path: ${words}`} />
+      <BeamPath
+        variant={variant}
+        nodes={nodes}
+        state={lit ? 'frozen' : 'no-light'}
+        label={`Beam path: ${words}`}
+      />
     </SheetStrip>
   )
 }

@@ -19,7 +19,11 @@ export function conditionFrom(line: ConditionLine): Condition | { refusal: strin
   const typed = line.value.trim()
   if (name === '' && typed === '') return null
   if (name === '') return { refusal: 'Name the condition.' }
-  const [value = '', u] = typed.split(/±|\+\/?-/).map((part) => part.trim().replace('−', '-').replace(',', '.'))
+  const [value = '', u] = typed
+    .split(/±|\+\/?-/)
+    .map((part) => part.trim().replace('−', '-').replace(',', '.'))
   const parsed = conditionSchema.safeParse({ name, value, u: u ?? null, unit: line.unit.trim() || null })
-  return parsed.success ? parsed.data : { refusal: `${name}: the value is a number, for example 4.2 or 4.2 ± 0.1.` }
+  return parsed.success
+    ? parsed.data
+    : { refusal: `${name}: the value is a number, for example 4.2 or 4.2 ± 0.1.` }
 }

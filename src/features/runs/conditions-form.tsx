@@ -15,7 +15,15 @@ const usual: ConditionLine[] = [
 ]
 
 /** Conditions as lines of name, value and unit. A value may carry its uncertainty: 4.2 ± 0.1. */
-export function ConditionsForm({ run, entryId, onClose }: { run: Run; entryId: string; onClose: () => void }) {
+export function ConditionsForm({
+  run,
+  entryId,
+  onClose,
+}: {
+  run: Run
+  entryId: string
+  onClose: () => void
+}) {
   const [lines, setLines] = useState(() => (run.conditions.length > 0 ? run.conditions.map(lineOf) : usual))
   const [refusal, setRefusal] = useState<string | null>(null)
   const change = useChangeRun(run.id, entryId)
@@ -38,7 +46,12 @@ export function ConditionsForm({ run, entryId, onClose }: { run: Run; entryId: s
       {lines.map((line, at) => (
         <fieldset key={at}>
           <legend className="hs-only-spoken">Condition {at + 1}</legend>
-          <input aria-label="Name" placeholder="name" value={line.name} onChange={(e) => set(at, { name: e.target.value })} />
+          <input
+            aria-label="Name"
+            placeholder="name"
+            value={line.name}
+            onChange={(e) => set(at, { name: e.target.value })}
+          />
           <input
             className="hs-fig"
             aria-label={`Value of ${line.name || 'the condition'}`}
@@ -46,7 +59,12 @@ export function ConditionsForm({ run, entryId, onClose }: { run: Run; entryId: s
             value={line.value}
             onChange={(e) => set(at, { value: e.target.value })}
           />
-          <input aria-label="Unit" placeholder="unit" value={line.unit} onChange={(e) => set(at, { unit: e.target.value })} />
+          <input
+            aria-label="Unit"
+            placeholder="unit"
+            value={line.unit}
+            onChange={(e) => set(at, { unit: e.target.value })}
+          />
         </fieldset>
       ))}
       {refusal && <Message kind="fault">{refusal}</Message>}

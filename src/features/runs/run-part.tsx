@@ -37,7 +37,9 @@ export function RunPart({ run, entryId, editable }: { run: Run; entryId: string;
 function RunFacts({ run }: { run: Run }) {
   const conditions = run.conditions.map(({ name, value, u, unit }) => ({
     name,
-    value: [setFigure(value), u !== null && `± ${setFigure(u)}`, unit !== '1' && unit].filter(Boolean).join(' '),
+    value: [setFigure(value), u !== null && `± ${setFigure(u)}`, unit !== '1' && unit]
+      .filter(Boolean)
+      .join(' '),
   }))
   const apparatus = run.apparatus.map(({ kind, name, role, channel }) => ({
     name: kind.charAt(0).toUpperCase() + kind.slice(1),

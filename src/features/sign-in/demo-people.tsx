@@ -8,7 +8,8 @@ export function DemoPeople({ demo }: { demo: Demo }) {
   return (
     <div className="hs-demo-people">
       <p>
-        <b>Demonstration.</b> The people and the data are invented. Choose one of them at the code host’s stand-in:
+        <b>Demonstration.</b> The people and the data are invented. Choose one of them at the code host’s
+        stand-in:
       </p>
       <dl className="hs-facts">
         {demo.people.map((person) => (

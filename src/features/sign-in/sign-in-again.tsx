@@ -28,7 +28,9 @@ export function SignInAgain() {
       const now = await client.fetchQuery({ ...sessionQuery, staleTime: 0 }).catch(() => null)
       if (!now) return setTrouble('Nobody is signed in yet.')
       if (before && now.person.id !== before.person.id) {
-        return setTrouble(`This window holds the work of ${before.person.name}. Sign in as ${before.person.name} to go on.`)
+        return setTrouble(
+          `This window holds the work of ${before.person.name}. Sign in as ${before.person.name} to go on.`,
+        )
       }
       setTrouble(null)
       letWaitingGo()
@@ -38,7 +40,9 @@ export function SignInAgain() {
 
   function open() {
     const opened = openSignInWindow()
-    setTrouble(opened ? null : 'The browser did not open a window. Allow windows for this page, then try again.')
+    setTrouble(
+      opened ? null : 'The browser did not open a window. Allow windows for this page, then try again.',
+    )
   }
 
   return (

@@ -21,18 +21,23 @@ export function SignInPanel({ welcome, refusal, returnTo }: PanelProps) {
       <div className="hs-sign-in-form">
         <h1>Sign in to the notebooks of {welcome.laboratory.name}</h1>
         {refusal && <Message kind="fault">{refusal}</Message>}
-        <a className="hs-button hs-button-primary hs-button-large" href={`/auth/github?returnTo=${encodeURIComponent(returnTo)}`}>
+        <a
+          className="hs-button hs-button-primary hs-button-large"
+          href={`/auth/github?returnTo=${encodeURIComponent(returnTo)}`}
+        >
           <Icon name="key" size={17} />
           Sign in with the code host
         </a>
         <p className="hs-hint">
-          The code host tells us who you are. Signing a sheet asks for your signing passphrase, which it never learns.
+          The code host tells us who you are. Signing a sheet asks for your signing passphrase, which it never
+          learns.
         </p>
         {welcome.demo && <DemoPeople demo={welcome.demo} />}
       </div>
       <div className="hs-sign-in-light">
         <p>
-          <b>Detectors live nearby?</b> Choose Dark-room before you sign in. The screen then shows red light only.
+          <b>Detectors live nearby?</b> Choose Dark-room before you sign in. The screen then shows red light
+          only.
         </p>
         <ThemeChoice large />
       </div>

@@ -1,7 +1,8 @@
 import { setTimeout as pause } from 'node:timers/promises'
 import type { Transaction } from 'sequelize'
 import { Problem } from '../../../contract/problems.ts'
-import { readingOptions } from '../../../ingest/registry.ts'
+import { formatVersion, readingOptions } from '../../../ingest/registry.ts'
+import { readingSha256 } from '../../../ledger-format/content.ts'
 import type { Actor } from '../../../platform/http/actor.ts'
 import type { Services } from '../../../platform/services.ts'
 import { actorOf, appendEvent } from '../../ledger/index.ts'
@@ -22,41 +23,45 @@ export async function setReading(
 ): Promise<FileRow> {
   const options = readingOptions(choice.format, choice.options)
   await services.db.transaction(async (t) => {
-    await requireReadableFile(services, actor, fileId, t)
+    const subject = await claimFile(services, actor, fileId, t)
     await chooseReading(services.db, fileId, { format: choice.format, options, by: actor.personId }, t)
     await services.queue.send('read-file', { fileId }, { transaction: t })
+    const sha256 = readingSha256({ format: choice.format, version: formatVersion(choice.format), options })
+    await appendEvent(services, t, {
+      actor: actorOf(actor),
+      action: 'reading.set',
+      subject,
+      payload: { fileId, readingSha256: sha256 },
+    })
   })
   const file = await waitForReading(services, fileId, WAIT_MS)
   if (file.readingStatus === 'unreadable')
     throw new Problem('unreadable-file', file.readingDetail ?? 'The file cannot be read in this way.')
-  if (file.readingStatus === 'ready') await recordReading(services, actor, file)
   return file
 }
 
-async function requireReadableFile(
+/** A file whose reading the caller may choose now, with its entry or its unfiled run locked; answers whose act it is. */
+async function claimFile(
   services: Services,
   actor: Actor,
   fileId: string,
   t: Transaction,
-): Promise<void> {
+): Promise<{ kind: 'entry' | 'run'; id: string }> {
   const file = await findFile(services.db, fileId, t)
   if (file === null) throw new Problem('not-found', 'There is no such file, or you may not read it.')
   await requireNotebook(services, actor, file.notebookId, 'write', t)
-  if (file.homeEntryId !== null) await requireWritableEntry(services, actor, file.homeEntryId, t)
-}
-
-async function recordReading(services: Services, actor: Actor, file: FileRow): Promise<void> {
-  await services.db.transaction((t) =>
-    appendEvent(services, t, {
-      actor: actorOf(actor),
-      action: 'reading.set',
-      subject:
-        file.homeEntryId === null
-          ? { kind: 'run', id: file.runId as string }
-          : { kind: 'entry', id: file.homeEntryId },
-      payload: { fileId: file.id, readingSha256: file.readingSha256 },
-    }),
+  if (file.homeEntryId !== null) {
+    await requireWritableEntry(services, actor, file.homeEntryId, t)
+    return { kind: 'entry', id: file.homeEntryId }
+  }
+  const runId = file.runId as string
+  const run = await services.db.row<{ filed: boolean }>(
+    'select entry_id is not null as filed from work.runs where id = :runId for update',
+    { runId },
+    t,
   )
+  if (run?.filed) throw new Problem('wrong-state', 'The run was filed just now; look again.')
+  return { kind: 'run', id: runId }
 }
 
 /** The file as soon as a worker has read it; still pending when that takes longer than `waitMs`. */
