@@ -3,9 +3,9 @@ import { markAttributes, nodeAttributes } from './attributes.ts'
 import { DocumentError } from './document-error.ts'
 
 /** Deeper nesting than any real text has; below the depth at which recursion over the tree could fail. */
-export const maxDepth = 100
-export const maxNodes = 50_000
-export const maxCharacters = 2_000_000
+const maxDepth = 100
+const maxNodes = 50_000
+const maxCharacters = 2_000_000
 
 const nodeMembers = new Set(['type', 'attrs', 'content', 'marks', 'text'])
 const markMembers = new Set(['type', 'attrs'])

@@ -1,7 +1,7 @@
 import type { DocumentNode, NormalDocument } from './document.ts'
 
 /** Every node of a document in document order. */
-export function* nodesOf(node: DocumentNode): Generator<DocumentNode> {
+function* nodesOf(node: DocumentNode): Generator<DocumentNode> {
   yield node
   for (const child of node.content ?? []) yield* nodesOf(child)
 }

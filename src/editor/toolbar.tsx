@@ -1,10 +1,9 @@
 import { useEditorState, type Editor } from '@tiptap/react'
 import { useState, type KeyboardEvent, type ReactNode } from 'react'
-import { Icon, type IconName } from '../ui/icon.tsx'
-import { Tip } from '../ui/tip.tsx'
 import { useEditorParts } from './editor-parts.ts'
 import { LinkDialog } from './link-dialog.tsx'
 import { TableTools } from './table-tools.tsx'
+import { Gap, Tool } from './tool.tsx'
 
 /** Tools above the text. Each has its key; Tab goes past them, arrows go along them. */
 export function Toolbar({ editor, end }: { editor: Editor; end?: ReactNode }) {
@@ -148,42 +147,6 @@ function activeIn(editor: Editor) {
     redo: editor.can().redo(),
   }
 }
-
-interface ToolProps {
-  label: string
-  keys?: string
-  on?: boolean
-  off?: boolean
-  run: () => void
-  icon?: IconName
-  text?: ReactNode
-  words?: string
-  first?: boolean
-}
-
-function Tool({ label, keys, on, off, run, icon, text, words, first }: ToolProps) {
-  return (
-    <Tip words={keys ? `${label}, ${keys}` : label}>
-      <button
-        type="button"
-        className="hs-tool"
-        aria-label={label}
-        aria-pressed={on}
-        aria-disabled={off || undefined}
-        tabIndex={first ? 0 : -1}
-        // The text keeps its selection.
-        onMouseDown={(event) => event.preventDefault()}
-        onClick={() => !off && run()}
-      >
-        {icon && <Icon name={icon} size={17} />}
-        {text}
-        {words && <span className="hs-tool-words">{words}</span>}
-      </button>
-    </Tip>
-  )
-}
-
-const Gap = () => <span className="hs-toolbar-gap" aria-hidden />
 
 function alongTools(event: KeyboardEvent<HTMLDivElement>) {
   const by = event.key === 'ArrowRight' ? 1 : event.key === 'ArrowLeft' ? -1 : 0

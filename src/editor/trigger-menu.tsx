@@ -14,16 +14,23 @@ export function TriggerMenu({ editor }: { editor: Editor }) {
     equalityFn: sameTrigger,
   })
   const [closedAt, setClosedAt] = useState<number | null>(null)
-  const [chosen, setChosen] = useState(0)
+  const query = trigger?.query ?? ''
+  const [choice, setChoice] = useState({ query, at: 0 })
+  const chosen = choice.query === query ? choice.at : 0
   const items = trigger
-    ? matching(trigger.kind === 'insert' ? insertItems(parts) : figureItems(parts), trigger.query)
+    ? matching(trigger.kind === 'insert' ? insertItems(parts) : figureItems(parts), query)
     : []
-  const open = trigger !== null && trigger.from !== closedAt && (items.length > 0 || trigger.query === '')
-  const query = trigger?.query
-  useEffect(() => setChosen(0), [query])
+  const open = trigger !== null && trigger.from !== closedAt && (items.length > 0 || query === '')
+
   useEffect(() => {
-    if (trigger === null) setClosedAt(null)
-  }, [trigger])
+    const forget = () => {
+      if (triggerAt(editor.state) === null) setClosedAt(null)
+    }
+    editor.on('transaction', forget)
+    return () => {
+      editor.off('transaction', forget)
+    }
+  }, [editor])
 
   function take(item: MenuItem) {
     if (!trigger) return
@@ -32,7 +39,8 @@ export function TriggerMenu({ editor }: { editor: Editor }) {
   }
 
   useMenuKeys(editor, open, {
-    move: (by) => setChosen((at) => (items.length === 0 ? 0 : (at + by + items.length) % items.length)),
+    move: (by) =>
+      setChoice({ query, at: items.length === 0 ? 0 : (chosen + by + items.length) % items.length }),
     take: () => {
       const item = items[chosen]
       if (item) take(item)

@@ -56,8 +56,3 @@ export function waitText(seconds: number): string {
     return whole % 60 === 0 ? `${whole / 60} min` : `${Math.floor(whole / 60)} min ${whole % 60} s`
   return `${Math.floor(whole / 3600)} h ${Math.round((whole % 3600) / 60)} min`
 }
-
-/** The first eight digits of a digest, in two groups of four. */
-export function shortDigest(hex: string): string {
-  return `${hex.slice(0, 4)} ${hex.slice(4, 8)}`
-}

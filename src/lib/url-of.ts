@@ -1,6 +1,6 @@
 import { endpoints, type EndpointName } from '../../server/contract/endpoints.ts'
 
-export const apiRoot = '/api/v1'
+const apiRoot = '/api/v1'
 
 export type PathValues = Record<string, string | number>
 export type QueryValues = Record<string, string | number | boolean | undefined>

@@ -20,7 +20,6 @@ const sealed = new ApiProblem({
 function server() {
   let save = 0
   const ports = {
-    document: vi.fn(() => emptyDocument()),
     put: vi.fn<SaverPorts['put']>(async (_, ifMatch) => {
       if (ifMatch !== `"${save}"`) throw stale
       save += 1
@@ -29,7 +28,7 @@ function server() {
     currentEtag: vi.fn(async () => `"${save}"`),
     cutRevision: vi.fn<SaverPorts['cutRevision']>(async () => {}),
   }
-  return { ports, someoneElseSaves: () => (save += 1), saver: new ContentSaver(ports, '"0"') }
+  return { ports, someoneElseSaves: () => (save += 1), saver: new ContentSaver(ports, '"0"', emptyDocument) }
 }
 
 beforeEach(() => void vi.useFakeTimers())

@@ -3,9 +3,12 @@ import { canStartSet, standardSetName } from '../../features/calculations/standa
 import { useInputsUsed } from '../../features/calculations/use-inputs-used.ts'
 import { FileChip } from '../../features/files/file-chip.tsx'
 import '../../features/files/files.css'
+import { useAddRun } from '../../features/runs/mutations.ts'
 import { RunPart } from '../../features/runs/run-part.tsx'
 import '../../features/runs/runs.css'
+import { sentenceOf } from '../../lib/api-problem.ts'
 import { Button } from '../../ui/button.tsx'
+import { Message } from '../../ui/message.tsx'
 import { filesOf } from './use-open-entry.ts'
 
 interface SheetMarginProps {
@@ -23,6 +26,7 @@ export function SheetMargin({ entry, editable, onStandardSet }: SheetMarginProps
       {entry.runs.map((run) => (
         <RunPart key={run.id} run={run} entryId={entry.id} editable={editable} />
       ))}
+      {editable && entry.runs.length === 0 && <BeginRun entry={entry} />}
       {filesOf(entry).map((file) => (
         <div key={file.id} id={file.id} tabIndex={-1} data-beside={used.get(file.id)?.join(' ')}>
           <FileChip
@@ -39,5 +43,24 @@ export function SheetMargin({ entry, editable, onStandardSet }: SheetMarginProps
         </div>
       ))}
     </>
+  )
+}
+
+/** A record that is dropped begins a run by itself; this is for noting the conditions before there is one. */
+function BeginRun({ entry }: { entry: Entry }) {
+  const add = useAddRun(entry.id)
+  return (
+    <div className="hs-attach">
+      <Button
+        size="small"
+        icon="plus"
+        busy={add.isPending}
+        onClick={() => add.mutate({ experiment: entry.experiment })}
+      >
+        Begin a run
+      </Button>
+      <span className="hs-quiet">to note its conditions; a record dropped here begins one too</span>
+      {add.isError && <Message kind="fault">{sentenceOf(add.error)}</Message>}
+    </div>
   )
 }

@@ -1,17 +1,13 @@
 import type { Editor } from '@tiptap/react'
-import { useCallback, useEffect, useMemo, useRef, useState } from 'react'
+import { useCallback, useEffect, useRef, useState } from 'react'
 import type { EntrySummary, Entry } from '../../../server/contract/entries.ts'
-import type { RawFile } from '../../../server/contract/files.ts'
 import type { Notebook } from '../../../server/contract/notebooks.ts'
 import type { Session } from '../../../server/contract/people.ts'
 import type { NormalDocument } from '../../../server/document/index.ts'
 import { EditorPartsProvider } from '../../editor/editor-parts.ts'
-import { insertBlocks } from '../../editor/place.ts'
 import { SheetEditor } from '../../editor/sheet-editor.tsx'
 import { Toolbar } from '../../editor/toolbar.tsx'
 import { InsertCalculation } from '../../features/calculations/insert-calculation.tsx'
-import { useStartCalculations } from '../../features/calculations/mutations.ts'
-import { standardSet } from '../../features/calculations/standard-set.ts'
 import { experimentNames } from '../../features/entries/experiments.ts'
 import { SaveStateLine } from '../../features/entries/save-state.tsx'
 import { SaveTrouble } from '../../features/entries/save-trouble.tsx'
@@ -36,11 +32,13 @@ import { SheetHeading } from './sheet-heading.tsx'
 import { SheetMargin } from './sheet-margin.tsx'
 import { StandingMessage } from './standing-message.tsx'
 import { useBeside } from './use-beside.ts'
+import { useFileField } from './use-file-field.tsx'
 import { useFollowServer } from './use-follow-server.ts'
 import { useNewAuthor } from './use-new-author.ts'
 import { filesOf } from './use-open-entry.ts'
+import { usePlacing } from './use-placing.ts'
 import { useSheetParts } from './use-sheet-parts.tsx'
-import { isPicture, useUploads } from './use-uploads.ts'
+import { useUploads } from './use-uploads.ts'
 import './sheet.css'
 
 interface SheetPageProps {
@@ -57,58 +55,29 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
   const [editor, setEditor] = useState<Editor | null>(null)
   const [asking, setAsking] = useState(false)
   const body = useRef<HTMLDivElement>(null)
-  const fileField = useRef<HTMLInputElement>(null)
-  const pictureField = useRef<HTMLInputElement>(null)
   const text = useCallback(
     () => (editor ? (editor.getJSON() as NormalDocument) : content.document),
     [editor, content],
   )
   const { saver, state } = useContentSaver(entry.id, content.etag, text)
-  const asks = useMemo(
-    () => ({ calculation: () => setAsking(true), picture: () => pictureField.current?.click() }),
-    [],
-  )
-  const { parts, leaving, stay } = useSheetParts(entry, editable, asks)
-  const start = useStartCalculations(entry.id)
+  const placing = usePlacing(entry, editor)
+  const { list, uploads } = useUploads(entry, placing.placePicture)
+  const addFiles = useCallback((files: File[]) => list.add(files), [list])
+  const files = useFileField(addFiles)
+  const pictures = useFileField(addFiles, 'image/png,image/jpeg,image/webp')
+  const { parts, leaving, stay } = useSheetParts(entry, editable, {
+    calculation: () => setAsking(true),
+    picture: pictures.open,
+  })
   useFollowServer(entry.id, editor, saver)
   useBeside(body)
   useEffect(() => () => void saver.leave(), [saver])
   useNewAuthor(entry, state)
   useKeys({ e: () => editable && editor?.commands.focus('end') })
 
-  const { list, uploads } = useUploads(entry, placePicture)
-  const addFiles = useCallback((files: File[]) => list.add(files), [list])
-
-  function placePicture(file: RawFile) {
-    if (editor && isPicture(file.name))
-      insertBlocks(editor, [{ type: 'image', attrs: { fileId: file.id, alt: '', caption: '' } }])
-  }
-
-  function placeCalculations(ids: string[]) {
-    setAsking(false)
-    if (editor)
-      insertBlocks(
-        editor,
-        ids.map((calculationId) => ({ type: 'calculation', attrs: { calculationId } })),
-      )
-  }
-
-  function startStandardSet(fileId: string) {
-    const file = filesOf(entry).find((each) => each.id === fileId)
-    if (file)
-      start.mutate(standardSet(file), {
-        onSuccess: (started) => placeCalculations(started.map(({ id }) => id)),
-      })
-  }
-
   function takeTheirs(document: NormalDocument, etag: string) {
     editor?.commands.setContent(document, { emitUpdate: false })
     saver.adopt(etag)
-  }
-
-  function fromField(field: HTMLInputElement) {
-    addFiles([...(field.files ?? [])])
-    field.value = ''
   }
 
   return (
@@ -144,22 +113,15 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
                         <>
                           <SheetMargin
                             {...{ entry, editable }}
-                            onStandardSet={editable ? startStandardSet : null}
+                            onStandardSet={editable ? placing.startStandardSet : null}
                           />
-                          {uploads.length > 0 && <UploadLines list={list} uploads={uploads} />}
-                          {editable && (
-                            <div className="hs-attach">
-                              <Button size="small" icon="upload" onClick={() => fileField.current?.click()}>
-                                Attach files
-                              </Button>
-                              <span className="hs-quiet">or drop them anywhere on the sheet</span>
-                            </div>
-                          )}
+                          <UploadLines list={list} uploads={uploads} />
+                          {editable && <AttachFiles onOpen={files.open} />}
                         </>
                       }
                     >
                       <StandingMessage entry={entry} editable={editable} />
-                      {start.isError && <Message kind="fault">{sentenceOf(start.error)}</Message>}
+                      {placing.trouble && <Message kind="fault">{sentenceOf(placing.trouble)}</Message>}
                       <SheetEditor
                         initial={content.document}
                         editable={editable}
@@ -178,24 +140,32 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
           </div>
         </div>
       </Ground>
-      <input ref={fileField} type="file" multiple hidden onChange={(event) => fromField(event.target)} />
-      <input
-        ref={pictureField}
-        type="file"
-        accept="image/png,image/jpeg,image/webp"
-        hidden
-        onChange={(event) => fromField(event.target)}
-      />
+      {files.field}
+      {pictures.field}
       {asking && (
         <InsertCalculation
           entryId={entry.id}
           files={filesOf(entry)}
-          onStarted={placeCalculations}
+          onStarted={(ids) => {
+            setAsking(false)
+            placing.placeCalculations(ids)
+          }}
           onClose={() => setAsking(false)}
         />
       )}
       <OutsideLink href={leaving} onClose={stay} />
       <LeaveGuard saver={saver} />
     </EditorPartsProvider>
+  )
+}
+
+function AttachFiles({ onOpen }: { onOpen: () => void }) {
+  return (
+    <div className="hs-attach">
+      <Button size="small" icon="upload" onClick={onOpen}>
+        Attach files
+      </Button>
+      <span className="hs-quiet">or drop them anywhere on the sheet</span>
+    </div>
   )
 }

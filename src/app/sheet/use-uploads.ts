@@ -1,8 +1,8 @@
 import { useQueryClient } from '@tanstack/react-query'
-import { useEffect, useRef, useState, useSyncExternalStore } from 'react'
+import { useEffect, useState, useSyncExternalStore } from 'react'
 import type { Entry } from '../../../server/contract/entries.ts'
 import type { RawFile } from '../../../server/contract/files.ts'
-import { UploadList, type UploadTarget } from '../../features/files/upload-list.ts'
+import { UploadList, type UploadPorts, type UploadTarget } from '../../features/files/upload-list.ts'
 import { call } from '../../lib/call.ts'
 import { queryKeys } from '../../lib/query-keys.ts'
 
@@ -15,32 +15,29 @@ export const isPicture = (name: string): boolean => /\.(png|jpe?g|webp)$/i.test(
  */
 export function useUploads(entry: Entry, onStored: (file: RawFile) => void) {
   const client = useQueryClient()
-  const latest = useRef({ entry, onStored })
-  useEffect(() => {
-    latest.current = { entry, onStored }
-  })
-  const [list] = useState(
-    () =>
-      new UploadList({
-        target: async (file) => {
-          const now = latest.current.entry
-          if (isPicture(file.name)) return { name: 'uploadToEntry', id: now.id }
-          return runTarget(now)
-        },
-        stored: (file) => {
-          void client.invalidateQueries({ queryKey: queryKeys.entry(latest.current.entry.id), exact: true })
-          latest.current.onStored(file)
-        },
-      }),
-  )
-  return { list, uploads: useSyncExternalStore(list.subscribe, list.getUploads) }
-
-  async function runTarget(now: Entry): Promise<UploadTarget> {
-    const open = now.runs.findLast((run) => !run.frozen)
-    const run =
-      open ??
-      (await call('createRunInEntry', { params: { id: now.id }, body: { experiment: now.experiment } }))
-    if (!open) await client.invalidateQueries({ queryKey: queryKeys.entry(now.id), exact: true })
-    return { name: 'uploadToRun', id: run.id }
+  const look = () => client.invalidateQueries({ queryKey: queryKeys.entry(entry.id), exact: true })
+  const ports: UploadPorts = {
+    target: async (file) => {
+      if (isPicture(file.name)) return { name: 'uploadToEntry', id: entry.id }
+      return runTarget(entry, look)
+    },
+    stored: (file) => {
+      void look()
+      onStored(file)
+    },
   }
+  const [list] = useState(() => new UploadList(ports))
+  useEffect(() => list.serve(ports))
+  return { list, uploads: useSyncExternalStore(list.subscribe, list.getUploads) }
+}
+
+async function runTarget(entry: Entry, look: () => Promise<void>): Promise<UploadTarget> {
+  const open = entry.runs.findLast((run) => !run.frozen)
+  if (open) return { name: 'uploadToRun', id: open.id }
+  const { id } = await call('createRunInEntry', {
+    params: { id: entry.id },
+    body: { experiment: entry.experiment },
+  })
+  await look()
+  return { name: 'uploadToRun', id }
 }

@@ -1,23 +1,16 @@
 import katex from 'katex'
-import { useEffect, useRef, useState } from 'react'
+import { useEffect, useMemo, useRef } from 'react'
 import { mathsOptions } from '../../../server/document/maths.ts'
 
 /** A formula as set by KaTeX; one that cannot be set is shown as typed, with the reason. */
 export function Maths({ latex, display }: { latex: string; display: boolean }) {
   const place = useRef<HTMLSpanElement>(null)
-  const [wrong, setWrong] = useState<string | null>(null)
+  const wrong = useMemo(() => reasonAgainst(latex, display), [latex, display])
   useEffect(() => {
     if (!place.current) return
-    try {
-      katex.render(latex, place.current, mathsOptions(display))
-      setWrong(null)
-    } catch (error) {
-      place.current.textContent = latex
-      setWrong(
-        error instanceof Error ? error.message.replace(/^KaTeX parse error: /, '') : 'It cannot be set.',
-      )
-    }
-  }, [latex, display])
+    if (wrong === null) katex.render(latex, place.current, mathsOptions(display))
+    else place.current.textContent = latex
+  }, [latex, display, wrong])
   return (
     <>
       <span ref={place} className={wrong ? 'hs-maths-wrong' : undefined} />
@@ -28,4 +21,13 @@ export function Maths({ latex, display }: { latex: string; display: boolean }) {
       )}
     </>
   )
+}
+
+function reasonAgainst(latex: string, display: boolean): string | null {
+  try {
+    katex.renderToString(latex, mathsOptions(display))
+    return null
+  } catch (error) {
+    return error instanceof Error ? error.message.replace(/^KaTeX parse error: /, '') : 'It cannot be set.'
+  }
 }

@@ -19,8 +19,6 @@ export type SaveState =
   | { name: 'refused'; problem: ApiProblem }
 
 export interface SaverPorts {
-  /** The text as it stands on the screen. */
-  document(): NormalDocument
   put(
     document: NormalDocument,
     ifMatch: string,
@@ -37,6 +35,7 @@ export interface SaverPorts {
  */
 export class ContentSaver {
   private readonly ports: SaverPorts
+  private document: () => NormalDocument
   private etag: string
   private state: SaveState
   private dirty = false
@@ -45,8 +44,10 @@ export class ContentSaver {
   private timer: ReturnType<typeof setTimeout> | null = null
   private readonly listeners = new Set<() => void>()
 
-  constructor(ports: SaverPorts, etag: string) {
+  /** @param document gives the text as it stands on the screen */
+  constructor(ports: SaverPorts, etag: string, document: () => NormalDocument) {
     this.ports = ports
+    this.document = document
     this.etag = etag
     this.state = { name: 'saved', at: null }
   }
@@ -56,6 +57,11 @@ export class ContentSaver {
   readonly subscribe = (listener: () => void): (() => void) => {
     this.listeners.add(listener)
     return () => this.listeners.delete(listener)
+  }
+
+  /** From now on the text is read so. */
+  readFrom(document: () => NormalDocument): void {
+    this.document = document
   }
 
   /** ETag of the text that the screen follows. */
@@ -132,7 +138,7 @@ export class ContentSaver {
   }
 
   private async send(keepalive: boolean): Promise<void> {
-    const document = this.ports.document()
+    const document = this.document()
     this.dirty = false
     if (this.state.name !== 'offline') this.become({ name: 'saving' })
     try {

@@ -1,4 +1,4 @@
-import { useEffect, useRef, useState, type KeyboardEvent } from 'react'
+import { useRef, useState, type KeyboardEvent } from 'react'
 import { sentenceOf } from '../../lib/api-problem.ts'
 import { useChangeEntry } from './mutations.ts'
 
@@ -13,16 +13,28 @@ export function SheetTitle({
   editable: boolean
 }) {
   const change = useChangeEntry(entryId)
+  if (!editable) return <h1 className="hs-title">{title}</h1>
+  return (
+    <>
+      <h1 className="hs-only-spoken">{title}</h1>
+      <TitleField key={title} title={title} onKeep={(text) => change.mutate({ title: text })} />
+      {change.isError && (
+        <p className="hs-error" role="alert">
+          The title was not kept. {sentenceOf(change.error)}
+        </p>
+      )}
+    </>
+  )
+}
+
+function TitleField({ title, onKeep }: { title: string; onKeep: (text: string) => void }) {
   const field = useRef<HTMLTextAreaElement>(null)
   const [text, setText] = useState(title)
-  useEffect(() => setText(title), [title])
-
-  if (!editable) return <h1 className="hs-title">{title}</h1>
 
   function keep() {
     const trimmed = text.trim()
     if (trimmed === '') setText(title)
-    else if (trimmed !== title) change.mutate({ title: trimmed })
+    else if (trimmed !== title) onKeep(trimmed)
   }
 
   function onKeyDown(event: KeyboardEvent) {
@@ -37,25 +49,17 @@ export function SheetTitle({
   }
 
   return (
-    <>
-      <h1 className="hs-only-spoken">{title}</h1>
-      <div className="hs-title hs-title-field" data-text={text}>
-        <textarea
-          ref={field}
-          aria-label="Title of the sheet"
-          rows={1}
-          maxLength={300}
-          value={text}
-          onChange={(event) => setText(event.target.value.replace(/\n/g, ' '))}
-          onKeyDown={onKeyDown}
-          onBlur={keep}
-        />
-      </div>
-      {change.isError && (
-        <p className="hs-error" role="alert">
-          The title was not kept. {sentenceOf(change.error)}
-        </p>
-      )}
-    </>
+    <div className="hs-title hs-title-field" data-text={text}>
+      <textarea
+        ref={field}
+        aria-label="Title of the sheet"
+        rows={1}
+        maxLength={300}
+        value={text}
+        onChange={(event) => setText(event.target.value.replace(/\n/g, ' '))}
+        onKeyDown={onKeyDown}
+        onBlur={keep}
+      />
+    </div>
   )
 }

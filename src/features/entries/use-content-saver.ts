@@ -1,15 +1,12 @@
-import { useEffect, useRef, useState, useSyncExternalStore } from 'react'
+import { useEffect, useState, useSyncExternalStore } from 'react'
 import type { NormalDocument } from '../../../server/document/index.ts'
 import { call, callForAnswer } from '../../lib/call.ts'
 import { ContentSaver } from './content-saver.ts'
 
 /** The saver of one open sheet, tied to its page: it saves when the page hides and cuts a revision on leaving. */
 export function useContentSaver(entryId: string, etag: string, document: () => NormalDocument) {
-  const read = useRef(document)
-  useEffect(() => {
-    read.current = document
-  })
-  const [saver] = useState(() => createSaver(entryId, etag, () => read.current()))
+  const [saver] = useState(() => createSaver(entryId, etag, document))
+  useEffect(() => saver.readFrom(document), [saver, document])
   const state = useSyncExternalStore(saver.subscribe, saver.getState)
 
   useEffect(() => {
@@ -36,7 +33,6 @@ export function useContentSaver(entryId: string, etag: string, document: () => N
 function createSaver(id: string, etag: string, document: () => NormalDocument): ContentSaver {
   return new ContentSaver(
     {
-      document,
       put: async (content, ifMatch, keepalive) => {
         const answer = await callForAnswer('putContent', {
           params: { id },
@@ -52,5 +48,6 @@ function createSaver(id: string, etag: string, document: () => NormalDocument): 
       },
     },
     etag,
+    document,
   )
 }

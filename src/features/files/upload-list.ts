@@ -16,7 +16,7 @@ export interface Upload {
 
 export type UploadTarget = { name: 'uploadToEntry' | 'uploadToRun'; id: string }
 
-interface Ports {
+export interface UploadPorts {
   /** Where a file goes; asked when its turn comes, because a run may have to be made first. */
   target(file: File): Promise<UploadTarget>
   stored(file: RawFile): void
@@ -32,9 +32,9 @@ export class UploadList {
   private readonly listeners = new Set<() => void>()
   private busy = false
   private count = 0
-  private readonly ports: Ports
+  private ports: UploadPorts
 
-  constructor(ports: Ports) {
+  constructor(ports: UploadPorts) {
     this.ports = ports
   }
 
@@ -43,6 +43,11 @@ export class UploadList {
   readonly subscribe = (listener: () => void): (() => void) => {
     this.listeners.add(listener)
     return () => this.listeners.delete(listener)
+  }
+
+  /** From now on files go where these ports say. */
+  serve(ports: UploadPorts): void {
+    this.ports = ports
   }
 
   /** Takes files; what cannot be a record is refused at once, with the reason. */

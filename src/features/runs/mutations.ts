@@ -4,16 +4,12 @@ import type { Condition } from '../../../server/contract/runs.ts'
 import { call } from '../../lib/call.ts'
 import { queryKeys } from '../../lib/query-keys.ts'
 
-interface NewRun {
-  experiment: Experiment
-  startedAt?: string
-}
-
 /** A run filed in the entry. */
 export function useAddRun(entryId: string) {
   const client = useQueryClient()
   return useMutation({
-    mutationFn: (run: NewRun) => call('createRunInEntry', { params: { id: entryId }, body: run }),
+    mutationFn: (run: { experiment: Experiment }) =>
+      call('createRunInEntry', { params: { id: entryId }, body: run }),
     onSuccess: () => client.invalidateQueries({ queryKey: queryKeys.entry(entryId), exact: true }),
   })
 }
