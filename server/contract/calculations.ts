@@ -46,7 +46,9 @@ export const calculationSchema = z.object({
   provenance: z
     .object({
       engine: z.string(),
-      inputs: z.array(z.object({ fileId: idSchema, sha256: hexDigestSchema, readingSha256: hexDigestSchema })),
+      inputs: z.array(
+        z.object({ fileId: idSchema, sha256: hexDigestSchema, readingSha256: hexDigestSchema }),
+      ),
       startedAt: timeSchema,
       finishedAt: timeSchema,
       worker: z.string(),

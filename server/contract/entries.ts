@@ -1,14 +1,40 @@
 import { z } from 'zod'
 import { endpoint } from './endpoint.ts'
-import { byId, experimentSchema, hexDigestSchema, idSchema, listOf, pageQuerySchema, timeInputSchema, timeSchema } from './common.ts'
+import {
+  byId,
+  experimentSchema,
+  hexDigestSchema,
+  idSchema,
+  listOf,
+  pageQuerySchema,
+  timeInputSchema,
+  timeSchema,
+} from './common.ts'
 import { calculationSummarySchema } from './calculations.ts'
 import { fileSchema } from './files.ts'
 import { runSchema } from './runs.ts'
 import { entrySignatureSchema } from './signatures.ts'
 
 export const entryStates = ['draft', 'submitted', 'sealed', 'withdrawn'] as const
-export const entryPhases = ['writing', 'collecting', 'returned', 'with-witness', 'sealed', 'withdrawn'] as const
-export const entryActions = ['edit', 'sign:authorship', 'witness:read', 'witness:present', 'return', 'reopen', 'withdraw', 'addendum', 'export'] as const
+export const entryPhases = [
+  'writing',
+  'collecting',
+  'returned',
+  'with-witness',
+  'sealed',
+  'withdrawn',
+] as const
+export const entryActions = [
+  'edit',
+  'sign:authorship',
+  'witness:read',
+  'witness:present',
+  'return',
+  'reopen',
+  'withdraw',
+  'addendum',
+  'export',
+] as const
 
 const amendsSchema = z.object({ entryId: idSchema, number: z.string(), bodySha256: hexDigestSchema })
 
@@ -54,7 +80,10 @@ export const entrySchema = entrySummarySchema.extend({
 export type Entry = z.infer<typeof entrySchema>
 
 /** A ProseMirror document; the server checks it against the editor's schema. */
-export const contentSchema = z.looseObject({ type: z.literal('doc'), content: z.array(z.unknown()).optional() })
+export const contentSchema = z.looseObject({
+  type: z.literal('doc'),
+  content: z.array(z.unknown()).optional(),
+})
 
 export const revisionSchema = z.object({
   revision: z.number().int(),
@@ -82,7 +111,10 @@ export const entryEndpoints = {
     path: '/entries',
     summary: 'Entries the caller may read, newest change first; `waiting` gives those the caller can witness',
     tag: 'Entries',
-    query: pageQuerySchema.extend({ waiting: z.stringbool().default(false), mine: z.stringbool().default(false) }),
+    query: pageQuerySchema.extend({
+      waiting: z.stringbool().default(false),
+      mine: z.stringbool().default(false),
+    }),
     reply: listOf(entrySummarySchema.extend({ notebookTitle: z.string() })),
   }),
   createEntry: endpoint({
@@ -92,11 +124,22 @@ export const entryEndpoints = {
     tag: 'Entries',
     token: 'record',
     params: byId,
-    body: z.strictObject({ title, experiment: experimentSchema.default('hbt'), runAt: timeInputSchema.optional() }),
+    body: z.strictObject({
+      title,
+      experiment: experimentSchema.default('hbt'),
+      runAt: timeInputSchema.optional(),
+    }),
     reply: entrySchema,
     status: 201,
   }),
-  getEntry: endpoint({ method: 'GET', path: '/entries/:id', summary: 'One entry', tag: 'Entries', params: byId, reply: entrySchema }),
+  getEntry: endpoint({
+    method: 'GET',
+    path: '/entries/:id',
+    summary: 'One entry',
+    tag: 'Entries',
+    params: byId,
+    reply: entrySchema,
+  }),
   changeEntry: endpoint({
     method: 'PATCH',
     path: '/entries/:id',

@@ -18,7 +18,14 @@ export const exportSchema = z.object({
 export type BundleExport = z.infer<typeof exportSchema>
 
 export const exportEndpoints = {
-  listExports: endpoint({ method: 'GET', path: '/exports', summary: 'My exports, newest first', tag: 'Exports', token: 'never', reply: listOf(exportSchema) }),
+  listExports: endpoint({
+    method: 'GET',
+    path: '/exports',
+    summary: 'My exports, newest first',
+    tag: 'Exports',
+    token: 'never',
+    reply: listOf(exportSchema),
+  }),
   startExport: endpoint({
     method: 'POST',
     path: '/exports',
@@ -26,13 +33,24 @@ export const exportEndpoints = {
     tag: 'Exports',
     body: z.union([
       z.strictObject({ notebookId: idSchema, withoutRaw: z.boolean().default(false) }),
-      z.strictObject({ entryIds: z.array(idSchema).min(1).max(1000), withoutRaw: z.boolean().default(false) }),
+      z.strictObject({
+        entryIds: z.array(idSchema).min(1).max(1000),
+        withoutRaw: z.boolean().default(false),
+      }),
     ]),
     reply: exportSchema,
     status: 202,
     problems: ['wrong-state'],
   }),
-  getExport: endpoint({ method: 'GET', path: '/exports/:id', summary: 'State of an export', tag: 'Exports', token: 'never', params: byId, reply: exportSchema }),
+  getExport: endpoint({
+    method: 'GET',
+    path: '/exports/:id',
+    summary: 'State of an export',
+    tag: 'Exports',
+    token: 'never',
+    params: byId,
+    reply: exportSchema,
+  }),
   getBundle: endpoint({
     method: 'GET',
     path: '/exports/:id/bundle',

@@ -65,7 +65,14 @@ export const fileEndpoints = {
     status: 201,
     problems: ['too-large', 'upload-refused', 'wrong-state'],
   }),
-  getFile: endpoint({ method: 'GET', path: '/files/:id', summary: 'Description of a file', tag: 'Files', params: byId, reply: fileSchema }),
+  getFile: endpoint({
+    method: 'GET',
+    path: '/files/:id',
+    summary: 'Description of a file',
+    tag: 'Files',
+    params: byId,
+    reply: fileSchema,
+  }),
   getFileContent: endpoint({
     method: 'GET',
     path: '/files/:id/content',

@@ -9,7 +9,11 @@ export const ledgerEventSchema = z.object({
   epoch: z.number().int(),
   sequence: z.number().int(),
   time: timeSchema,
-  actor: z.object({ kind: z.enum(['person', 'token', 'worker', 'system']), id: idSchema.nullable(), onBehalfOf: idSchema.nullable() }),
+  actor: z.object({
+    kind: z.enum(['person', 'token', 'worker', 'system']),
+    id: idSchema.nullable(),
+    onBehalfOf: idSchema.nullable(),
+  }),
   action: z.string(),
   subject: z.object({ kind: z.string(), id: idSchema }),
   subjectSequence: z.number().int(),
@@ -33,7 +37,11 @@ const headSchema = z.object({
   keySha256: hash,
 })
 
-export const signedHeadSchema = z.object({ head: headSchema, signature: base64Schema, timeStamp: base64Schema.nullable() })
+export const signedHeadSchema = z.object({
+  head: headSchema,
+  signature: base64Schema,
+  timeStamp: base64Schema.nullable(),
+})
 
 export const anchorsSchema = z.object({
   schema: z.literal('halfsilver-anchors/1'),
@@ -68,7 +76,9 @@ export const ledgerEndpoints = {
       action: z.string().optional(),
       subject: idSchema.optional(),
     }),
-    reply: listOf(ledgerEventSchema.extend({ actorName: z.string().nullable(), subjectName: z.string().nullable() })),
+    reply: listOf(
+      ledgerEventSchema.extend({ actorName: z.string().nullable(), subjectName: z.string().nullable() }),
+    ),
   }),
   getHead: endpoint({
     method: 'GET',
@@ -100,7 +110,13 @@ export const ledgerEndpoints = {
     tag: 'Ledger',
     params: z.object({ seq: z.coerce.number().int().min(1) }),
     query: z.object({ treeSize: z.coerce.number().int().min(1).optional() }),
-    reply: z.object({ sequence: z.number().int(), leafHash: hash, treeSize: z.number().int(), rootHash: hash, path: z.array(hash) }),
+    reply: z.object({
+      sequence: z.number().int(),
+      leafHash: hash,
+      treeSize: z.number().int(),
+      rootHash: hash,
+      path: z.array(hash),
+    }),
   }),
   verifyLedger: endpoint({
     method: 'POST',

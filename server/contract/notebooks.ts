@@ -2,7 +2,13 @@ import { z } from 'zod'
 import { endpoint } from './endpoint.ts'
 import { byId, idSchema, listOf, pageQuerySchema, roleSchema, timeSchema } from './common.ts'
 
-export const memberSchema = z.object({ personId: idSchema, login: z.string(), name: z.string(), role: roleSchema, keeper: z.boolean() })
+export const memberSchema = z.object({
+  personId: idSchema,
+  login: z.string(),
+  name: z.string(),
+  role: roleSchema,
+  keeper: z.boolean(),
+})
 
 export const notebookSchema = z.object({
   id: idSchema,
@@ -38,7 +44,14 @@ export const notebookEndpoints = {
     reply: notebookSchema,
     status: 201,
   }),
-  getNotebook: endpoint({ method: 'GET', path: '/notebooks/:id', summary: 'One notebook', tag: 'Notebooks', params: byId, reply: notebookSchema }),
+  getNotebook: endpoint({
+    method: 'GET',
+    path: '/notebooks/:id',
+    summary: 'One notebook',
+    tag: 'Notebooks',
+    params: byId,
+    reply: notebookSchema,
+  }),
   changeNotebook: endpoint({
     method: 'PATCH',
     path: '/notebooks/:id',

@@ -16,7 +16,12 @@ export const personSchema = z.object({
 })
 export type Person = z.infer<typeof personSchema>
 
-export const laboratorySchema = z.object({ id: idSchema, name: z.string(), demo: z.boolean(), zone: z.string() })
+export const laboratorySchema = z.object({
+  id: idSchema,
+  name: z.string(),
+  demo: z.boolean(),
+  zone: z.string(),
+})
 
 export const sessionSchema = z.object({
   person: personSchema,
@@ -34,7 +39,10 @@ export type Session = z.infer<typeof sessionSchema>
 export const welcomeSchema = z.object({
   laboratory: z.object({ name: z.string(), demo: z.boolean() }),
   demo: z
-    .object({ people: z.array(z.object({ login: z.string(), name: z.string(), role: roleSchema })), passphrase: z.string() })
+    .object({
+      people: z.array(z.object({ login: z.string(), name: z.string(), role: roleSchema })),
+      passphrase: z.string(),
+    })
     .nullable(),
 })
 
@@ -57,10 +65,37 @@ export const peopleEndpoints = {
     token: 'never',
     reply: welcomeSchema,
   }),
-  getSession: endpoint({ method: 'GET', path: '/session', summary: 'Who am I', tag: 'Session', token: 'read', reply: sessionSchema }),
-  endSession: endpoint({ method: 'DELETE', path: '/session', summary: 'Sign out', tag: 'Session', reply: null, status: 204 }),
-  listPeople: endpoint({ method: 'GET', path: '/people', summary: 'People of the laboratory', tag: 'People', reply: listOf(personSchema) }),
-  listTokens: endpoint({ method: 'GET', path: '/tokens', summary: 'My tokens', tag: 'Tokens', token: 'never', reply: listOf(tokenSchema) }),
+  getSession: endpoint({
+    method: 'GET',
+    path: '/session',
+    summary: 'Who am I',
+    tag: 'Session',
+    token: 'read',
+    reply: sessionSchema,
+  }),
+  endSession: endpoint({
+    method: 'DELETE',
+    path: '/session',
+    summary: 'Sign out',
+    tag: 'Session',
+    reply: null,
+    status: 204,
+  }),
+  listPeople: endpoint({
+    method: 'GET',
+    path: '/people',
+    summary: 'People of the laboratory',
+    tag: 'People',
+    reply: listOf(personSchema),
+  }),
+  listTokens: endpoint({
+    method: 'GET',
+    path: '/tokens',
+    summary: 'My tokens',
+    tag: 'Tokens',
+    token: 'never',
+    reply: listOf(tokenSchema),
+  }),
   createToken: endpoint({
     method: 'POST',
     path: '/tokens',

@@ -12,7 +12,10 @@ export interface Membership {
 export type NotebookRight = 'read' | 'write' | 'keep' | 'witness' | 'export'
 
 /** Rights in a notebook of a person with these laboratory roles and this membership (null: not a member). */
-export function notebookRights(laboratoryRoles: readonly Role[], membership: Membership | null): Set<NotebookRight> {
+export function notebookRights(
+  laboratoryRoles: readonly Role[],
+  membership: Membership | null,
+): Set<NotebookRight> {
   if (membership === null || !laboratoryRoles.includes(membership.role)) return new Set()
   const rights = new Set<NotebookRight>(['read'])
   const { role } = membership
@@ -68,7 +71,10 @@ export function entryActions(phase: EntryPhase, standing: EntryStanding): EntryA
   if ((isOpen(phase) || phase === 'collecting') && author && rights.has('write') && !standing.signedAsAuthor)
     actions.push('sign:authorship')
   if (phase === 'with-witness' && mayWitness) actions.push('witness:read', 'witness:present')
-  if (phase === 'with-witness' && ((rights.has('witness') && !standing.contributed) || (author && rights.has('write'))))
+  if (
+    phase === 'with-witness' &&
+    ((rights.has('witness') && !standing.contributed) || (author && rights.has('write')))
+  )
     actions.push('return')
   if (phase === 'collecting' && rights.has('write')) actions.push('reopen')
   if (isOpen(phase) && rights.has('write')) actions.push('withdraw')

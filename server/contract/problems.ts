@@ -51,7 +51,11 @@ export class Problem extends Error {
   readonly errors: FieldError[]
   readonly extra: Record<string, unknown>
 
-  constructor(code: ProblemCode, detail: string, more: { errors?: FieldError[]; extra?: Record<string, unknown> } = {}) {
+  constructor(
+    code: ProblemCode,
+    detail: string,
+    more: { errors?: FieldError[]; extra?: Record<string, unknown> } = {},
+  ) {
     super(detail)
     this.name = 'Problem'
     this.code = code
@@ -72,4 +76,9 @@ export function problemBody(problem: Problem): ProblemBody {
     ...(problem.errors.length > 0 ? { errors: problem.errors } : {}),
     ...problem.extra,
   }
+}
+
+/** One answer for what does not exist and for what the caller may not know of, so that nobody learns which it is. */
+export function nothingHere(): Problem {
+  return new Problem('not-found', 'There is nothing at this address, or you may not see it.')
 }

@@ -1,6 +1,16 @@
 import { z } from 'zod'
 import { endpoint } from './endpoint.ts'
-import { byId, decimalTextSchema, experimentSchema, idSchema, listOf, pageQuerySchema, picosecondsSchema, timeInputSchema, timeSchema } from './common.ts'
+import {
+  byId,
+  decimalTextSchema,
+  experimentSchema,
+  idSchema,
+  listOf,
+  pageQuerySchema,
+  picosecondsSchema,
+  timeInputSchema,
+  timeSchema,
+} from './common.ts'
 import { fileSchema } from './files.ts'
 
 /** A condition of a run, its decimals kept as typed. */
@@ -104,7 +114,14 @@ export const runEndpoints = {
     status: 201,
     problems: ['wrong-state'],
   }),
-  getRun: endpoint({ method: 'GET', path: '/runs/:id', summary: 'One run', tag: 'Runs', params: byId, reply: runSchema }),
+  getRun: endpoint({
+    method: 'GET',
+    path: '/runs/:id',
+    summary: 'One run',
+    tag: 'Runs',
+    params: byId,
+    reply: runSchema,
+  }),
   changeRun: endpoint({
     method: 'PATCH',
     path: '/runs/:id',

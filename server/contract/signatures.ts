@@ -1,6 +1,14 @@
 import { z } from 'zod'
 import { endpoint } from './endpoint.ts'
-import { base64Schema, byId, hexDigestSchema, idSchema, roleSchema, timeInputSchema, timeSchema } from './common.ts'
+import {
+  base64Schema,
+  byId,
+  hexDigestSchema,
+  idSchema,
+  roleSchema,
+  timeInputSchema,
+  timeSchema,
+} from './common.ts'
 import { keyStatusSchema } from './people.ts'
 
 export const meanings = ['authorship', 'witness-read', 'witness-present'] as const
@@ -99,7 +107,12 @@ export const signatureEndpoints = {
     tag: 'Keys',
     token: 'never',
     params: byId,
-    reply: z.object({ document: base64Schema, signature: base64Schema, enrolmentSha256: hexDigestSchema, status: keyStatusSchema }),
+    reply: z.object({
+      document: base64Schema,
+      signature: base64Schema,
+      enrolmentSha256: hexDigestSchema,
+      status: keyStatusSchema,
+    }),
   }),
   prepareEndorsement: endpoint({
     method: 'POST',

@@ -142,7 +142,7 @@ describe('life of a calculation', () => {
     const svg = await maren.call('GET', `calculations/${id}/figure.svg`)
     expect(csv.trim().split('\n').length).toBe(figure.table.rows.length + 1)
     expect(svg.headers.get('content-type')).toContain('image/svg+xml')
-    expect(svg.bytes.toString('utf8')).toMatch(/^<svg[^>]* role="img"/)
+    expect(svg.bytes.toString('utf8')).toMatch(/<svg[^>]* role="img"/)
   })
 
   test('what cannot be computed is refused by field, and an unknown kind by name', async () => {
@@ -162,7 +162,7 @@ describe('life of a calculation', () => {
     const started = await maren.ok<Calculation>('POST', `entries/${entry.id}/calculations`, {
       kind: 'correlation',
       inputs: [{ fileId: file.id }],
-      parameters: { a: 1, b: 2, binPs: 10, halfRangePs: 50_000_000 },
+      parameters: { a: 1, b: 2, binPs: 500, halfRangePs: 50_000_000 },
     })
     const stopped = await maren.call<Calculation>('DELETE', `calculations/${started.id}`)
     const end = await finished(started)

@@ -1,4 +1,4 @@
-import { Problem } from '../../contract/problems.ts'
+import { nothingHere } from '../../contract/problems.ts'
 import type { Actor } from '../../platform/http/actor.ts'
 import type { Services } from '../../platform/services.ts'
 import { requireEntry, type EntryRow } from '../entries/index.ts'
@@ -11,7 +11,6 @@ export async function requireCalculation(
   id: string,
 ): Promise<{ calculation: CalculationRow; entry: EntryRow }> {
   const calculation = await findCalculation(services.db, id)
-  if (calculation === null)
-    throw new Problem('not-found', 'There is no such calculation, or you may not read it.')
+  if (calculation === null) throw nothingHere()
   return { calculation, entry: await requireEntry(services, actor, calculation.entryId, 'read') }
 }

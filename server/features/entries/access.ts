@@ -1,6 +1,6 @@
 import type { Transaction } from 'sequelize'
 import { isOpen, type NotebookRight } from '../../contract/policy.ts'
-import { Problem } from '../../contract/problems.ts'
+import { Problem, nothingHere } from '../../contract/problems.ts'
 import type { Actor } from '../../platform/http/actor.ts'
 import type { Services } from '../../platform/services.ts'
 import { requireNotebook } from '../notebooks/index.ts'
@@ -62,7 +62,7 @@ async function checked(
   right: NotebookRight,
   t?: Transaction,
 ): Promise<EntryRow> {
-  if (entry === null) throw new Problem('not-found', 'There is no such entry, or you may not read it.')
+  if (entry === null) throw nothingHere()
   await requireNotebook(services, actor, entry.notebookId, right, t)
   return entry
 }

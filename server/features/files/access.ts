@@ -1,4 +1,4 @@
-import { Problem } from '../../contract/problems.ts'
+import { nothingHere } from '../../contract/problems.ts'
 import type { Actor } from '../../platform/http/actor.ts'
 import type { Services } from '../../platform/services.ts'
 import { requireNotebook } from '../notebooks/index.ts'
@@ -7,7 +7,7 @@ import { findFile, type FileRow } from './repository.ts'
 /** A file that the caller may read. */
 export async function requireFile(services: Services, actor: Actor, fileId: string): Promise<FileRow> {
   const file = await findFile(services.db, fileId)
-  if (file === null) throw new Problem('not-found', 'There is no such file, or you may not read it.')
+  if (file === null) throw nothingHere()
   await requireNotebook(services, actor, file.notebookId, 'read')
   return file
 }

@@ -18,13 +18,16 @@ export function readDeclared(header: (name: string) => string | undefined): Decl
   }
 }
 
+export function emptyFile(name: string): Problem {
+  return new Problem(
+    'upload-refused',
+    `${name} is empty: it has no bytes. Nothing was kept; check the file on the acquisition computer.`,
+  )
+}
+
 /** Refuses an upload that is empty, cut short or changed on the way; the caller removes what arrived. */
 export function requireAsDeclared(received: Received, declared: Declared): void {
-  if (received.size === 0)
-    throw new Problem(
-      'upload-refused',
-      `${received.name} is empty: it has no bytes. Nothing was kept; check the file on the acquisition computer.`,
-    )
+  if (received.size === 0) throw emptyFile(received.name)
   if (declared.size !== null && declared.size !== received.size)
     throw new Problem(
       'upload-refused',

@@ -2,7 +2,8 @@ import { randomUUID } from 'node:crypto'
 import multer from 'multer'
 import type { Request, Response } from 'express'
 import { Problem } from '../../contract/problems.ts'
-import type { ObjectStore } from '../../platform/storage/object-store.ts'
+import { EmptyStream, type ObjectStore } from '../../platform/storage/object-store.ts'
+import { emptyFile } from './declared.ts'
 
 /** What has arrived in the store, with the digests made on the way. */
 export interface Received {
@@ -69,7 +70,7 @@ function storeEngine(storage: ObjectStore): multer.StorageEngine {
         })
         .catch((error: unknown) => {
           file.stream.resume()
-          done(error)
+          done(error instanceof EmptyStream ? emptyFile(cleanName(file.originalname)) : error)
         })
         .finally(() => req.off('aborted', stop))
     },

@@ -34,12 +34,10 @@ export async function sendContent(
   })
   if (range === null) res.set('content-length', file.size)
   else
-    res
-      .status(206)
-      .set({
-        'content-range': `bytes ${range.first}-${range.last}/${size}`,
-        'content-length': String(range.last - range.first + 1),
-      })
+    res.status(206).set({
+      'content-range': `bytes ${range.first}-${range.last}/${size}`,
+      'content-length': String(range.last - range.first + 1),
+    })
   const bytes = await services.storage.get(
     file.objectKey,
     file.objectVersion ?? undefined,

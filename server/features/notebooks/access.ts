@@ -1,6 +1,6 @@
 import type { Transaction } from 'sequelize'
 import { notebookRights, type NotebookRight } from '../../contract/policy.ts'
-import { Problem } from '../../contract/problems.ts'
+import { Problem, nothingHere } from '../../contract/problems.ts'
 import type { Actor } from '../../platform/http/actor.ts'
 import type { Services } from '../../platform/services.ts'
 import { findMembership } from './repository.ts'
@@ -27,8 +27,7 @@ export async function requireNotebook(
 ): Promise<Set<NotebookRight>> {
   const membership = await findMembership(services.db, notebookId, actor.personId, t)
   const rights = notebookRights(actor.roles, membership)
-  if (!rights.has('read'))
-    throw new Problem('not-found', 'There is no such notebook, or you may not read it.')
+  if (!rights.has('read')) throw nothingHere()
   if (!rights.has(right)) throw new Problem('not-allowed', REFUSALS[right])
   return rights
 }

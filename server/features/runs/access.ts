@@ -1,16 +1,14 @@
 import type { Transaction } from 'sequelize'
-import { Problem } from '../../contract/problems.ts'
+import { Problem, nothingHere } from '../../contract/problems.ts'
 import type { Actor } from '../../platform/http/actor.ts'
 import type { Services } from '../../platform/services.ts'
 import { requireWritableEntry } from '../entries/index.ts'
 import { requireNotebook } from '../notebooks/index.ts'
 import { findRun, lockRun, type RunRow } from './repository.ts'
 
-const UNKNOWN = 'There is no such run, or you may not read it.'
-
 export async function requireRun(services: Services, actor: Actor, id: string): Promise<RunRow> {
   const run = await findRun(services.db, id)
-  if (run === null) throw new Problem('not-found', UNKNOWN)
+  if (run === null) throw nothingHere()
   await requireNotebook(services, actor, run.notebookId, 'read')
   return run
 }
@@ -23,7 +21,7 @@ export async function requireWritableRun(
   t: Transaction,
 ): Promise<RunRow> {
   const seen = await findRun(services.db, id, t)
-  if (seen === null) throw new Problem('not-found', UNKNOWN)
+  if (seen === null) throw nothingHere()
   await requireNotebook(services, actor, seen.notebookId, 'read', t)
   if (seen.entryId !== null) await requireWritableEntry(services, actor, seen.entryId, t)
   await requireNotebook(services, actor, seen.notebookId, 'write', t)

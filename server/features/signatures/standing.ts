@@ -1,5 +1,5 @@
 import { entryActions, notebookRights, type EntryAction } from '../../contract/policy.ts'
-import { Problem } from '../../contract/problems.ts'
+import { Problem, nothingHere } from '../../contract/problems.ts'
 import type { Meaning } from '../../contract/signatures.ts'
 import type { Transaction } from '../../platform/db/database.ts'
 import type { Services } from '../../platform/services.ts'
@@ -30,8 +30,7 @@ export async function standingOf(
   const entry = person && (await lockEntry(db, entryId, t))
   const rights =
     entry && notebookRights(person.roles, await findMembership(db, entry.notebookId, personId, t))
-  if (!person || !entry || !rights?.has('read'))
-    throw new Problem('not-found', 'There is no such entry, or you may not read it.')
+  if (!person || !entry || !rights?.has('read')) throw nothingHere()
   const living = await livingSignatures(db, entryId, t)
   const own = living.filter((signature) => signature.personId === personId)
   const writers = await writersOf(db, [entryId], t)

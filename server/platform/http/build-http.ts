@@ -10,7 +10,7 @@ import { limitCalls, limitSignIns } from './limits.ts'
 import { mountRoutes } from './mount.ts'
 import { openApiDocument } from './openapi.ts'
 import { requestLog } from './request-log.ts'
-import { answerProblems, nothingHere } from './problem-answers.ts'
+import { answerProblems, noSuchAddress } from './problem-answers.ts'
 import type { Route } from './route.ts'
 import { allowedHosts, inlineScriptHashes, notStored, ownOriginOnly, securityHeaders } from './security.ts'
 import type { SessionStore } from '../identity/session.ts'
@@ -39,18 +39,18 @@ export function buildHttp(services: Services, { routes, sessions, signIn }: AppP
   app.use(healthRoutes(services))
   app.use(compression({ filter: (req, res) => mayBeCompressed(res) && compression.filter(req, res) }))
   app.use('/api/v1', interfaceOf(services, routes, sessions))
-  app.use('/api', nothingHere)
+  app.use('/api', noSuchAddress)
   app.use(
     '/auth',
     notStored,
     limitSignIns(),
     sessions.middleware,
     signInRoutes(services, signIn),
-    nothingHere,
+    noSuchAddress,
   )
   app.use('/docs/api', documentationPage())
   app.use(clientFiles(clientFolder))
-  app.use(nothingHere)
+  app.use(noSuchAddress)
   app.use(answerProblems(services))
   return app
 }
@@ -68,7 +68,7 @@ function interfaceOf(services: Services, routes: Route[], sessions: SessionStore
   router.use(ownOriginOnly(config), sessions.middleware, loadVisitor(services), limitCalls())
   router.use(express.json({ limit: JSON_LIMIT, strict: false }))
   router.use(mountRoutes(services, routes))
-  router.use(nothingHere)
+  router.use(noSuchAddress)
   return router
 }
 

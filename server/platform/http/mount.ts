@@ -1,7 +1,7 @@
 import { Router, type Request, type RequestHandler, type Response } from 'express'
 import type { z } from 'zod'
 import type { Endpoint } from '../../contract/endpoint.ts'
-import { Problem, type FieldError } from '../../contract/problems.ts'
+import { Problem, type FieldError, nothingHere } from '../../contract/problems.ts'
 import type { Services } from '../services.ts'
 import { requireAccess, visitorOf } from './access.ts'
 import { answerOnce } from './idempotency.ts'
@@ -67,8 +67,7 @@ function settled({ config, log }: Services, endpoint: Endpoint, result: unknown)
 
 function contextOf(endpoint: Endpoint, req: Request, res: Response): Context<Endpoint> {
   const params = endpoint.params.safeParse(req.params)
-  if (!params.success)
-    throw new Problem('not-found', 'There is nothing at this address, or you may not see it.')
+  if (!params.success) throw nothingHere()
   const visitor = visitorOf(req)
   return {
     params: params.data,

@@ -1,7 +1,7 @@
 import type { ErrorRequestHandler, RequestHandler, Response } from 'express'
 import { MulterError } from 'multer'
 import { ConnectionAcquireTimeoutError, ConnectionError } from 'sequelize'
-import { Problem, problemBody, problemTable } from '../../contract/problems.ts'
+import { Problem, problemBody, problemTable, nothingHere } from '../../contract/problems.ts'
 import type { Services } from '../services.ts'
 
 /** Writes a problem as application/problem+json (RFC 9457). `retryAfterS` in its extra members becomes the header. */
@@ -34,8 +34,8 @@ export function answerProblems({ log }: Services): ErrorRequestHandler {
   }
 }
 
-export const nothingHere: RequestHandler = () => {
-  throw new Problem('not-found', 'There is nothing at this address, or you may not see it.')
+export const noSuchAddress: RequestHandler = () => {
+  throw nothingHere()
 }
 
 /** Ours as it is; those of the body parsers by their kind; null for everything that must not be shown. */

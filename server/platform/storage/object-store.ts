@@ -6,6 +6,8 @@ import { buffer } from 'node:stream/consumers'
 import { Client, RETENTION_MODES } from 'minio'
 import { putHashed, PART_SIZE } from './put-hashed.ts'
 
+export { EmptyStream } from './put-hashed.ts'
+
 export interface StorageSettings {
   endpoint: string
   accessKey: string

@@ -5,6 +5,9 @@ import type { Client } from 'minio'
 /** Bytes the client holds in memory per upload; 10 000 parts of it are the largest object (156 GiB). */
 export const PART_SIZE = 16 * 2 ** 20
 
+/** A stream without a byte: the store keeps no object of it. */
+export class EmptyStream extends Error {}
+
 /**
  * Streams into the store and hashes on the way. The client neither listens for errors of the stream it is given (an
  * unheard error ends the process) nor settles after one, so the error is raced against the upload and the parts that
@@ -48,7 +51,8 @@ export async function putHashed(
     stream.unpipe(tap)
     stream.resume()
     await client.removeIncompleteUpload(bucket, key).catch(() => undefined)
-    throw error
+    // The client sends a stream of unknown length in parts and fails when there is none to send.
+    throw size === 0 && tap.readableEnded ? new EmptyStream('the stream had no bytes') : error
   }
 }
 

@@ -1,5 +1,5 @@
 import type { Editor } from '@tiptap/react'
-import { useCallback, useEffect, useRef, useState } from 'react'
+import { useCallback, useEffect, useMemo, useRef, useState } from 'react'
 import type { EntrySummary, Entry } from '../../../server/contract/entries.ts'
 import type { Notebook } from '../../../server/contract/notebooks.ts'
 import type { Session } from '../../../server/contract/people.ts'
@@ -65,10 +65,9 @@ export function SheetPage({ entry, notebook, entries, session, content }: SheetP
   const addFiles = useCallback((files: File[]) => list.add(files), [list])
   const files = useFileField(addFiles)
   const pictures = useFileField(addFiles, 'image/png,image/jpeg,image/webp')
-  const { parts, leaving, stay } = useSheetParts(entry, editable, {
-    calculation: () => setAsking(true),
-    picture: pictures.open,
-  })
+  const picture = pictures.open
+  const asks = useMemo(() => ({ calculation: () => setAsking(true), picture }), [picture])
+  const { parts, leaving, stay } = useSheetParts(entry, editable, asks)
   useFollowServer(entry.id, editor, saver)
   useBeside(body)
   useEffect(() => () => void saver.leave(), [saver])

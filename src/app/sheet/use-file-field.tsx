@@ -1,4 +1,4 @@
-import { useRef, type ReactNode } from 'react'
+import { useCallback, useRef, type ReactNode } from 'react'
 
 /** A hidden field that asks this computer for files: what opens it, and the field to put somewhere on the page. */
 export function useFileField(
@@ -6,8 +6,9 @@ export function useFileField(
   accept?: string,
 ): { open: () => void; field: ReactNode } {
   const field = useRef<HTMLInputElement>(null)
+  const open = useCallback(() => field.current?.click(), [])
   return {
-    open: () => field.current?.click(),
+    open,
     field: (
       <input
         ref={field}

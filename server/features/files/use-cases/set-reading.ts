@@ -1,6 +1,6 @@
 import { setTimeout as pause } from 'node:timers/promises'
 import type { Transaction } from 'sequelize'
-import { Problem } from '../../../contract/problems.ts'
+import { Problem, nothingHere } from '../../../contract/problems.ts'
 import { formatVersion, readingOptions } from '../../../ingest/registry.ts'
 import { readingSha256 } from '../../../ledger-format/content.ts'
 import type { Actor } from '../../../platform/http/actor.ts'
@@ -48,7 +48,7 @@ async function claimFile(
   t: Transaction,
 ): Promise<{ kind: 'entry' | 'run'; id: string }> {
   const file = await findFile(services.db, fileId, t)
-  if (file === null) throw new Problem('not-found', 'There is no such file, or you may not read it.')
+  if (file === null) throw nothingHere()
   await requireNotebook(services, actor, file.notebookId, 'write', t)
   if (file.homeEntryId !== null) {
     await requireWritableEntry(services, actor, file.homeEntryId, t)
@@ -69,7 +69,7 @@ export async function waitForReading(services: Services, fileId: string, waitMs:
   const end = Date.now() + waitMs
   for (;;) {
     const file = await findFile(services.db, fileId)
-    if (file === null) throw new Problem('not-found', 'There is no such file, or you may not read it.')
+    if (file === null) throw nothingHere()
     if (file.readingStatus !== 'pending' || Date.now() > end) return file
     await pause(POLL_MS)
   }
