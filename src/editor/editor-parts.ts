@@ -8,10 +8,8 @@ export interface QuotableFigure {
   calculation: string
   /** What it is: g2(0) */
   name: string
-  /** 0.083 ± 0.011 */
+  /** 3.45 ± 0.13 ns */
   text: string
-  /** Written into the sentence after the figure; empty for pure numbers. */
-  unit: string
 }
 
 /** What the editor shows and asks for but does not fetch itself; the page gives it. */

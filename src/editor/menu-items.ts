@@ -101,14 +101,12 @@ function head(level: 1 | 2 | 3, label: string): MenuItem {
 
 /** Figures of the sheet's calculations, to be quoted. */
 export function figureItems(parts: EditorParts): MenuItem[] {
-  return parts.figures.map(({ calculationId, pointer, calculation, name, text, unit }) => ({
+  return parts.figures.map(({ calculationId, pointer, calculation, name, text }) => ({
     key: calculationId + pointer,
-    label: `${calculation}  ${name} = ${text}${unit && ` ${unit}`}`,
+    label: `${calculation}  ${name} = ${text}`,
     also: calculation,
     run: (editor) => {
-      const figure = { type: 'quotedResult', attrs: { calculationId, pointer } }
-      const content = unit === '' ? [figure] : [figure, { type: 'text', text: ` ${unit}` }]
-      editor.chain().focus().insertContent(content).run()
+      editor.chain().focus().insertContent({ type: 'quotedResult', attrs: { calculationId, pointer } }).run()
     },
   }))
 }

@@ -1,6 +1,6 @@
 import type { Editor } from '@tiptap/core'
 import { Fragment, type Node } from '@tiptap/pm/model'
-import { NodeSelection, TextSelection, type EditorState, type Transaction } from '@tiptap/pm/state'
+import { NodeSelection, Selection, TextSelection, type EditorState, type Transaction } from '@tiptap/pm/state'
 
 /** Position after the block of the top level in which the selection ends. */
 function afterCurrentBlock(state: EditorState): number {
@@ -64,12 +64,20 @@ export function succeedCalculation(
 
 /** A press under the last block goes on there: with the cursor in it when it is text, else in a new line. */
 export function continueAtEnd(editor: Editor): void {
-  const { doc, schema, tr } = editor.state
-  if (doc.lastChild?.isTextblock) {
-    editor.commands.focus('end')
-    return
+  goOnAfter(editor, editor.state.doc.content.size)
+}
+
+/** Puts the cursor after a position, into the text that follows or, where there is none, into a new line at the end. */
+export function goOnAfter(editor: Editor, pos: number): void {
+  const { state, view } = editor
+  const transaction = state.tr
+  const $pos = state.doc.resolve(pos)
+  const atEnd = pos >= state.doc.content.size
+  const follows = $pos.parent.inlineContent || (!atEnd && Selection.findFrom($pos, 1, true) !== null)
+  if (!follows && !(atEnd && state.doc.lastChild?.isTextblock)) {
+    transaction.insert(state.doc.content.size, state.schema.nodes.paragraph!.create())
   }
-  tr.insert(doc.content.size, schema.nodes.paragraph!.create())
-  editor.view.dispatch(tr.setSelection(TextSelection.near(tr.doc.resolve(tr.doc.content.size), -1)))
-  editor.commands.focus()
+  const $place = transaction.doc.resolve(follows ? pos : transaction.doc.content.size)
+  view.dispatch(transaction.setSelection(Selection.near($place, follows ? 1 : -1)).scrollIntoView())
+  view.focus()
 }

@@ -5,6 +5,15 @@ import type { SheetInput } from './sheet-input.ts'
 import { filesPart, historyPart, runsPart, sealPart, signaturesPart, titlePart } from './sheet-parts.ts'
 import { pageCss, sheetCss } from './style.ts'
 
+/** The signed characters of a quoted figure, then the unit that the record gives it. */
+function quoteInFull({ quotes, calculations }: SheetInput['body'], nodeId: string): string {
+  const quote = quotes.find((each) => each.nodeId === nodeId)
+  if (quote === undefined) return ''
+  const figures = calculations.find((each) => each.id === quote.calculationId)?.figures
+  const unit = figures?.find((each) => each.pointer === quote.pointer)?.unit
+  return unit && unit !== '1' ? `${quote.shown} ${unit}` : quote.shown
+}
+
 /**
  * A sealed sheet as one HTML file that needs nothing from outside and runs nothing: what is printed to PDF and lies in the
  * bundle. Its own policy admits no request.
@@ -13,7 +22,7 @@ export function sheetHtml(input: SheetInput): string {
   const { body } = input
   const text = renderHtml(body.content as unknown as NormalDocument, {
     calculation: (id) => calculationHtml(input, id),
-    quote: (nodeId) => body.quotes.find((quote) => quote.nodeId === nodeId)?.shown ?? '',
+    quote: (nodeId) => quoteInFull(body, nodeId),
     image: (fileId) => input.images.get(fileId) ?? '',
   })
   const page = pageCss({

@@ -5,7 +5,7 @@ import type { EditorParts, QuotableFigure } from '../../editor/editor-parts.ts'
 import { CalculationBlock } from '../../features/calculations/calculation-block.tsx'
 import { QuotedFigure } from '../../features/calculations/quoted-figure.tsx'
 import '../../features/calculations/calculations.css'
-import { figureWithoutUnit, unitText } from '../../lib/format-quantity.ts'
+import { figureInFull } from '../../lib/format-quantity.ts'
 import { urlOf } from '../../lib/url-of.ts'
 
 interface Asks {
@@ -53,8 +53,7 @@ function figuresOf(entry: Entry): QuotableFigure[] {
       pointer: figure.pointer,
       calculation: label,
       name: figure.label,
-      text: figureWithoutUnit(figure),
-      unit: unitText(figure.unit),
+      text: figureInFull(figure),
     })),
   )
 }

@@ -3,7 +3,7 @@ import { TextButton } from '../../ui/button.tsx'
 import { useEditorParts } from '../editor-parts.ts'
 
 /** A picture with its caption; what it shows is also said in words for those who cannot see it. */
-export function ImageView({ node, editor, selected, updateAttributes, deleteNode }: ReactNodeViewProps) {
+export function ImageView({ node, editor, updateAttributes, deleteNode }: ReactNodeViewProps) {
   const parts = useEditorParts()
   const { fileId, alt, caption, width } = node.attrs as {
     fileId: string
@@ -12,7 +12,7 @@ export function ImageView({ node, editor, selected, updateAttributes, deleteNode
     width: number | null
   }
   return (
-    <NodeViewWrapper className="hs-picture" contentEditable={false} data-selected={selected ? '' : undefined}>
+    <NodeViewWrapper className="hs-picture" contentEditable={false}>
       <img src={parts.imageAddress(fileId)} alt={alt} width={width ?? undefined} />
       {editor.isEditable ? (
         <span className="hs-picture-words">

@@ -1,5 +1,6 @@
 import { NodeViewWrapper, type ReactNodeViewProps } from '@tiptap/react'
 import { useEffect, useRef, useState, type KeyboardEvent } from 'react'
+import { goOnAfter } from '../place.ts'
 import { Maths } from './maths.tsx'
 
 export const MathInlineView = (props: ReactNodeViewProps) => <MathsView {...props} display={false} />
@@ -36,7 +37,7 @@ function MathsView({
     if (text.trim() === '') return deleteNode()
     if (text !== latex) updateAttributes({ latex: text })
     const pos = getPos()
-    if (pos !== undefined) editor.commands.focus(pos + node.nodeSize)
+    if (pos !== undefined) goOnAfter(editor, pos + node.nodeSize)
   }
 
   const Tag = display ? 'div' : 'span'

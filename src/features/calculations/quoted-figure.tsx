@@ -1,14 +1,14 @@
 import { useQuery } from '@tanstack/react-query'
 import type { ReactNode } from 'react'
 import type { Calculation } from '../../../server/contract/calculations.ts'
-import { figureWithoutUnit, unitText } from '../../lib/format-quantity.ts'
+import { figureInFull } from '../../lib/format-quantity.ts'
 import { StateGlyph, type StateName } from '../../ui/state-glyph.tsx'
 import { Tip } from '../../ui/tip.tsx'
 import { calculationQuery } from './queries.ts'
 
 /**
- * A figure in a sentence, with the characters that are signed and printed: value and uncertainty; its unit is part of
- * the sentence. It follows its calculation, tells where it comes from, and warns when that is not sound.
+ * A figure in a sentence: the signed characters of value and uncertainty, then the unit. It follows its calculation,
+ * tells where it comes from, and warns when that is not sound.
  */
 export function QuotedFigure({ calculationId, pointer }: { calculationId: string; pointer: string }) {
   const { data: calculation, isError } = useQuery(calculationQuery(calculationId))
@@ -19,9 +19,8 @@ export function QuotedFigure({ calculationId, pointer }: { calculationId: string
   if (!calculation) return <Quote glyph={null} origin="The figure is on its way." text="…" />
   const figure = calculation.figures.find((each) => each.pointer === pointer)
   const { glyph, words } = soundness(calculation, figure !== undefined)
-  const unit = figure && unitText(figure.unit)
-  const origin = `${figure?.label ?? pointer}${unit ? ` in ${unit}` : ''}, calculation ${calculation.label}${words}`
-  return <Quote glyph={glyph} origin={origin} text={figure ? figureWithoutUnit(figure) : 'no figure'} />
+  const origin = `${figure?.label ?? pointer}, calculation ${calculation.label}${words}`
+  return <Quote glyph={glyph} origin={origin} text={figure ? figureInFull(figure) : 'no figure'} />
 }
 
 function soundness(

@@ -18,8 +18,9 @@ interface FileChipProps {
 
 /** A file in the margin: what it is, how it was read, and the mark of its bytes. */
 export function FileChip({ file, editable, acts }: FileChipProps) {
-  const needsLook =
-    file.reading.status === 'unreadable' || (file.reading.status === 'ready' && file.reading.detail !== null)
+  const { status, detail } = file.reading
+  const readable = !isPictureOrPaper(file.name)
+  const needsLook = readable && (status === 'unreadable' || (status === 'ready' && detail !== null))
   const [open, setOpen] = useState(false)
   const shown = open || (needsLook && editable)
   return (
@@ -37,7 +38,7 @@ export function FileChip({ file, editable, acts }: FileChipProps) {
       <StorageState file={file} />
       <p className="hs-file-acts">
         {acts}
-        {file.reading.status !== 'pending' && !needsLook && (
+        {readable && status !== 'pending' && !needsLook && (
           <TextButton aria-expanded={open} onClick={() => setOpen(!open)}>
             {open ? 'Hide the reading' : 'How it is read'}
           </TextButton>
@@ -50,7 +51,12 @@ export function FileChip({ file, editable, acts }: FileChipProps) {
 
 function iconOf({ reading, name }: RawFile) {
   if (reading.kind === 'tags') return 'trace'
-  return /\.(png|jpe?g|webp|tiff?)$/i.test(name) ? 'image' : 'file'
+  return isPictureOrPaper(name) ? 'image' : 'file'
+}
+
+/** Files that hold no numbers to read: nobody needs to be told so. */
+function isPictureOrPaper(name: string): boolean {
+  return /\.(png|jpe?g|webp|tiff?|pdf)$/i.test(name)
 }
 
 function noteOf({ reading, size }: RawFile): string {
