@@ -111,6 +111,7 @@ test('farid reads, opens everything and countersigns', async () => {
   farid = await signInByHand(browser, url, 'Dr Farid Shirvani')
   const { page } = farid
   await page.getByRole('link', { name: /Witness desk/ }).first().click()
+  await page.getByRole('heading', { name: 'Witness desk' }).waitFor()
   await page.getByText(title).first().waitFor()
   await picture(page, '4-witness-desk')
   await page.goto(`${sheetAddress}/review`)
