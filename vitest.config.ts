@@ -9,7 +9,7 @@ export default defineConfig({
         plugins: [react()],
         test: {
           name: 'unit',
-          include: ['tests/{physics,ingest,ledger,client,architecture,storage,platform,contract}/**/*.test.{ts,tsx}'],
+          include: ['tests/{physics,ingest,ledger,document,client,architecture,storage,platform}/**/*.test.{ts,tsx}'],
           environment: 'node',
           testTimeout: 30_000,
         },

@@ -8,6 +8,11 @@ export function setLaboratoryZone(name: string): void {
   zone = name
 }
 
+/** Name of the laboratory's zone. */
+export function laboratoryZone(): string {
+  return zone
+}
+
 function format(iso: string | Date, parts: Intl.DateTimeFormatOptions): string {
   return new Intl.DateTimeFormat('en-GB', { timeZone: zone, hourCycle: 'h23', ...parts }).format(
     new Date(iso),

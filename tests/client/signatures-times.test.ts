@@ -2,7 +2,7 @@ import { describe, expect, test } from 'vitest'
 import type { Run } from '../../server/contract/runs.ts'
 import { presenceTrouble, spanOfRun } from '../../src/features/signatures/presence.ts'
 import { deskSentence, daysSince } from '../../src/features/signatures/waiting.ts'
-import { utcOfZoned, zonedOfUtc } from '../../src/features/signatures/zoned-time.ts'
+import { utcOfZoned, zonedOfUtc } from '../../src/lib/zoned-time.ts'
 
 describe('times typed in the laboratory’s zone', () => {
   // Europe/Berlin is UTC+1 in winter and UTC+2 in summer; clocks change at 01:00 UTC (directive 2000/84/EC).

@@ -1,6 +1,8 @@
 import { useState, type FormEvent } from 'react'
 import type { Condition, Run } from '../../../server/contract/runs.ts'
 import { sentenceOf } from '../../lib/api-problem.ts'
+import { laboratoryZone, zoneInWords } from '../../lib/times.ts'
+import { utcOfZoned, zonedOfUtc } from '../../lib/zoned-time.ts'
 import { Button } from '../../ui/button.tsx'
 import { Message } from '../../ui/message.tsx'
 import { conditionFrom, lineOf, type ConditionLine } from './condition-text.ts'
@@ -25,6 +27,7 @@ export function ConditionsForm({
   onClose: () => void
 }) {
   const [lines, setLines] = useState(() => (run.conditions.length > 0 ? run.conditions.map(lineOf) : usual))
+  const [started, setStarted] = useState(() => zonedOfUtc(run.startedAt, laboratoryZone()))
   const [refusal, setRefusal] = useState<string | null>(null)
   const change = useChangeRun(run.id, entryId)
 
@@ -37,12 +40,22 @@ export function ConditionsForm({
     const meant = lines.filter((line) => line.value.trim() !== '').map(conditionFrom)
     const refused = meant.find((each) => each !== null && 'refusal' in each)
     if (refused && 'refusal' in refused) return setRefusal(refused.refusal)
+    const startedAt = utcOfZoned(started, laboratoryZone())
+    if (startedAt === null) return setRefusal('The start is a date and a time, for example 2026-11-12 10:56.')
     setRefusal(null)
-    change.mutate({ conditions: meant as Condition[] }, { onSuccess: onClose })
+    const untouched = started === zonedOfUtc(run.startedAt, laboratoryZone())
+    change.mutate(
+      { conditions: meant as Condition[], ...(untouched ? {} : { startedAt }) },
+      { onSuccess: onClose },
+    )
   }
 
   return (
     <form className="hs-conditions" onSubmit={submit}>
+      <label className="hs-conditions-start">
+        <span className="hs-quiet">Started ({zoneInWords(new Date(run.startedAt))})</span>
+        <input className="hs-fig" value={started} onChange={(event) => setStarted(event.target.value)} />
+      </label>
       {lines.map((line, at) => (
         <fieldset key={at}>
           <legend className="hs-only-spoken">Condition {at + 1}</legend>

@@ -21,7 +21,7 @@ export function RunPart({ run, entryId, editable }: { run: Run; entryId: string;
         </span>
         {open && !changing && (
           <TextButton onClick={() => setChanging(true)}>
-            {run.conditions.length === 0 ? 'Note the conditions' : 'Change'}
+            {run.conditions.length === 0 ? 'Conditions and start' : 'Change'}
           </TextButton>
         )}
       </p>

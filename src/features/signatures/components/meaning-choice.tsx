@@ -7,7 +7,7 @@ import { OptionRow } from '../../../ui/option-row.tsx'
 import { Select } from '../../../ui/select.tsx'
 import { presenceTrouble, spanOfRun } from '../presence.ts'
 import type { Presence } from '../signing.ts'
-import { utcOfZoned, zonedOfUtc } from '../zoned-time.ts'
+import { utcOfZoned, zonedOfUtc } from '../../../lib/zoned-time.ts'
 
 export type WitnessMeaning = 'witness-read' | 'witness-present'
 type Run = Entry['runs'][number]
