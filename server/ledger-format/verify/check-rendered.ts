@@ -105,18 +105,23 @@ function pdfStreams(pdf: Uint8Array): Uint8Array[] {
     }
     const end = indexOfBytes(pdf, streamEnd, start + 1)
     if (end < 0) break
-    const packed = withoutLineEnd(pdf.subarray(start + 1, end))
-    streams.push(packed, ...unpacked(packed))
+    const lying = pdf.subarray(start + 1, end)
+    streams.push(...withoutLineEnd(lying), ...unpacked(lying))
     at = end + streamEnd.length
   }
   return streams
 }
 
-function withoutLineEnd(bytes: Uint8Array): Uint8Array {
-  let end = bytes.length
-  if (bytes[end - 1] === 10) end--
-  if (bytes[end - 1] === 13) end--
-  return bytes.subarray(0, end)
+/**
+ * A line end may stand before `endstream` and is no part of the stream; but a stream may itself end in such a byte, so each
+ * reading counts. Packed data know their own end.
+ */
+function withoutLineEnd(bytes: Uint8Array): Uint8Array[] {
+  const ends = [bytes.length]
+  if (bytes.at(-1) === 10) ends.push(bytes.length - 1)
+  if (bytes.at(-1) === 10 && bytes.at(-2) === 13) ends.push(bytes.length - 2)
+  if (bytes.at(-1) === 13) ends.push(bytes.length - 1)
+  return ends.map((end) => bytes.subarray(0, end))
 }
 
 function unpacked(packed: Uint8Array): Uint8Array[] {
