@@ -20,7 +20,8 @@ function pdfWith(stream: Buffer): Buffer {
   return Buffer.concat([Buffer.from(head), stream, Buffer.from('\nendstream\nendobj\n')])
 }
 
-const living = (record: Buffer) => [{ name: '1-authorship', recordSha256: sha256Hex(record) }] as unknown as Living
+const living = (record: Buffer) =>
+  [{ name: '1-authorship', recordSha256: sha256Hex(record) }] as unknown as Living
 
 describe('attachments', () => {
   // The last byte of a packed stream is the end of its checksum and may be any, a line end too.
@@ -29,10 +30,13 @@ describe('attachments', () => {
     expect(() => checkAttachments(pdfWith(packed), living(record))).not.toThrow()
   })
 
-  test.each(['{"a":1}', '{"a":1}\n', '{"a":1}\r', '{"a":1}\r\n'])('a record lying plain (%j) is found', (text) => {
-    const record = Buffer.from(text)
-    expect(() => checkAttachments(pdfWith(record), living(record))).not.toThrow()
-  })
+  test.each(['{"a":1}', '{"a":1}\n', '{"a":1}\r', '{"a":1}\r\n'])(
+    'a record lying plain (%j) is found',
+    (text) => {
+      const record = Buffer.from(text)
+      expect(() => checkAttachments(pdfWith(record), living(record))).not.toThrow()
+    },
+  )
 
   test('another record is not', () => {
     const { packed } = recordEndingIn(0x41)
