@@ -35,6 +35,9 @@ async function refuseDemo(services: Services) {
   ])
 }
 
+/** The printing browser starts when the rest has, so that nobody waits for it. */
+const WARM_AFTER_MS = 8000
+
 await runProcess(async () => {
   const config = readConfig(process.env, 'api')
   const log = openLog('api')
@@ -45,7 +48,7 @@ await runProcess(async () => {
   const http = await serve(buildApp(services, sessions), config.port)
   for (const job of systemJobs(services)) await services.queue.work(job)
   await scheduleHeadChecks(services)
-  warmPrinter()
+  setTimeout(warmPrinter, WARM_AFTER_MS).unref()
   log.info({ origin: config.origin, port: config.port, demo: config.demo }, 'serving')
   return async () => {
     await http.close()

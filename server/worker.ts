@@ -5,6 +5,9 @@ import { openLog } from './platform/logger.ts'
 import { openServices } from './platform/open-services.ts'
 import { runProcess } from './platform/run-process.ts'
 
+/** Threads start when the processes beside this one have started too, so that nobody waits for them. */
+const WARM_AFTER_MS = 2500
+
 /** Reads files and computes, under a role that may do nothing else. Any number of these can run. */
 await runProcess(async () => {
   const config = readConfig(process.env, 'worker')
@@ -13,6 +16,7 @@ await runProcess(async () => {
   const pools = { compute: openComputePool(), reading: openReadingPool() }
   const jobs = [...readingJobs(services, pools.reading), ...calculationJobs(services, pools.compute)]
   for (const job of jobs) await services.queue.work(job)
+  setTimeout(() => Object.values(pools).forEach((pool) => pool.warm()), WARM_AFTER_MS).unref()
   log.info({ queues: jobs.map(({ queue }) => queue) }, 'working')
   return async () => {
     await close()

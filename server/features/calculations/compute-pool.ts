@@ -26,23 +26,27 @@ export interface ComputePool {
   compute(
     task: ThreadTask & { signal: AbortSignal; progress: (done: number, of: number) => void },
   ): Promise<Computed>
+  /** Starts the first thread ahead of the first calculation. */
+  warm(): void
   close(): Promise<void>
 }
 
 /** Worker threads that run kernels, one for each core; cancelling ends the thread at once and the pool goes on. */
 export function openComputePool(): ComputePool {
-  const pool = new Piscina<ThreadTask, ThreadAnswer>({
-    filename: new URL('./compute-thread.ts', import.meta.url).href,
-    minThreads: 1,
-    maxThreads: availableParallelism(),
-    idleTimeout: 600_000,
-  })
+  let pool: Piscina<ThreadTask, ThreadAnswer> | null = null
+  const opened = () =>
+    (pool ??= new Piscina<ThreadTask, ThreadAnswer>({
+      filename: new URL('./compute-thread.ts', import.meta.url).href,
+      minThreads: 1,
+      maxThreads: availableParallelism(),
+      idleTimeout: 600_000,
+    }))
   return {
     async compute({ signal, progress, ...task }) {
       const { port1, port2 } = new MessageChannel()
       port1.on('message', ({ done, of }: { done: number; of: number }) => progress(done, of))
       try {
-        const answer = await pool.run({ ...task, port: port2 } as ThreadTask, {
+        const answer = await opened().run({ ...task, port: port2 } as ThreadTask, {
           signal,
           transferList: [port2],
         })
@@ -53,6 +57,7 @@ export function openComputePool(): ComputePool {
         port1.close()
       }
     },
-    close: () => pool.destroy(),
+    warm: () => void opened(),
+    close: async () => pool?.destroy(),
   }
 }

@@ -1,4 +1,4 @@
-import { chromium, type Browser, type Page } from 'playwright-core'
+import type { Browser, Page } from 'playwright-core'
 
 /*
  * One browser for the whole process with one page kept open: starting costs a second, printing a fraction of it. The page
@@ -54,6 +54,8 @@ async function printNow(html: string): Promise<Buffer> {
 
 async function openPage(): Promise<Page> {
   if (browser?.isConnected() && page && !page.isClosed()) return page
+  // Loaded with the first print: it is large, and the start of the process does not wait for it.
+  const { chromium } = await import('playwright-core')
   browser = await chromium.launch({
     executablePath: process.env.CHROMIUM ?? '/usr/bin/chromium',
     args: switches,

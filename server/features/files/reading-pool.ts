@@ -12,16 +12,24 @@ export interface ReadingTask {
 
 export interface ReadingPool {
   read(task: ReadingTask): Promise<StoredReading>
+  /** Starts the first thread ahead of the first file. */
+  warm(): void
   close(): Promise<void>
 }
 
 /** Threads that read files, so that neither the queue nor a heartbeat waits for a large one. */
 export function openReadingPool(): ReadingPool {
-  const pool = new Piscina<ReadingTask, StoredReading>({
-    filename: new URL('./reading-thread.ts', import.meta.url).href,
-    minThreads: 1,
-    maxThreads: 2,
-    idleTimeout: 600_000,
-  })
-  return { read: (task) => pool.run(task), close: () => pool.destroy() }
+  let pool: Piscina<ReadingTask, StoredReading> | null = null
+  const opened = () =>
+    (pool ??= new Piscina<ReadingTask, StoredReading>({
+      filename: new URL('./reading-thread.ts', import.meta.url).href,
+      minThreads: 1,
+      maxThreads: 2,
+      idleTimeout: 600_000,
+    }))
+  return {
+    read: (task) => opened().run(task),
+    warm: () => void opened(),
+    close: async () => pool?.destroy(),
+  }
 }
