@@ -1,22 +1,11 @@
 import type { RawFile, Reading } from '../../contract/files.ts'
 import type { Actor } from '../../platform/http/actor.ts'
 import type { Services } from '../../platform/services.ts'
-import { filesWithSameBytes, type FileRow } from './repository.ts'
-
-const NOTHING_FOUND = {
-  kind: null,
-  tags: null,
-  durationPs: null,
-  firstPs: null,
-  lastPs: null,
-  resolutionPs: null,
-  outOfOrder: null,
-  channels: null,
-}
+import { filesWithSameBytes, nothingFound, type FileRow } from './repository.ts'
 
 export function presentReading(file: FileRow): Reading {
   return {
-    ...NOTHING_FOUND,
+    ...nothingFound,
     ...file.readingSummary,
     status: file.readingStatus,
     format: file.readingFormat,

@@ -6,7 +6,7 @@ import { readingSha256 } from '../../ledger-format/content.ts'
 import { readConfig } from '../../platform/config.ts'
 import { openObjectStore } from '../../platform/storage/object-store.ts'
 import type { ReadingTask } from './reading-pool.ts'
-import type { ReadingSummary, StoredReading } from './repository.ts'
+import { nothingFound, type ReadingSummary, type StoredReading } from './repository.ts'
 
 const store = openObjectStore(readConfig(process.env, 'worker').storage)
 
@@ -76,17 +76,7 @@ async function keep(task: ReadingTask, way: Way, reading: Reading): Promise<Stor
 }
 
 function summarise(reading: Reading): ReadingSummary {
-  if (reading.kind !== 'tags')
-    return {
-      kind: reading.kind,
-      tags: null,
-      durationPs: null,
-      firstPs: null,
-      lastPs: null,
-      resolutionPs: null,
-      outOfOrder: null,
-      channels: null,
-    }
+  if (reading.kind !== 'tags') return { ...nothingFound, kind: reading.kind }
   const { tags, durationPs, firstPs, lastPs, resolutionPs, outOfOrder, channels } = reading.summary
   return {
     kind: 'tags',

@@ -35,6 +35,18 @@ export interface FileRow {
 
 export type ReadingSummary = Omit<Reading, 'status' | 'format' | 'version' | 'options' | 'detail'>
 
+/** The summary of a file that was not read, or holds no tags. */
+export const nothingFound: ReadingSummary = {
+  kind: null,
+  tags: null,
+  durationPs: null,
+  firstPs: null,
+  lastPs: null,
+  resolutionPs: null,
+  outOfOrder: null,
+  channels: null,
+}
+
 const FILE = `f.id, f.entry_id as "entryId", f.run_id as "runId", coalesce(f.entry_id, r.entry_id) as "homeEntryId",
   coalesce(r.notebook_id, e.notebook_id) as "notebookId", f.name, f.size::text as size, f.sha256, f.sha512,
   f.object_key as "objectKey", f.object_version as "objectVersion", f.state, f.uploaded_by as "uploadedBy",
