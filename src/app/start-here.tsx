@@ -6,6 +6,7 @@ import { TemplateList } from '../features/entries/template-list.tsx'
 import { variantOf } from '../features/runs/beam-figures.ts'
 import { MiniBeam } from '../plots/beam-path/beam-path.tsx'
 import { Button, TextButton } from '../ui/button.tsx'
+import { Section } from '../ui/sheet.tsx'
 import { entryPath } from './paths.ts'
 
 /** Opens the dialog that starts a sheet in one of these notebooks, and goes to the sheet once it is there. */
@@ -47,6 +48,16 @@ export function BlankSheetButton({ here }: { here: StartHere }) {
   )
 }
 
-export function BlankSheetWords({ here }: { here: StartHere }) {
-  return <TextButton onClick={() => here.start(blank)}>Blank sheet</TextButton>
+/** The part of a margin from which a sheet is started: templates, and a blank one. */
+export function StartSection({ here }: { here: StartHere }) {
+  return (
+    <Section title="Start a sheet">
+      <div className="hs-templates">
+        <Templates here={here} />
+      </div>
+      <p className="hs-under-templates">
+        <TextButton onClick={() => here.start(blank)}>Blank sheet</TextButton>
+      </p>
+    </Section>
+  )
 }

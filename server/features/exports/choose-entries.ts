@@ -23,11 +23,11 @@ export interface Chosen {
 /** The sealed entries among those given and, in turn, their sealed addenda. */
 export async function withAddenda(services: Services, entries: readonly EntryRow[]): Promise<EntryRow[]> {
   const found = new Map<string, EntryRow>()
-  const todo = entries.filter(({ state }) => state === 'sealed')
-  for (let entry = todo.pop(); entry; entry = todo.pop()) {
+  const toVisit = entries.filter(({ state }) => state === 'sealed')
+  for (let entry = toVisit.pop(); entry; entry = toVisit.pop()) {
     if (found.has(entry.id)) continue
     found.set(entry.id, entry)
-    todo.push(...(await addendaOf(services.db, entry.id)).filter(({ state }) => state === 'sealed'))
+    toVisit.push(...(await addendaOf(services.db, entry.id)).filter(({ state }) => state === 'sealed'))
   }
   return [...found.values()]
 }

@@ -24,13 +24,13 @@ export function reachedKeys(
 ): ReachedKey[] {
   const known = new Map(keys.map(readKey).map((key) => [key.enrolmentSha256, key]))
   const reached = new Map<string, ReachedKey>()
-  const todo = [...signers, rootEnrolmentSha256]
-  for (let digest = todo.pop(); digest !== undefined; digest = todo.pop()) {
+  const toVisit = [...signers, rootEnrolmentSha256]
+  for (let digest = toVisit.pop(); digest !== undefined; digest = toVisit.pop()) {
     if (reached.has(digest)) continue
     const key = known.get(digest)
     if (!key) throw new Error(`The enrolment ${digest} is needed, but was not given.`)
     reached.set(digest, key)
-    if (key.endorsement) todo.push(key.endorsement.endorser.enrolmentSha256)
+    if (key.endorsement) toVisit.push(key.endorsement.endorser.enrolmentSha256)
   }
   return [...reached.values()].sort((a, b) => (a.enrolmentSha256 < b.enrolmentSha256 ? -1 : 1))
 }

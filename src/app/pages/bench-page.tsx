@@ -17,7 +17,7 @@ import { useBenchEntries } from '../bench/use-bench-entries.ts'
 import { useRecentRuns } from '../bench/use-recent-runs.tsx'
 import { queryClient } from '../client.ts'
 import { entryPath, reviewPath } from '../paths.ts'
-import { BlankSheetWords, Templates, useStartHere } from '../start-here.tsx'
+import { StartSection, useStartHere } from '../start-here.tsx'
 import { useTitle } from '../use-title.ts'
 
 export async function loader() {
@@ -57,16 +57,7 @@ export function Component() {
           label="Start and go on"
           margin={
             <>
-              {here.possible && (
-                <Section title="Start a sheet">
-                  <div className="hs-templates">
-                    <Templates here={here} />
-                  </div>
-                  <p className="hs-under-templates">
-                    <BlankSheetWords here={here} />
-                  </p>
-                </Section>
-              )}
+              {here.possible && <StartSection here={here} />}
               <Section title="Open sheets" count={open.length}>
                 <OpenSheets entries={open.slice(0, 6)} glyphOf={glyphOf} pathOf={entryPath} />
               </Section>

@@ -15,7 +15,7 @@ import { Crumbs, Ground } from '../../ui/ground.tsx'
 import { Columns, Section, Sheet } from '../../ui/sheet.tsx'
 import { queryClient } from '../client.ts'
 import { entryPath, paths } from '../paths.ts'
-import { BlankSheetButton, BlankSheetWords, Templates, useStartHere } from '../start-here.tsx'
+import { BlankSheetButton, StartSection, Templates, useStartHere } from '../start-here.tsx'
 import { useTitle } from '../use-title.ts'
 
 export async function loader({ params }: LoaderFunctionArgs) {
@@ -66,16 +66,7 @@ function Filled({ notebook, entries }: { notebook: Notebook; entries: EntrySumma
         label="New sheets and people"
         margin={
           <>
-            {here.possible && (
-              <Section title="Start a sheet">
-                <div className="hs-templates">
-                  <Templates here={here} />
-                </div>
-                <p className="hs-under-templates">
-                  <BlankSheetWords here={here} />
-                </p>
-              </Section>
-            )}
+            {here.possible && <StartSection here={here} />}
             <Section title="People" count={notebook.members.length}>
               <Members notebook={notebook} />
             </Section>
