@@ -45,7 +45,8 @@ export function useRecentRuns(
           <Quantity value={figure.value} u={figure.u} unit={figure.unit ?? ''} />
         </>
       ) : (
-        <span className="hs-quiet">not computed</span>
+        // An entry that is still on its way says nothing about its results.
+        <span className="hs-quiet">{run.entryId !== null && !entry ? '…' : 'not computed'}</span>
       ),
     }
   })
